@@ -1,0 +1,366 @@
+"""All records below a folder, read and checked: the parts, the positions, and what is wrong with any of them."""
+
+from __future__ import annotations
+
+import codecs
+import hashlib
+import os
+from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import dataclass, field
+from functools import cached_property, partial
+from pathlib import Path
+
+from pydantic import ValidationError
+
+from builder.problems import Problem, Severity, clipped, count_text, in_order, nearest, one_line
+from builder.records import yaml_text
+from builder.records.part import Document, Part, Rated, RTTable
+from builder.records.position import Position
+from builder.records.quantities import RecordModel
+from builder.records.table import RawTable, TableData, csv_table, table_data
+from builder.records.wording import worded
+
+# A record of a thousand rows has 50 kB; more than this is not a record.
+LARGEST_FILE_BYTES = 1_000_000
+_LEADS_OUT = "leads out of the records folder."
+_MODELS: Mapping[str, type[RecordModel]] = {"part": Part, "position": Position}
+
+
+@dataclass(frozen=True)
+class Source:
+    """Where a record was read: its file as messages name it, its file below the records folder, its lines."""
+
+    file: str
+    below: str
+    lines: Mapping[yaml_text.Path, int]
+
+    def problem(self, path: yaml_text.Path, rule: str, message: str, severity: Severity = "error") -> Problem:
+        """A problem of the field at a path."""
+        line = yaml_text.line_of(self.lines, path)
+        return Problem(self.file, line, yaml_text.field_name(path), rule, message, severity)
+
+
+@dataclass(frozen=True, eq=False)
+class PartRecord:
+    """A part, the numbers of its table where it has one, and where it was read."""
+
+    part: Part
+    source: Source
+    table: TableData | None = None
+
+    @property
+    def name(self) -> str:
+        """Maker and number: no two parts share it."""
+        return f"{self.part.maker} {self.part.part}"
+
+
+@dataclass(frozen=True, eq=False)
+class PositionRecord:
+    """A position and where it was read."""
+
+    position: Position
+    source: Source
+
+
+class UnknownPart(LookupError):
+    """No part, or more than one, goes by a name; the message says which names are near."""
+
+
+@dataclass(frozen=True, eq=False)
+class Catalog:
+    """The records of one folder, parts and positions in the order of their names."""
+
+    parts: tuple[PartRecord, ...] = ()
+    positions: tuple[PositionRecord, ...] = ()
+    problems: tuple[Problem, ...] = ()
+
+    def part(self, name: str) -> PartRecord:
+        """The part that goes by a maker's number, `maker number`, or an own number; upper and lower case alike.
+
+        Raises
+        ------
+        UnknownPart
+            None does, or several do.
+        """
+        found = self._by_name.get(name.strip().casefold(), ())
+        if len(found) == 1:
+            return found[0]
+        shown = clipped(name) or '""'
+        if found:
+            names = ", ".join(record.name for record in found)
+            raise UnknownPart(
+                f"{shown} is the number of {count_text(len(found), 'part')}: {names}. Name the maker too."
+            )
+        advice = nearest(name, self._numbers) or " Check the number."
+        raise UnknownPart(f"{shown} is not a part of the catalog.{advice}")
+
+    @cached_property
+    def _numbers(self) -> tuple[str, ...]:
+        return tuple(record.part.part for record in self.parts)
+
+    @cached_property
+    def _by_name(self) -> Mapping[str, tuple[PartRecord, ...]]:
+        by_name: dict[str, list[PartRecord]] = {}
+        full_names = tuple(record.name for record in self.parts)
+        own_numbers = tuple(record.part.own_number or "" for record in self.parts)
+        # Own numbers come last: a maker's number is never hidden by somebody's internal one.
+        for names in (self._numbers, full_names, own_numbers):
+            taken = set(by_name)
+            for record, name in zip(self.parts, names, strict=True):
+                if name and name.casefold() not in taken:
+                    by_name.setdefault(name.casefold(), []).append(record)
+        return {name: tuple(records) for name, records in by_name.items()}
+
+
+@dataclass
+class _Reading:
+    """What one run collects on its way through a records folder."""
+
+    root: Path
+    parts: list[PartRecord] = field(default_factory=list)
+    positions: list[PositionRecord] = field(default_factory=list)
+    problems: list[Problem] = field(default_factory=list)
+    # What records that have errors may go by: a position that names one is not told that there is no such part.
+    faulty: set[str] = field(default_factory=set)
+
+    def report(self, problem: Problem) -> None:
+        self.problems.append(problem)
+
+    def report_file(self, path: Path, rule: str, message: str, line: int = 1) -> None:
+        """Report what is wrong with a whole file or folder."""
+        self.report(Problem(one_line(path.as_posix()), line, "", rule, message))
+
+    def holds(self, path: Path) -> bool:
+        """Whether a path lies in the records folder once its links are followed; a loop of links ends where it is."""
+        return Path(os.path.realpath(path)).is_relative_to(self._inside)
+
+    @cached_property
+    def _inside(self) -> str:
+        return os.path.realpath(self.root)
+
+
+def read_catalog(root: Path) -> Catalog:
+    """Every record below a folder; nothing is raised for anything that stands in a file."""
+    reading = _Reading(root)
+    if not root.is_dir():
+        message = "there is no such folder. Name the folder of the records with --records."
+        return Catalog(problems=(Problem(one_line(root.as_posix()), 1, "", "missing-file", message),))
+    for path in _record_files(reading):
+        _read_record(reading, path)
+    parts = tuple(sorted(reading.parts, key=lambda r: (r.name.casefold(), r.source.file)))
+    positions = tuple(sorted(reading.positions, key=lambda r: (r.position.position.casefold(), r.source.file)))
+    catalog = Catalog(parts, positions)
+    problems = [*reading.problems, *_duplicates(catalog), *_unknown_parts(catalog, reading.faulty)]
+    return Catalog(parts, positions, in_order(problems))
+
+
+def _record_files(reading: _Reading) -> Iterator[Path]:
+    """Files that are records, in the order of their paths; links that leave the folder are reported, not followed."""
+    for folder, folders, files in os.walk(reading.root, onerror=partial(_report_unreadable, reading)):
+        folders[:] = sorted(name for name in folders if not name.startswith("."))
+        linked = [name for name in folders if Path(folder, name).is_symlink()]
+        for name in sorted(name for name in [*files, *linked] if not name.startswith(".")):
+            path = Path(folder, name)
+            is_record = path.suffix.lower() in (".yaml", ".yml")
+            if (is_record or name in linked) and not reading.holds(path):
+                reading.report_file(path, "link-out-of-records", f"{_LEADS_OUT} Put the file itself here.")
+            elif is_record and name not in linked and _can_be_read(reading, path):
+                yield path
+
+
+def _can_be_read(reading: _Reading, path: Path) -> bool:
+    if path.suffix != ".yaml":
+        message = "is not read: the name of a record ends in .yaml. Rename the file."
+        reading.report(Problem(one_line(path.as_posix()), 1, "", "file-name", message, "warning"))
+    elif not path.is_file():
+        reading.report_file(
+            path, "missing-file", "is no file, or a link that leads to none. Put the record itself here."
+        )
+    else:
+        return True
+    return False
+
+
+def _report_unreadable(reading: _Reading, error: OSError) -> None:
+    message = f"cannot be read: {error.strerror}. Check that it is there, and its permissions."
+    reading.report_file(Path(error.filename), "unreadable-file", message)
+
+
+def _text(reading: _Reading, path: Path) -> str | None:
+    """A file's text, or None with a problem of the file reported."""
+    try:
+        data = path.read_bytes() if path.stat().st_size <= LARGEST_FILE_BYTES else None
+    except OSError as error:
+        _report_unreadable(reading, error)
+        return None
+    if data is None:
+        message = f"the file is larger than {LARGEST_FILE_BYTES / 1e6:.0f} MB. Move it out of the records, if it is none, or give fewer rows."
+        reading.report_file(path, "file-too-large", message)
+        return None
+    try:
+        return data.decode("utf-8-sig")
+    except UnicodeDecodeError as error:
+        line = data.count(b"\n", 0, error.start) + 1
+        is_utf16 = data.startswith((codecs.BOM_UTF16_LE, codecs.BOM_UTF16_BE))
+        what = "the file is UTF-16" if is_utf16 else f"byte 0x{data[error.start]:02X} is not UTF-8"
+        reading.report_file(path, "not-utf-8", f"{what}. Save the file as UTF-8.", line)
+        return None
+
+
+def _read_record(reading: _Reading, path: Path) -> None:
+    text = _text(reading, path)
+    document = yaml_text.read_yaml(text or "")
+    if text is None or not _added(reading, path, document):
+        reading.faulty |= {path.stem.casefold(), *_names(document)}
+
+
+def _names(document: yaml_text.YamlText) -> Iterator[str]:
+    """What a part goes by, of a record that has errors."""
+    value = document.value if isinstance(document.value, dict) else {}
+    number, maker, own_number = (
+        document.plain.get((name,), str(value.get(name, ""))).strip().casefold()
+        for name in ("part", "maker", "own_number")
+    )
+    yield from (number, f"{maker} {number}", own_number)
+
+
+def _added(reading: _Reading, path: Path, document: yaml_text.YamlText) -> bool:
+    """Whether the document became a record; what keeps it from being one is reported."""
+    file = one_line(path.as_posix())
+    for fault in document.faults:
+        reading.report(Problem(file, fault.line, fault.field, fault.rule, fault.message))
+    if any(fault.rule == "broken-yaml" for fault in document.faults):
+        return False
+    kind, message = _kind(document.value)
+    if message:
+        reading.report_file(path, "not-a-record", message)
+        return False
+    source = Source(file, path.relative_to(reading.root).as_posix(), document.lines)
+    try:
+        record = _MODELS[kind].model_validate(document.value)
+    except ValidationError as error:
+        for where, rule, message in worded(error, _MODELS[kind], document):
+            reading.report(source.problem(where, rule, message))
+        _report_table(reading, path.parent, source, document.value)
+        return False
+    if isinstance(record, Part):
+        return _part_added(reading, path.parent, source, record)
+    assert isinstance(record, Position)
+    reading.positions.append(PositionRecord(record, source))
+    return True
+
+
+def _kind(value: object) -> tuple[str, str]:
+    """Which kind of record a document is, or what keeps it from being one."""
+    if value is None:
+        return "", "the file is empty. Write a record that begins with part: or position:, or remove the file."
+    if not isinstance(value, dict):
+        return "", "the file holds no fields. Begin the record with part: or position:."
+    kinds = [kind for kind in _MODELS if kind in value]
+    if len(kinds) == 1:
+        return kinds[0], ""
+    if kinds:
+        return "", "the file has both part: and position:. Keep one record in a file."
+    near = next((n for key in value if (n := nearest(str(key), _MODELS))), "")
+    return "", f"the file has neither part: nor position:, so it is no record.{near or ' Add one of the two.'}"
+
+
+def _part_added(reading: _Reading, folder: Path, source: Source, part: Part) -> bool:
+    """Whether the part could be added: its documents and its table's rows are looked at first."""
+    for i, document in enumerate(part.documents):
+        _check_document(reading, folder, source, ("documents", i), document)
+    table = None
+    if part.r_t_table is not None:
+        table = _table(reading, folder, source, part.r_t_table, part.rated)
+        if table is None:
+            return False
+    reading.parts.append(PartRecord(part, source, table))
+    return True
+
+
+def _report_table(reading: _Reading, folder: Path, source: Source, value: dict[str, object]) -> None:
+    """Report the rows of a table whose record has errors elsewhere, so that one run finds all there is to mend."""
+    try:
+        stated, rated = RTTable.model_validate(value.get("r_t_table")), Rated.model_validate(value.get("rated"))
+    except ValidationError:
+        return
+    _table(reading, folder, source, stated, rated)
+
+
+def _table(reading: _Reading, folder: Path, source: Source, stated: RTTable, rated: Rated) -> TableData | None:
+    raw = _raw_table(reading, folder, source, stated)
+    return table_data(raw, rated.resistance_ohm, reading.report) if raw else None
+
+
+def _raw_table(reading: _Reading, folder: Path, source: Source, stated: RTTable) -> RawTable | None:
+    if stated.rows is not None:
+        lines = [yaml_text.line_of(source.lines, ("r_t_table", "rows", i)) for i in range(len(stated.rows))]
+        return RawTable(source.file, stated.columns, stated.rows, tuple(lines))
+    path = _file_beside(reading, folder, source, ("r_t_table", "file"), stated.file or "")
+    text = _text(reading, path) if path else None
+    raw = csv_table(text, one_line(path.as_posix()), reading.report) if path and text is not None else None
+    if raw and "columns" in stated.model_fields_set and raw.columns != stated.columns:
+        message = (
+            f"{', '.join(stated.columns)} is not what the header row of the CSV says: "
+            f"{', '.join(raw.columns)}. Correct one of the two, or leave columns out."
+        )
+        reading.report(source.problem(("r_t_table", "columns"), "table-columns", message))
+        return None
+    return raw
+
+
+def _file_beside(reading: _Reading, folder: Path, source: Source, where: yaml_text.Path, name: str) -> Path | None:
+    """A file named in a record, or None with the reason reported."""
+    path = folder / name
+    if not reading.holds(path):
+        message = f"{clipped(name)} {_LEADS_OUT} Put the file beside the record."
+        reading.report(source.problem(where, "link-out-of-records", message))
+        return None
+    if not os.path.isfile(path):  # noqa: PTH113 -- Path.is_file raises for a name that is too long
+        message = f"there is no file {clipped(name)} beside the record. Check the name, or remove the field."
+        reading.report(source.problem(where, "missing-file", message))
+        return None
+    return path
+
+
+def _check_document(reading: _Reading, folder: Path, source: Source, where: yaml_text.Path, document: Document) -> None:
+    path = _file_beside(reading, folder, source, (*where, "file"), document.file) if document.file else None
+    if path is None or document.sha256 is None:
+        return
+    try:
+        found = hashlib.sha256(path.read_bytes()).hexdigest()
+    except OSError as error:
+        _report_unreadable(reading, error)
+        return
+    if found != document.sha256:
+        message = "is not that of the file beside the record. Was the document replaced? Then add its revision as a new entry."
+        reading.report(source.problem((*where, "sha256"), "file-hash-differs", message))
+
+
+def _duplicates(catalog: Catalog) -> Iterator[Problem]:
+    parts = [(r.name.casefold(), r.source, ("part",), r.name) for r in catalog.parts]
+    positions = [
+        (r.position.position.casefold(), r.source, ("position",), r.position.position) for r in catalog.positions
+    ]
+    for rule, named in (("duplicate-part", parts), ("duplicate-position", positions)):
+        yield from _repeated(rule, named)
+
+
+def _repeated(rule: str, named: Sequence[tuple[str, Source, yaml_text.Path, str]]) -> Iterator[Problem]:
+    first: dict[str, Source] = {}
+    for key, source, path, name in sorted(named, key=lambda n: n[1].file):
+        if key in first:
+            message = f"{clipped(name)} has a record already, {first[key].file}. Keep one of the two."
+            yield source.problem(path, rule, message)
+        first.setdefault(key, source)
+
+
+def _unknown_parts(catalog: Catalog, faulty: set[str]) -> Iterator[Problem]:
+    for record in catalog.positions:
+        for path, name in record.position.named_parts().items():
+            if name.casefold() in faulty:
+                continue
+            try:
+                catalog.part(name)
+            except UnknownPart as unknown:
+                yield record.source.problem(path, "unknown-part", str(unknown))
