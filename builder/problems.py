@@ -32,7 +32,14 @@ class Problem:
     def __str__(self) -> str:
         """The problem as every output says it."""
         where = f"{self.file}:{self.line}: "
-        return where + (f"{self.field}: {self.message}" if self.field else self.message)
+        return where + (f"{self.place}: {self.message}" if self.field else self.message)
+
+    @property
+    def place(self) -> str:
+        """The field, with the temperature of the table's row where it stands in one."""
+        if self.row is None or self.field == "t_c":
+            return self.field
+        return f"{self.field} at {self.row:g} °C".replace("-", "−")
 
     def as_json(self) -> dict[str, Any]:
         """The problem as JSON answers it, without `row` and `expected` where they mean nothing."""

@@ -162,7 +162,7 @@ def number_text(value: float, digits: int = 6) -> str:
     if math.isnan(value):
         return "–"
     if math.isinf(value):
-        return "∞" if value > 0 else "−∞"
+        return "inf" if value > 0 else "−inf"
     magnitude = abs(value)
     if magnitude == 0 or 1e-4 <= magnitude < 10 ** max(digits, 7):
         decimals = digits - 1 - (math.floor(math.log10(magnitude)) if magnitude else 0)

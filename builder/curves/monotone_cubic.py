@@ -95,9 +95,10 @@ def monotone_cubic(x: Array, y: Array) -> MonotoneCubic:
     >>> cubic.ln_resistance(np.array([0.5, 2.0])).round(4).tolist()
     [0.3958, 3.0]
     """
-    width, chord = np.diff(x), np.diff(y) / np.diff(x)
-    if not ((width > 0).all() and (chord > 0).all()):
+    width, rise = np.diff(x), np.diff(y)
+    if not ((width > 0).all() and (rise > 0).all()):
         raise ValueError("the points of a monotone cubic must rise")
+    chord = rise / width
     slope = _slopes(width, chord)
     bend = (3 * chord - 2 * slope[:-1] - slope[1:]) / width
     twist = (slope[:-1] + slope[1:] - 2 * chord) / width**2

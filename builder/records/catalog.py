@@ -68,11 +68,16 @@ class UnknownPart(LookupError):
 
 @dataclass(frozen=True, eq=False)
 class Catalog:
-    """The records of one folder, parts and positions in the order of their names."""
+    """The records of one folder, parts and positions in the order of their names.
+
+    `curveless` are parts whose table does not fall, so that no curve can be made: nothing finds them by name, and the
+    cross-checks say which of their rows is wrong.
+    """
 
     parts: tuple[PartRecord, ...] = ()
     positions: tuple[PositionRecord, ...] = ()
     problems: tuple[Problem, ...] = ()
+    curveless: tuple[PartRecord, ...] = ()
 
     def part(self, name: str) -> PartRecord:
         """The part that goes by a maker's number, `maker number`, or an own number; upper and lower case alike.
@@ -118,6 +123,7 @@ class _Reading:
 
     root: Path
     parts: list[PartRecord] = field(default_factory=list)
+    curveless: list[PartRecord] = field(default_factory=list)
     positions: list[PositionRecord] = field(default_factory=list)
     problems: list[Problem] = field(default_factory=list)
     # What records that have errors may go by: a position that names one is not told that there is no such part.
@@ -126,9 +132,9 @@ class _Reading:
     def report(self, problem: Problem) -> None:
         self.problems.append(problem)
 
-    def report_file(self, path: Path, rule: str, message: str, line: int = 1) -> None:
+    def report_file(self, path: Path, rule: str, message: str, line: int = 1, severity: Severity = "error") -> None:
         """Report what is wrong with a whole file or folder."""
-        self.report(Problem(one_line(path.as_posix()), line, "", rule, message))
+        self.report(Problem(one_line(path.as_posix()), line, "", rule, message, severity))
 
     def holds(self, path: Path) -> bool:
         """Whether a path lies in the records folder once its links are followed; a loop of links ends where it is."""
@@ -151,7 +157,7 @@ def read_catalog(root: Path) -> Catalog:
     positions = tuple(sorted(reading.positions, key=lambda r: (r.position.position.casefold(), r.source.file)))
     catalog = Catalog(parts, positions)
     problems = [*reading.problems, *_duplicates(catalog), *_unknown_parts(catalog, reading.faulty)]
-    return Catalog(parts, positions, in_order(problems))
+    return Catalog(parts, positions, in_order(problems), tuple(reading.curveless))
 
 
 def _record_files(reading: _Reading) -> Iterator[Path]:
@@ -171,7 +177,7 @@ def _record_files(reading: _Reading) -> Iterator[Path]:
 def _can_be_read(reading: _Reading, path: Path) -> bool:
     if path.suffix != ".yaml":
         message = "is not read: the name of a record ends in .yaml. Rename the file."
-        reading.report(Problem(one_line(path.as_posix()), 1, "", "file-name", message, "warning"))
+        reading.report_file(path, "file-name", message, severity="warning")
     elif not path.is_file():
         reading.report_file(
             path, "missing-file", "is no file, or a link that leads to none. Put the record itself here."
@@ -274,8 +280,9 @@ def _part_added(reading: _Reading, folder: Path, source: Source, part: Part) -> 
         table = _table(reading, folder, source, part.r_t_table, part.rated)
         if table is None:
             return False
-    reading.parts.append(PartRecord(part, source, table))
-    return True
+    falls = table is None or table.falls
+    (reading.parts if falls else reading.curveless).append(PartRecord(part, source, table))
+    return falls
 
 
 def _report_table(reading: _Reading, folder: Path, source: Source, value: dict[str, object]) -> None:

@@ -166,6 +166,16 @@ class Standing(RecordModel):
     review_due: Day | None = Field(None, description="Day by which to look at it again.", examples=["2027-02-10"])
 
 
+class Accepted(RecordModel):
+    """A finding of the cross-checks that someone has looked at and lets stand; the part's page shows it."""
+
+    rule: Text = Field(description="Name of the rule.", examples=["row-out-of-line"])
+    row: Celsius | None = Field(
+        None, description="The row's temperature, °C; without it every finding of the rule.", examples=[35]
+    )
+    because: Text = Field(description="Why it is right as it stands.", examples=["the maker confirmed the row"])
+
+
 class Part(RecordModel):
     """One orderable part number of one maker."""
 
@@ -192,6 +202,7 @@ class Part(RecordModel):
     lifecycle: Lifecycle = Field("active", description="Where the part is in its life.")
     documents: Several[Document] = Field((), description="What the figures were read from.")
     standing: Several[Standing] = Field((), description="The part's ledger.")
+    accepted: Several[Accepted] = Field((), description="Findings of the cross-checks that stand as they are.")
     notes: Text | None = Field(None, description="Anything else worth knowing.")
 
     @model_validator(mode="after")

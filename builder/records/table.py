@@ -5,7 +5,7 @@ from __future__ import annotations
 import math
 import re
 from collections.abc import Callable, Iterator, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import get_args
 
 import numpy as np
@@ -23,6 +23,8 @@ from builder.units import (
     temperature_text,
 )
 
+# Up to so many rows are reported each; a longer table that mostly rises is one thing that is wrong, not many.
+_FEW_ROWS = 4
 Cells = Sequence[Sequence[float | str]]
 Report = Callable[[Problem], None]
 
@@ -40,6 +42,7 @@ class TableData:
     r_ohm: Array
     r_min_ohm: Array | None = None
     r_max_ohm: Array | None = None
+    falls: bool = True  # whether a curve can be made of it
 
 
 @dataclass(frozen=True)
@@ -87,7 +90,7 @@ def _header_problem(header: tuple[str, ...]) -> str:
 
 
 def table_data(raw: RawTable, rated_resistance_ohm: float, report: Report) -> TableData | None:
-    """The rows as numbers, or None with the problems reported."""
+    """The rows as numbers, or None with the problems reported; a table out of order is reported and given."""
     if len(raw.cells) < 2:
         line = raw.lines[0] if raw.lines else 1
         message = f"the table has {count_text(len(raw.cells), 'row')}. A curve needs at least two."
@@ -99,17 +102,19 @@ def table_data(raw: RawTable, rated_resistance_ohm: float, report: Report) -> Ta
     column = dict(zip(raw.columns, values.T, strict=True))
     nominal = column["r_ohm"] if "r_ohm" in column else column["ratio"] * rated_resistance_ohm
     order = slice(None, None, -1) if column["t_c"][0] > column["t_c"][-1] else slice(None)
+    low, high = (column.get(name) for name in ("r_min_ohm", "r_max_ohm"))
     table = TableData(
         raw.file,
         raw.lines[order],
         _frozen(column["t_c"][order]),
         _frozen(nominal[order]),
-        *(_frozen(column[name][order]) for name in ("r_min_ohm", "r_max_ohm") if name in column),
+        None if low is None else _frozen(low[order]),
+        None if high is None else _frozen(high[order]),
     )
     problems = list(order_problems(table))
     for problem in problems:
         report(problem)
-    return None if problems else table
+    return replace(table, falls=not problems)
 
 
 def _frozen(values: Array) -> Array:
@@ -198,11 +203,13 @@ def order_problems(table: TableData) -> Iterator[Problem]:
 
 def _not_falling(table: TableData, name: str, values: Array) -> Iterator[Problem]:
     # A row at the wrong temperature is reported as that; its resistance may well be right.
-    for i in np.flatnonzero((np.diff(values) >= 0) & (np.diff(table.t_c) > 0)) + 1:
-        here, before = float(values[i]), float(values[i - 1])
-        pair = [
-            f"{resistance_text(r, 7)} at {temperature_text(float(table.t_c[j]))}"
-            for r, j in ((here, i), (before, i - 1))
-        ]
-        message = f"{pair[0]} is not below {pair[1]}. An NTC's resistance falls; compare both rows with the data sheet."
+    wrong = np.flatnonzero((np.diff(values) >= 0) & (np.diff(table.t_c) > 0)) + 1
+    if wrong.size > max(len(values) / 2, _FEW_ROWS):
+        message = "the values do not fall with temperature, so this is no table of an NTC thermistor. Compare with the data sheet."
+        yield Problem(table.file, table.lines[0], name, "not-falling", message)
+        return
+    for i in wrong:
+        here, before = (resistance_text(float(r_ohm), 7) for r_ohm in (values[i], values[i - 1]))
+        where = temperature_text(float(table.t_c[i - 1]))
+        message = f"{here} is not below {before} at {where}. An NTC's resistance falls; compare both rows with the data sheet."
         yield Problem(table.file, table.lines[i], name, "not-falling", message, row=float(table.t_c[i]))

@@ -1,0 +1,61 @@
+"""A catalog with every problem in it: of reading the records, and of every cross-check."""
+
+from __future__ import annotations
+
+import datetime
+from collections.abc import Iterable, Iterator, Mapping
+from dataclasses import dataclass, replace
+from pathlib import Path
+
+from builder.crosschecks import coefficients, statements, table_findings
+from builder.crosschecks.acceptance import not_accepted
+from builder.crosschecks.subject import Check, Subject
+from builder.part_curve import PartCurve, part_curve
+from builder.problems import Problem, in_order
+from builder.records import Catalog, PartRecord, read_catalog
+
+_CHECKS: tuple[Check, ...] = (*table_findings.CHECKS, *coefficients.CHECKS, *statements.CHECKS)
+
+
+@dataclass(frozen=True, eq=False)
+class CheckedCatalog:
+    """A catalog with every problem in it, and the curve of each part by the file of its record."""
+
+    catalog: Catalog
+    curves: Mapping[str, PartCurve]
+    today: datetime.date
+
+    @property
+    def problems(self) -> tuple[Problem, ...]:
+        """What is wrong or doubtful, in file and line order."""
+        return self.catalog.problems
+
+
+def checked_catalog(root: Path, *, today: datetime.date) -> CheckedCatalog:
+    """The records of a folder with every problem: of reading them, and of every cross-check."""
+    catalog = read_catalog(root)
+    curves = {record.source.file: part_curve(record) for record in catalog.parts}
+    found: list[Problem] = []
+    for record in (*catalog.parts, *catalog.curveless):
+        subject = Subject(record, curves.get(record.source.file), today)
+        found += not_accepted(record, [problem for check in _CHECKS for problem in check(subject)])
+    left = _unexplained(catalog.problems, catalog.curveless, found)
+    return CheckedCatalog(replace(catalog, problems=in_order([*left, *found])), curves, today)
+
+
+def _unexplained(
+    problems: Iterable[Problem], curveless: Iterable[PartRecord], found: Iterable[Problem]
+) -> Iterator[Problem]:
+    """Problems of reading, without rows out of order that a finding explains: the wrong row itself says it better.
+
+    A row that is too high stands above the row before it, one that is too low has the next row above it.
+    """
+    following = {
+        (table.file, line): table.lines[i + 1]
+        for record in curveless
+        if (table := record.table) is not None
+        for i, line in enumerate(table.lines[:-1])
+    }
+    explained = {place for p in found for place in ((p.file, p.line), (p.file, following.get((p.file, p.line))))}
+    out_of_order = ("not-falling", "repeated-temperature")
+    return (p for p in problems if p.rule not in out_of_order or (p.file, p.line) not in explained)

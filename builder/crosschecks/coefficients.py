@@ -1,0 +1,126 @@
+"""Rules about stated coefficients and B-values: do they fit the rest of the record?"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+from itertools import pairwise
+
+import numpy as np
+
+from builder.crosschecks.subject import Check, Subject
+from builder.curves import Curve, SteinhartHartLaw
+from builder.part_curve import whole_steps_c
+from builder.problems import Problem
+from builder.records.part import BValue, SteinhartHart
+from builder.units import celsius, kelvin, number_text, range_text, resistance_text, signed_text, temperature_text
+
+# Coefficients printed with four digits cost 0.02 to 0.06 K, and B-values printed without decimals as much again.
+_WITHIN_K = 0.3
+# A wrong unit is off by tens of kelvin; read the right way the rated temperature comes back far better than this.
+_UNIT_WITHIN_K = 3.0
+
+
+def stated_curve(stated: SteinhartHart) -> Curve:
+    """The curve of stated coefficients, whatever else the record has."""
+    law = SteinhartHartLaw(stated.a, stated.b, stated.c)
+    return Curve("steinhart-hart", law, stated.span_c, extends=stated.c > 0)
+
+
+def _units_look_wrong(subject: Subject) -> Iterator[Problem]:
+    stated, rated = subject.record.part.steinhart_hart, subject.record.part.rated
+    if stated is None or abs(_reads_c(stated, math.log(rated.resistance_ohm)) - rated.at_c) < _UNIT_WITHIN_K:
+        return
+    for arguments, advice in _other_arguments(rated.resistance_ohm).items():
+        if abs(_reads_c(stated, arguments) - rated.at_c) < _UNIT_WITHIN_K:
+            yield subject.record.source.problem(("steinhart_hart",), "units-look-wrong", advice)
+            return
+
+
+def _other_arguments(rated_ohm: float) -> dict[float, str]:
+    """What coefficients may have been made for instead of ln R in ohm, and how to put them right."""
+    return {
+        0.0: "the coefficients are made for R over the rated resistance, not for ohms. Ask for coefficients in ohm.",
+        math.log10(rated_ohm): "the coefficients are made for log10 R, not ln R. Divide b by 2.302585 and c by 12.208.",
+        math.log(rated_ohm / 1000): "the coefficients are made for R in kΩ, not Ω. Ask for coefficients in ohm.",
+    }
+
+
+def _reads_c(stated: SteinhartHart, argument: float) -> float:
+    """Temperature that the coefficients give for an argument in place of ln R; nan where they give none."""
+    x_per_k = stated.a + stated.b * argument + stated.c * argument**3
+    return celsius(1 / x_per_k) if x_per_k > 0 else math.nan
+
+
+def _coefficients_differ(subject: Subject) -> Iterator[Problem]:
+    part, source = subject.record.part, subject.record.source
+    stated = part.steinhart_hart
+    if stated is None or any(True for _ in _units_look_wrong(subject)):
+        return
+    off_k = _reads_c(stated, math.log(part.rated.resistance_ohm)) - part.rated.at_c
+    if not abs(off_k) <= _WITHIN_K:
+        message = (
+            f"the coefficients read {temperature_text(part.rated.at_c + off_k, 4)} at the rated resistance, "
+            f"{resistance_text(part.rated.resistance_ohm)} at {temperature_text(part.rated.at_c)}. Compare both with the data sheet."
+        )
+        yield source.problem(("steinhart_hart",), "rated-differs", message, "warning")
+    yield from _table_differs(subject, stated)
+    yield from _b_values_differ(subject, stated)
+
+
+def _table_differs(subject: Subject, stated: SteinhartHart) -> Iterator[Problem]:
+    curve = subject.curve
+    if curve is None or curve.curve.basis != "table":
+        return
+    low, high = max(stated.span_c[0], curve.curve.span_c[0]), min(stated.span_c[1], curve.curve.span_c[1])
+    if low >= high:
+        return
+    t_c = whole_steps_c((low, high), 1.0)
+    off_k = stated_curve(stated).extended_temperature_c(curve.curve.resistance_ohm(t_c)) - t_c
+    worst = int(np.argmax(np.abs(np.nan_to_num(off_k, nan=np.inf))))
+    if not abs(off_k[worst]) <= _WITHIN_K:
+        message = (
+            f"the coefficients read {signed_text(float(off_k[worst]))} K off the table at {temperature_text(float(t_c[worst]))}, "
+            f"the most from {range_text((low, high))}. Compare both with the data sheet."
+        )
+        yield subject.record.source.problem(("steinhart_hart",), "coefficients-differ", message, "warning")
+
+
+def _b_values_differ(subject: Subject, stated: SteinhartHart) -> Iterator[Problem]:
+    """Judged in kelvin at the pair's other temperature, where the record has no table to judge by."""
+    part = subject.record.part
+    if part.r_t_table is not None:
+        return
+    curve = stated_curve(stated)
+    for i, b in enumerate(part.b_values):
+        computed_k = curve.b_value_k(*b.between_c)
+        near_k, far_k = (kelvin(t_c) for t_c in sorted(b.between_c, key=lambda t_c: abs(t_c - part.rated.at_c)))
+        off_k = (computed_k / b.b_k - 1) * abs(1 / near_k - 1 / far_k) * far_k**2
+        if not abs(off_k) <= _WITHIN_K:
+            message = (
+                f"{number_text(b.b_k)} K, where the coefficients give {number_text(computed_k, 5)} K: "
+                f"{number_text(abs(off_k), 2)} K apart at {temperature_text(celsius(far_k))}. Compare both with the data sheet."
+            )
+            yield subject.record.source.problem(("b_values", i, "b_k"), "b-differs", message, "warning")
+
+
+def _b_order(subject: Subject) -> Iterator[Problem]:
+    part = subject.record.part
+    rising = part.b_values_at_rated()
+    for before, after in pairwise(rising):
+        hot = part.other_c(before) > part.rated.at_c
+        if hot and not before.b_k < after.b_k:
+            how = "equal" if before.b_k == after.b_k else "in falling order"
+            message = (
+                f"B{_pair(before)} = {number_text(before.b_k)} K and B{_pair(after)} = {number_text(after.b_k)} K are {how}; a ceramic's "
+                "B-value rises with temperature. Compare both with the data sheet: were they computed, or exchanged?"
+            )
+            path = ("b_values", part.b_values.index(after), "b_k")
+            yield subject.record.source.problem(path, "b-order", message, "warning")
+
+
+def _pair(b: BValue) -> str:
+    return "/".join(number_text(t_c) for t_c in b.between_c)
+
+
+CHECKS: tuple[Check, ...] = (_units_look_wrong, _coefficients_differ, _b_order)

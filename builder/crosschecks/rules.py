@@ -1,0 +1,132 @@
+"""Every rule of the cross-checks: its name, what it looks for, an example, and how to settle what it finds."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+
+@dataclass(frozen=True)
+class Rule:
+    """A rule; the three texts make its page in the site."""
+
+    name: str
+    looks_for: str
+    example: str
+    settled_by: str
+
+
+RULES = (
+    Rule(
+        "row-out-of-line",
+        "A row of an R–T table that its neighbours do not expect: its resistance (or its minimum or maximum), read through the "
+        "curve of the rows around it, belongs to another temperature, by more than the table's rounding and its own roughness "
+        "explain. Where one slip explains it, the message says which, and the value that it restores: one digit, two digits "
+        "swapped, a decimal place, a comma for a point, a repeated neighbour, a resistance left out so that all later rows are "
+        "one row off, a temperature mistyped.",
+        "6830 Ω at 35 °C between 8057 Ω at 30 °C and 5327 Ω at 40 °C, where 6530 Ω is expected: one digit differs.",
+        "Compare the row with the data sheet and correct it. Where the data sheet itself has the value, ask the maker, and accept "
+        "the finding in the record with the reason.",
+    ),
+    Rule(
+        "not-falling",
+        "A resistance that does not lie below the one of the row before. The resistance of an NTC thermistor falls with temperature.",
+        "8057 Ω at 30 °C, followed by 8530 Ω at 35 °C.",
+        "Compare both rows with the data sheet. A table that does not fall makes no curve, so it is an error.",
+    ),
+    Rule(
+        "repeated-temperature",
+        "A temperature that stands twice, or rows that are not in order.",
+        "35 °C in two rows one after the other.",
+        "Remove the row that was typed twice, or correct its temperature.",
+    ),
+    Rule(
+        "uneven-step",
+        "One step that is wider than all others of an otherwise even table: a row was left out.",
+        "Rows at 25, 30, 40 and 45 °C.",
+        "Add the missing row from the data sheet. Where the maker's table has the gap, accept the finding.",
+    ),
+    Rule(
+        "units-look-wrong",
+        "Values that make a thermistor only when they are read in another unit: kΩ typed as Ω (in the whole table or from some "
+        "row on), °F or kelvin typed as °C, Steinhart–Hart coefficients meant for R over the rated resistance, for kΩ or for the "
+        "decimal logarithm.",
+        "A table with 10 at 25 °C in a record whose rated resistance is 10 kΩ.",
+        "Convert the values; the message says how. It is an error, since nobody can use the curve.",
+    ),
+    Rule(
+        "rated-differs",
+        "The table, or the stated coefficients, do not have the rated resistance at the rated temperature.",
+        "A table with 10230 Ω at 25 °C in a record whose rated resistance is 10 kΩ.",
+        "Compare both with the data sheet. Often the table belongs to another part.",
+    ),
+    Rule(
+        "b-differs",
+        "The table, or the stated coefficients, have another B-value than the record states for the same pair.",
+        "b_values with B25/85 = 3435 K beside a table whose rows at 25 and 85 °C give 3977 K.",
+        "Compare both with the data sheet. A smooth table of the wrong part shows itself only so.",
+    ),
+    Rule(
+        "coefficients-differ",
+        "The stated Steinhart–Hart coefficients read more than 0.3 K off the record's own table.",
+        "A coefficient with one digit mistyped, or coefficients of another part.",
+        "Compare the coefficients and the table with the data sheet. The curve is made from the table.",
+    ),
+    Rule(
+        "b-order",
+        "B-values that do not rise with their upper temperature. In real ceramics B25/50 < B25/85 < B25/100; a table whose local "
+        "B-value is the same everywhere was computed from one B-value, not measured.",
+        "B25/50 = 3435 K and B25/85 = 3435 K.",
+        "Compare with the data sheet: were two values exchanged? For a computed table ask the maker for a measured one; until then "
+        "accept the finding, and do not trust the table far from the rated temperature.",
+    ),
+    Rule(
+        "band-does-not-hold-nominal",
+        "A minimum above the nominal value, or a maximum below it.",
+        "r_min_ohm 6612 beside r_ohm 6530.",
+        "Compare the row with the data sheet; often two columns are exchanged.",
+    ),
+    Rule(
+        "tolerance-missing",
+        "The tolerance of the rated resistance or of the B-value is not stated, and neither minimum and maximum columns nor "
+        "an accuracy in kelvin takes its place. The band is then narrower than the truth.",
+        "b_values: [{between_c: [25, 85], b_k: 3435}] with nothing else that says how far B may lie off.",
+        "Add tolerance_pct from the data sheet. Where the data sheet is silent, ask the maker; zero is never assumed.",
+    ),
+    Rule(
+        "outside-operating",
+        "The stated operating range reaches beyond what the curve is known for.",
+        "A table from −30 to 105 °C in a part that is stated to operate from −40 to 125 °C.",
+        "Ask the maker for the missing rows, or narrow operating_c to what the figures cover.",
+    ),
+    Rule(
+        "bends-back",
+        "The Steinhart–Hart coefficient c is zero or negative: the curve bends against what ceramics do.",
+        "steinhart_hart: {a: 1.2e-3, b: 2.2e-4, c: -4.1e-8, span_c: [0, 70]}",
+        "Compare the three coefficients with the data sheet; often two points lay too close together when they were made.",
+    ),
+    Rule(
+        "document-missing",
+        "No document is named that the figures were read from.",
+        "A record without documents.",
+        "Name the data sheet with its revision and date.",
+    ),
+    Rule(
+        "review-overdue",
+        "The last entry of the part's standing names a day of review that has passed.",
+        "review_due: 2026-02-10, and today is later.",
+        "Review the part, then append an entry with the outcome and the next day of review.",
+    ),
+    Rule(
+        "to-be-filled-in",
+        "A field still has the text that beadroll intake puts where it cannot know.",
+        "maker: FILL-IN",
+        "Fill it in from the data sheet.",
+    ),
+    Rule(
+        "accepted-nothing",
+        "The record accepts a finding that is not there (any more).",
+        "accepted: [{rule: row-out-of-line, row: 35, because: …}] in a record whose row at 35 °C is fine.",
+        "Remove the entry, so that it does not silence a finding of tomorrow.",
+    ),
+)
+RULE_NAMES = tuple(rule.name for rule in RULES)
