@@ -1,0 +1,128 @@
+"""How finely a column is printed: half a unit of each row's last digit, relative to the value."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from builder.units import Array
+
+_MOST_DIGITS = 8
+_POWERS = 10.0 ** np.arange(_MOST_DIGITS)
+
+
+def number_of(cell: str) -> float:
+    """The number that a cell prints; nan if it prints none."""
+    try:
+        return float(cell.replace(",", ".").replace(" ", ""))
+    except ValueError:
+        return float("nan")
+
+
+def significant_digits(values: Array) -> Array:
+    """Significant digits without trailing zeros, at most eight.
+
+    Parameters
+    ----------
+    values : array of shape (n,)
+        Positive numbers. [any unit]
+
+    Returns
+    -------
+    array of shape (n,)
+        Digits of each. [no unit]
+    """
+    scaled = mantissas(values)[:, None] * _POWERS
+    whole = np.abs(scaled - np.rint(scaled)) < 1e-9 * scaled
+    return np.where(whole.any(axis=1), whole.argmax(axis=1) + 1, _MOST_DIGITS).astype(float)
+
+
+def mantissas(values: Array) -> Array:
+    """Each value between 1 and 10, its power of ten taken off."""
+    mantissa: Array = values / 10.0 ** np.floor(np.log10(values))
+    return mantissa
+
+
+@dataclass(frozen=True, eq=False)
+class Printed:
+    """A column as it was printed.
+
+    Attributes
+    ----------
+    numbers : array of shape (n,)
+        The numbers in the cells: resistances, or ratios. [Ω or no unit]
+    digits : array of shape (n,)
+        Significant digits of each. [no unit]
+    half : array of shape (n,)
+        Half a unit of the last digit, as a share of the number. [no unit]
+    """
+
+    numbers: Array
+    digits: Array
+    half: Array
+
+
+def printed(r_ohm: Array, cells: tuple[str | None, ...] | None = None) -> Printed:
+    """How a column was printed, from the source's cells or else from the numbers themselves.
+
+    Parameters
+    ----------
+    r_ohm : array of shape (n,)
+        Resistances. [Ω]
+    cells : tuple of n texts, optional
+        The cells as printed; they show trailing zeros, and the digits of a table of ratios. [no unit]
+
+    Returns
+    -------
+    Printed
+        Numbers, digits and half units.
+    """
+    numbers, in_text = r_ohm, np.zeros(r_ohm.size)
+    if cells is not None:
+        numbers = np.array([_number_or(cell, r) for cell, r in zip(cells, r_ohm, strict=True)])
+        in_text = np.array([_digits_of(cell) for cell in cells], dtype=float)
+    digits = np.maximum(_usual_digits(numbers), in_text)
+    return Printed(numbers, digits, 5.0 * 10.0**-digits / mantissas(numbers))
+
+
+def _usual_digits(values: Array) -> Array:
+    """Digits of each value, those that end in zero by chance told from those printed more coarsely.
+
+    A zero by chance makes both the digits and the last place coarser than its neighbours'; where only the digits
+    are fewer the table has fixed decimals, where only the place is coarser it has fixed digits.
+    """
+    digits, decade = significant_digits(values), np.floor(np.log10(values))
+    places: Array = _closed(digits - decade) + decade
+    usual: Array = np.minimum(_closed(digits), places)
+    return usual
+
+
+def _number_or(cell: str | None, r_ohm: float) -> float:
+    number = number_of(cell) if cell else 0.0
+    return number if number > 0 else float(r_ohm)
+
+
+def _digits_of(cell: str | None) -> int:
+    """Digits of a cell with a decimal point; a whole number's trailing zeros say nothing."""
+    if not cell or not (number_of(cell) > 0 and ("." in cell or "," in cell)):
+        return 0
+    return len([c for c in cell.lower().split("e")[0] if c.isdigit()]) - _leading_zeros(cell)
+
+
+def _leading_zeros(cell: str) -> int:
+    figures = [c for c in cell if c.isdigit()]
+    return next((i for i, c in enumerate(figures) if c != "0"), len(figures))
+
+
+def _closed(fineness: Array) -> Array:
+    """Dips of one or two rows inside the table filled up to their neighbours (a morphological closing over three
+    rows); a dip at an end is taken as it is, since more of it may lie beyond."""
+    edge = np.full(2, -np.inf)
+    return _extremes(_extremes(np.concatenate([edge, fineness, edge]), np.maximum), np.minimum)
+
+
+def _extremes(values: Array, of: np.ufunc) -> Array:
+    """The extreme of every three values in a row."""
+    extreme: Array = of(of(values[:-2], values[1:-1]), values[2:])
+    return extreme
