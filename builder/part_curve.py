@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable
-from dataclasses import dataclass
+from dataclasses import dataclass, fields
 
 import numpy as np
 import numpy.typing as npt
@@ -48,6 +48,10 @@ class Sample:
     reads_max_k: Array
     extrapolated: Mask
 
+    def at(self, places: Mask) -> Sample:
+        """The sample at some of its temperatures only."""
+        return Sample(*(getattr(self, column.name)[places] for column in fields(self)))
+
 
 @dataclass(frozen=True, eq=False)
 class PartCurve:
@@ -72,7 +76,7 @@ class PartCurve:
         """
         t_c = np.asarray(t_c, dtype=float)
         low_ohm, high_ohm = self.band.edges_ohm(t_c)
-        reads_min_k, reads_max_k = self.band.reads_k(t_c)
+        reads_min_k, reads_max_k = self.band.read_edges_k(t_c, low_ohm, high_ohm)
         return Sample(
             t_c,
             self.curve.resistance_ohm(t_c),
@@ -205,7 +209,7 @@ def fixed_points(part: Part) -> tuple[Array, Array]:
     Parameters
     ----------
     part : Part
-        With B-values that share the rated temperature.
+        With B-values that share the rated temperature; no unit.
 
     Returns
     -------

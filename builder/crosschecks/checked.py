@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import datetime
-from collections.abc import Iterable, Iterator, Mapping
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 from pathlib import Path
 
@@ -12,6 +12,7 @@ from builder.crosschecks.acceptance import not_accepted
 from builder.crosschecks.subject import Check, Subject
 from builder.part_curve import PartCurve, part_curve
 from builder.problems import Problem, in_order
+from builder.processes import shared_out
 from builder.records import Catalog, PartRecord, read_catalog
 
 _CHECKS: tuple[Check, ...] = (*table_findings.CHECKS, *coefficients.CHECKS, *statements.CHECKS)
@@ -35,12 +36,17 @@ def checked_catalog(root: Path, *, today: datetime.date) -> CheckedCatalog:
     """The records of a folder with every problem: of reading them, and of every cross-check."""
     catalog = read_catalog(root)
     curves = {record.source.file: part_curve(record) for record in catalog.parts}
-    found: list[Problem] = []
-    for record in (*catalog.parts, *catalog.curveless):
-        subject = Subject(record, curves.get(record.source.file), today)
-        found += not_accepted(record, [problem for check in _CHECKS for problem in check(subject)])
+    subjects = [Subject(r, curves.get(r.source.file), today) for r in (*catalog.parts, *catalog.curveless)]
+    found = [problem for problems in shared_out(_findings_of_share, subjects) for problem in problems]
     left = _unexplained(catalog.problems, catalog.curveless, found)
     return CheckedCatalog(replace(catalog, problems=in_order([*left, *found])), curves, today)
+
+
+def _findings_of_share(subjects: Sequence[Subject]) -> list[list[Problem]]:
+    return [
+        list(not_accepted(subject.record, [problem for check in _CHECKS for problem in check(subject)]))
+        for subject in subjects
+    ]
 
 
 def _unexplained(

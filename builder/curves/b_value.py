@@ -100,7 +100,7 @@ def shape_allowance(law: BentExponential, t_c: Array) -> tuple[Array, Array]:
     Parameters
     ----------
     law : BentExponential
-        With the typical bend; a plain law (bend 0) has no allowance.
+        With the typical bend; a plain law (bend 0) has no allowance; no unit.
     t_c : array
         Body temperature. [°C]
 

@@ -87,7 +87,23 @@ class Band:
             the nominal curve. [K]
         """
         t_c = np.asarray(t_c, dtype=float)
-        low_ohm, high_ohm = self.edges_ohm(t_c)
+        return self.read_edges_k(t_c, *self.edges_ohm(t_c))
+
+    def read_edges_k(self, t_c: Array, low_ohm: Array, high_ohm: Array) -> tuple[Array, Array]:
+        """What edges that are known already mean in kelvin; see `reads_k`.
+
+        Parameters
+        ----------
+        t_c : array
+            Body temperature. [°C]
+        low_ohm, high_ohm : array, the shape of `t_c`
+            The band's edges there. [Ω]
+
+        Returns
+        -------
+        tuple of two arrays, the shape of `t_c`
+            Lowest and highest reading error. [K]
+        """
         read_c = self.curve.extended_temperature_c
         return read_c(high_ohm) - t_c, read_c(low_ohm) - t_c
 
@@ -135,6 +151,8 @@ def _column_edges_ohm(lowest: Curve, highest: Curve, nominal: Curve, t_c: Array)
     # Beyond the table each column goes on with its own slope. Slopes that close in would soon cross the nominal
     # curve, so there the band stays at least as wide as at the table's end.
     end_c = np.clip(t_c, *nominal.span_c)
+    if np.array_equal(end_c, t_c):
+        return lowest.resistance_ohm(t_c), highest.resistance_ohm(t_c)
     ratio = nominal.resistance_ohm(t_c) / nominal.resistance_ohm(end_c)
     return (
         np.minimum(lowest.resistance_ohm(t_c), ratio * lowest.resistance_ohm(end_c)),

@@ -13,6 +13,7 @@ from pathlib import Path
 from pydantic import ValidationError
 
 from builder.problems import Problem, Severity, clipped, count_text, in_order, nearest, one_line
+from builder.processes import shared_out
 from builder.records import yaml_text
 from builder.records.part import Document, Part, Rated, RTTable
 from builder.records.position import Position
@@ -129,6 +130,12 @@ class _Reading:
     # What records that have errors may go by: a position that names one is not told that there is no such part.
     faulty: set[str] = field(default_factory=set)
 
+    def add(self, other: _Reading) -> None:
+        """Take over what another reading of the same folder collected."""
+        for name in ("parts", "curveless", "positions", "problems"):
+            getattr(self, name).extend(getattr(other, name))
+        self.faulty |= other.faulty
+
     def report(self, problem: Problem) -> None:
         self.problems.append(problem)
 
@@ -145,14 +152,22 @@ class _Reading:
         return os.path.realpath(self.root)
 
 
+def _read_share(root: Path, paths: Sequence[Path]) -> list[_Reading]:
+    """One reading for each file."""
+    readings = [_Reading(root) for _ in paths]
+    for reading, path in zip(readings, paths, strict=True):
+        _read_record(reading, path)
+    return readings
+
+
 def read_catalog(root: Path) -> Catalog:
     """Every record below a folder; nothing is raised for anything that stands in a file."""
     reading = _Reading(root)
     if not root.is_dir():
         message = "there is no such folder. Name the folder of the records with --records."
         return Catalog(problems=(Problem(one_line(root.as_posix()), 1, "", "missing-file", message),))
-    for path in _record_files(reading):
-        _read_record(reading, path)
+    for read in shared_out(partial(_read_share, root), list(_record_files(reading))):
+        reading.add(read)
     parts = tuple(sorted(reading.parts, key=lambda r: (r.name.casefold(), r.source.file)))
     positions = tuple(sorted(reading.positions, key=lambda r: (r.position.position.casefold(), r.source.file)))
     catalog = Catalog(parts, positions)

@@ -44,6 +44,13 @@ class TableData:
     r_max_ohm: Array | None = None
     falls: bool = True  # whether a curve can be made of it
 
+    def __setstate__(self, state: dict[str, object]) -> None:
+        """After the way through another process, where numpy forgets that its arrays cannot be written to."""
+        self.__dict__.update(state)
+        for value in state.values():
+            if isinstance(value, np.ndarray):
+                value.flags.writeable = False
+
 
 @dataclass(frozen=True)
 class RawTable:

@@ -16,7 +16,8 @@ _ON_CHECKS = _ON_PARTS | {"fits", "misprints", "crosschecks", "comparisons", "pa
 MAY_IMPORT: dict[str, set[str]] = {
     "units": set(),
     "problems": set(),
-    "records": {"units", "problems"},
+    "processes": set(),
+    "records": {"units", "problems", "processes"},
     "curves": {"units"},
     "fits": _ON_CURVES,
     "misprints": _ON_CURVES,
@@ -24,11 +25,11 @@ MAY_IMPORT: dict[str, set[str]] = {
     "part_curve": {"units", "records", "curves"},
     "part_fit": _ON_CURVES | {"records", "part_curve", "fits"},
     "comparisons": _ON_CURVES | {"part_curve"},
-    "crosschecks": _ON_PARTS | {"fits", "misprints"},
+    "crosschecks": _ON_PARTS | {"fits", "misprints", "processes"},
     "exports": _ON_CHECKS,
     "pages": _ON_CHECKS | {"exports"},
     "cli": _ON_CHECKS | {"exports", "intake"},
-    "plugin": _ON_CHECKS | {"exports", "pages"},
+    "plugin": _ON_CHECKS | {"exports", "pages", "processes"},
 }
 
 

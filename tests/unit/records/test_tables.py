@@ -119,7 +119,7 @@ def test_limits_fall_as_the_nominal_does(messages, column):
         "r_max_ohm": "10.1 kΩ is not below 10 kΩ at 0 °C",
     }
     assert messages({"part.yaml": WITH_CSV, "table.csv": f"{header}\n{rows[column]}\n"}) == [
-        f"parts/table.csv:3: {column}: {pair[column]}. {FALLS}"
+        f"parts/table.csv:3: {column} at 25 °C: {pair[column]}. {FALLS}"
     ]
 
 
