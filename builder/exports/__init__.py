@@ -1,0 +1,1 @@
+"""Text and files for people and other programs."""
