@@ -1,0 +1,89 @@
+"""What every page is made from: the checked catalog, where its pages stand, and what belongs together."""
+
+from __future__ import annotations
+
+import datetime
+from collections import defaultdict
+from collections.abc import Mapping
+from dataclasses import dataclass
+from functools import cached_property
+from typing import Any
+
+from builder.crosschecks import CheckedCatalog
+from builder.pages.paths import Paths
+from builder.part_curve import PartCurve, Sample, whole_steps_c
+from builder.problems import Problem
+from builder.records import Catalog, PartRecord, PositionRecord
+
+SAMPLE_STEP_K = 1.0
+
+
+@dataclass(frozen=True, eq=False)
+class Context:
+    """One catalog on its way to pages."""
+
+    checked: CheckedCatalog
+    about: str = ""
+    figures: bool = True
+
+    @property
+    def catalog(self) -> Catalog:
+        """The records."""
+        return self.checked.catalog
+
+    @property
+    def today(self) -> datetime.date:
+        """The day the pages are made for."""
+        return self.checked.today
+
+    @cached_property
+    def paths(self) -> Paths:
+        """Where each page stands."""
+        return Paths(self.catalog)
+
+    def curve(self, record: PartRecord) -> PartCurve:
+        """A part's curve."""
+        return self.checked.curves[record.source.file]
+
+    def sample(self, record: PartRecord) -> Sample:
+        """A part's curve every 1 K over the range that its page shows; kept until another part's is asked for."""
+        if self._sampled[0] is not record:
+            self._sampled[:] = [record, self.curve(record).sample(whole_steps_c(self.shown_c(record), SAMPLE_STEP_K))]
+        made: Sample = self._sampled[1]
+        return made
+
+    def shown_c(self, record: PartRecord) -> tuple[float, float]:
+        """The operating range, or what of it the curve reaches where it is not to be extrapolated."""
+        made = self.curve(record)
+        low, high = made.operating_c
+        return (low, high) if made.curve.extends else (max(low, made.curve.span_c[0]), min(high, made.curve.span_c[1]))
+
+    @cached_property
+    def _sampled(self) -> list[Any]:
+        return [None, None]
+
+    def problems(self, record: PartRecord | PositionRecord) -> tuple[Problem, ...]:
+        """What is doubtful about a record, its table's file included."""
+        table = getattr(record, "table", None)
+        files = {record.source.file, table.file if table is not None else record.source.file}
+        return tuple(p for file in sorted(files) for p in self._problems_by_file.get(file, ()))
+
+    def positions_of(self, record: PartRecord) -> list[tuple[PositionRecord, str]]:
+        """Where a part is fitted or an alternate, and which of the two."""
+        return self._positions_by_part.get(record.source.file, [])
+
+    @cached_property
+    def _problems_by_file(self) -> Mapping[str, tuple[Problem, ...]]:
+        by_file: dict[str, list[Problem]] = defaultdict(list)
+        for problem in self.catalog.problems:
+            by_file[problem.file].append(problem)
+        return {file: tuple(problems) for file, problems in by_file.items()}
+
+    @cached_property
+    def _positions_by_part(self) -> Mapping[str, list[tuple[PositionRecord, str]]]:
+        by_part: dict[str, list[tuple[PositionRecord, str]]] = defaultdict(list)
+        for place in self.catalog.positions:
+            by_part[self.catalog.part(place.position.fitted).source.file].append((place, "fitted"))
+            for alternate in place.position.alternates:
+                by_part[self.catalog.part(alternate.part).source.file].append((place, "alternate"))
+        return by_part

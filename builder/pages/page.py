@@ -1,0 +1,43 @@
+"""A page and a file of the site, knowing nothing of the site generator that frames them."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+
+
+@dataclass(frozen=True)
+class Heading:
+    """One entry of a page's table of contents: the `id` its h2 carries, and its text (plain, not HTML)."""
+
+    anchor: str
+    text: str
+
+
+@dataclass(frozen=True)
+class Page:
+    """One page, its body rendered only when asked for.
+
+    `path` is the page's place in the site, e.g. `parts/tarnbrook/tb3a-103f38.html`; `title` and
+    `description` are plain text; `body` returns ready HTML, starting with its h1; `search_text` is what the
+    site's search knows of the page beside its title (empty: the page is not found), with resistances in one
+    word, as `10kΩ` and `10k`; `record` is the record's file below the records folder,
+    for the edit link; `in_nav` pages stand in mkdocs.yml's nav, the others are filled into a ready shell.
+    """
+
+    path: str
+    title: str
+    description: str
+    body: Callable[[], str]
+    headings: tuple[Heading, ...] = ()
+    search_text: str = ""
+    record: str | None = None
+    in_nav: bool = False
+
+
+@dataclass(frozen=True)
+class DataFile:
+    """A file of the site beside the pages: a table, a script with data, a schema."""
+
+    path: str
+    content: Callable[[], str]

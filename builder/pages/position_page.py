@@ -1,0 +1,246 @@
+"""Positions: the list of them, and a page for each with what its record says."""
+
+from __future__ import annotations
+
+from typing import Any
+
+from builder.pages.context import Context
+from builder.pages.doubts import problem_notice
+from builder.pages.html import Html, facts, joined, link, notice, table, tag
+from builder.pages.ledger import ledger_table, standing_badge
+from builder.pages.page import Heading, Page
+from builder.pages.part_page import rated_text
+from builder.pages.paths import relative
+from builder.records import Position, PositionRecord
+from builder.records.position import (
+    BValueFirmware,
+    CurveFirmware,
+    Firmware,
+    SteinhartHartFirmware,
+    TableFirmware,
+    VoltageReference,
+)
+from builder.units import number_text, range_text, resistance_text, temperature_text
+
+_HEADINGS = (
+    ("circuit", "Circuit"),
+    ("converter", "Converter and firmware"),
+    ("trips", "Trips"),
+    ("parts", "Fitted part and alternates"),
+    ("requirements", "Requirements"),
+)
+CAUTION = (
+    "Where this reading protects people, a battery or property: a thermistor limit must not be the only protection unless "
+    "the whole circuit is assessed for it, an open or shorted sensor must lead to the safe state, and local codes and "
+    "licensed practice decide."
+)
+
+
+def positions_page(context: Context) -> Page:
+    """The list of positions."""
+    return Page(
+        path="positions/index.html",
+        title="Positions",
+        description="Where thermistors are fitted, with range, limit and the parts that may stand there.",
+        body=lambda: str(_list_body(context)),
+        search_text="positions boards designators fitted alternates",
+        in_nav=True,
+    )
+
+
+def _list_body(context: Context) -> Html:
+    rows = [
+        (
+            link(place.position.position, relative(context.paths.position(place), "positions/index.html")),
+            place.position.board,
+            place.position.purpose,
+            range_text(place.position.range_c),
+            f"±{number_text(place.position.limit_k)} K",
+            _part_link(place.position.fitted, "positions/index.html", context),
+            len(place.position.alternates) or "none",
+        )
+        for place in context.catalog.positions
+    ]
+    headings = ("position", "board", "purpose", "range", "limit", "fitted", "alternates")
+    shown = (
+        table(headings, rows, caption="Every position of the catalog")
+        if rows
+        else tag("p", "The catalog has none yet.")
+    )
+    lead = "A position is one place on one board where a thermistor is fitted."
+    return joined([tag("h1", "Positions"), tag("p", lead), shown])
+
+
+def position_page(record: PositionRecord, context: Context) -> Page:
+    """The page of one position."""
+    position = record.position
+    return Page(
+        path=context.paths.position(record),
+        title=position.position,
+        description=f"{position.purpose}, {position.board}",
+        body=lambda: str(_body(record, context)),
+        headings=tuple(Heading(anchor, text) for anchor, text in _HEADINGS),
+        search_text=f"{position.board} {position.purpose} {' '.join(position.named_parts().values())}",
+        record=record.source.below,
+    )
+
+
+def _body(record: PositionRecord, context: Context) -> Html:
+    position = record.position
+    bodies = (
+        _circuit(position),
+        joined([_converter(position), _firmware(position, record, context)]),
+        _trips(position),
+        _parts(record, context),
+        _requirements(position),
+    )
+    sections = [tag("h2", text, id=anchor) + body for (anchor, text), body in zip(_HEADINGS, bodies, strict=True)]
+    return joined([_head(record, context), *map(Html, sections)])
+
+
+def _head(record: PositionRecord, context: Context) -> Html:
+    position = record.position
+    known = facts(
+        [
+            ("Board", position.board),
+            ("Range", range_text(position.range_c)),
+            ("Limit", f"±{number_text(position.limit_k)} K on the whole reading"),
+            ("Electronics", range_text(position.ambient_c or position.range_c)),
+            ("Fitted", _part_link(position.fitted, context.paths.position(record), context)),
+        ]
+    )
+    doubts = [problem_notice(problem, context.paths.position(record)) for problem in context.problems(record)]
+    notes = notice("note", position.notes) if position.notes else ""
+    caution = notice("caution", CAUTION) if position.trips else ""
+    return joined(
+        [tag("h1", position.position), tag("p", position.purpose, class_="bd-lead"), known, *doubts, notes, caution]
+    )
+
+
+def _part_link(name: str, here: str, context: Context) -> Html:
+    return link(name, relative(context.paths.part(context.catalog.part(name)), here))
+
+
+def _circuit(position: Position) -> Html:
+    circuit = position.circuit
+    fixed, parallel = circuit.fixed, circuit.parallel
+    return facts(
+        [
+            ("Thermistor", circuit.thermistor),
+            ("Fixed resistor", _resistor(fixed.resistance_ohm, fixed.tolerance_pct, fixed.tempco_ppm_per_k)),
+            (
+                "Across the thermistor",
+                _resistor(parallel.resistance_ohm, parallel.tolerance_pct) if parallel else "nothing",
+            ),
+            ("Wire", _stated(circuit.wire_ohm, "Ω")),
+            ("Supply", f"{number_text(circuit.supply_v)} V, {_plus_minus(circuit.supply_tolerance_pct, '%')}"),
+            ("Reference", _reference(position)),
+        ]
+    )
+
+
+def _resistor(resistance_ohm: float, tolerance_pct: float | None, tempco_ppm_per_k: float | None = None) -> str:
+    tempco = "" if tempco_ppm_per_k is None else f", {_plus_minus(tempco_ppm_per_k, 'ppm/K')}"
+    return f"{resistance_text(resistance_ohm)}, {_plus_minus(tolerance_pct, '%')}{tempco}"
+
+
+def _plus_minus(value: float | None, unit: str) -> str:
+    return "tolerance not stated" if value is None else f"±{number_text(value)} {unit}"
+
+
+def _stated(value: float | None, unit: str, sign: str = "") -> str:
+    return "not stated" if value is None else f"{sign}{number_text(value)} {unit}"
+
+
+def _reference(position: Position) -> str:
+    if isinstance(position.reference, VoltageReference):
+        return f"{number_text(position.reference.volts)} V, {_plus_minus(position.reference.tolerance_pct, '%')}"
+    return "ratiometric: the divider's supply"
+
+
+def _converter(position: Position) -> Html:
+    adc = position.adc
+    return facts(
+        [
+            ("Resolution", f"{adc.bits} bits"),
+            ("Full scale", f"{adc.full_scale or 2**adc.bits} counts"),
+            ("Offset", _stated(adc.offset_lsb, "LSB", "±")),
+            ("Gain", _stated(adc.gain_pct, "%", "±")),
+            ("Non-linearity", _stated(adc.nonlinearity_lsb, "LSB", "±")),
+            ("Leakage", _stated(adc.leakage_na, "nA", "±")),
+        ]
+    )
+
+
+def _firmware(position: Position, record: PositionRecord, context: Context) -> Html:
+    return facts([("Codes become degrees by", joined(_method(position.firmware, position, record, context)))])
+
+
+def _method(firmware: Firmware, position: Position, record: PositionRecord, context: Context) -> list[Any]:
+    if isinstance(firmware, BValueFirmware):
+        rated = f"{resistance_text(firmware.resistance_ohm)} at {temperature_text(firmware.at_c)}"
+        return [f"one B-value: {rated}, B = {number_text(firmware.b_k)} K"]
+    if isinstance(firmware, SteinhartHartFirmware):
+        return [f"Steinhart–Hart: a = {firmware.a}, b = {firmware.b}, c = {firmware.c}"]
+    assert isinstance(firmware, TableFirmware | CurveFirmware)
+    part = _part_link(firmware.part or position.fitted, context.paths.position(record), context)
+    if isinstance(firmware, TableFirmware):
+        return [f"a table every {number_text(firmware.step_k)} K made from ", part, ", straight lines between its rows"]
+    return ["the inverse of the curve of ", part]
+
+
+def _trips(position: Position) -> Html:
+    if not position.trips:
+        return tag("p", "The firmware acts on no threshold here.")
+    rows = [
+        (trip.name, temperature_text(trip.at_c), trip.when, _stated(trip.within_k, "K", "±")) for trip in position.trips
+    ]
+    return table(("trip", "acts at", "when", "may act within"), rows, caption="Thresholds that the firmware acts on")
+
+
+def _parts(record: PositionRecord, context: Context) -> Html:
+    position = record.position
+    here = context.paths.position(record)
+    fitted = context.catalog.part(position.fitted)
+    rows: list[tuple[Any, ...]] = [
+        (
+            _part_link(position.fitted, here, context),
+            fitted.part.maker,
+            rated_text(fitted.part),
+            "fitted",
+            standing_badge(fitted.part.state()),
+        )
+    ]
+    for alternate in position.alternates:
+        part = context.catalog.part(alternate.part).part
+        here_state = alternate.standing[-1].state if alternate.standing else None
+        rows.append(
+            (
+                _part_link(alternate.part, here, context),
+                part.maker,
+                rated_text(part),
+                "alternate",
+                standing_badge(here_state),
+            )
+        )
+    ledgers = [
+        ledger_table(alternate.standing, f"Standings of {alternate.part} at this position, the newest first")
+        for alternate in position.alternates
+        if alternate.standing
+    ]
+    return joined(
+        [table(("part", "maker", "rated", "as", "standing here"), rows, caption="Parts of this position"), *ledgers]
+    )
+
+
+def _requirements(position: Position) -> Html:
+    requires = position.requires
+    pairs = [
+        ("Qualification", ", ".join(requires.qualification)),
+        ("Size code", requires.size_code),
+        (
+            "Time constant at most",
+            None if requires.time_constant_max_s is None else f"{number_text(requires.time_constant_max_s)} s",
+        ),
+    ]
+    return facts(pairs) if any(value for _, value in pairs) else tag("p", "None beyond range and limit.")

@@ -1,0 +1,38 @@
+"""All pages and files of the site, each rendered only when it is written."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from builder.crosschecks import RULES, CheckedCatalog
+from builder.pages.checks_page import checks_page, rule_page
+from builder.pages.context import Context
+from builder.pages.home_page import home_page
+from builder.pages.maker_page import maker_pages
+from builder.pages.page import DataFile, Page
+from builder.pages.part_page import part_csv, part_page
+from builder.pages.parts_page import parts_data, parts_page
+from builder.pages.position_page import position_page, positions_page
+from builder.pages.record_format_page import record_format_page, schema_files
+
+
+def site(checked: CheckedCatalog, *, about: str = "", figures: bool = True) -> Iterator[Page | DataFile]:
+    """Every generated page and file.
+
+    `about` is what the home page says of the catalog; pages without figures cost less, for measuring what figures cost.
+    """
+    context = Context(checked, about, figures)
+    yield home_page(context)
+    yield parts_page(context.catalog, checked.curves, context.paths)
+    yield parts_data(context.catalog, checked.curves, context.paths)
+    yield from maker_pages(context.catalog, checked.curves, context.paths)
+    yield positions_page(context)
+    yield checks_page()
+    yield from (rule_page(rule, context) for rule in RULES)
+    yield record_format_page()
+    yield from schema_files()
+    for record in context.catalog.parts:
+        yield part_page(record, context)
+        yield part_csv(record, context)
+    for place in context.catalog.positions:
+        yield position_page(place, context)

@@ -1,0 +1,280 @@
+"""The MkDocs plugin: it puts the catalog's pages, data files and search entries into the site.
+
+The only module that knows MkDocs and Material.
+"""
+
+from __future__ import annotations
+
+import json
+import posixpath
+import re
+from collections.abc import Callable, Iterator, Sequence
+from contextlib import contextmanager
+from functools import lru_cache
+from html import escape
+from os.path import relpath
+from pathlib import Path
+from urllib.parse import quote, urljoin
+
+import jinja2
+from mkdocs import utils
+from mkdocs.commands.build import get_context
+from mkdocs.config import config_options
+from mkdocs.config.base import Config
+from mkdocs.config.defaults import MkDocsConfig
+from mkdocs.exceptions import PluginError
+from mkdocs.livereload import LiveReloadServer
+from mkdocs.plugins import BasePlugin, event_priority, get_plugin_logger
+from mkdocs.structure.files import File, Files
+from mkdocs.structure.nav import Navigation
+from mkdocs.structure.pages import Page as SitePage
+from mkdocs.structure.toc import AnchorLink, TableOfContents
+
+from builder.crosschecks import CheckedCatalog, checked_catalog
+from builder.pages.page import DataFile, Heading, Page
+from builder.pages.site import site
+from builder.problems import count_text, errors, warnings
+from builder.processes import shared_out
+
+log = get_plugin_logger("beadroll")
+
+ASSETS = Path(__file__).with_name("assets")
+SEARCH = "search.js"  # must run before Material's own script starts its worker
+BODY_ID = "page-body"
+
+
+def slot(name: str) -> str:
+    """The text that stands in a shell for what each page fills in; letters only, so that no escaping changes it."""
+    return f"bdslot{name}slot"
+
+
+SLOT = re.compile(slot("([a-z]+)"))
+CONTENTS_ENTRY = re.compile(rf"<li\b(?:(?!<li\b).)*{slot('anchor')}.*?</li>", re.DOTALL)
+# Material puts a title of its own above a body without h1, so the slot stands in one.
+BODY = f"<h1>{slot('body')}</h1>"
+
+
+def filled(pieces: list[str], values: dict[str, str]) -> str:
+    """Text and slot names, alternating as `SLOT.split` gives them, with each slot's value in its place."""
+    return "".join(values[piece] if index % 2 else piece for index, piece in enumerate(pieces))
+
+
+class Shell:
+    """The frame that Material gives a page, rendered once and filled in for many."""
+
+    def __init__(self, html: str) -> None:
+        entry = CONTENTS_ENTRY.search(html)
+        self._entry = SLOT.split(entry[0]) if entry else []
+        html = CONTENTS_ENTRY.sub(slot("contents"), html).replace(BODY, slot("body"))
+        self._pieces = SLOT.split(html)
+
+    def page(self, page: Page) -> str:
+        """The page's HTML: everything but its body is text and is escaped."""
+        return filled(
+            self._pieces,
+            {
+                "title": escape(page.title),
+                "description": escape(page.description),
+                "name": quote(posixpath.basename(page.path).removesuffix(".html")),
+                "record": quote(page.record or ""),
+                "contents": "".join(map(self._contents_entry, page.headings)),
+                "body": page.body(),
+            },
+        )
+
+    def _contents_entry(self, heading: Heading) -> str:
+        return filled(self._entry, {"anchor": escape(heading.anchor), "heading": escape(heading.text)})
+
+
+class WrittenFile(File):
+    """A file of the site whose text is made while it is written, so that it is never held."""
+
+    def __init__(self, path: str, config: MkDocsConfig, text: Callable[[], str]) -> None:
+        super().__init__(path, None, config.site_dir, config.use_directory_urls)
+        self.generated_by = "beadroll"
+        self._text = text
+
+    def write(self) -> None:
+        """Make the text and write it."""
+        utils.write_file(self._text().encode(), self.abs_dest_path)
+
+    def copy_file(self, dirty: bool = False) -> None:
+        """Nothing: the plugin has written all such files before MkDocs copies its own."""
+
+
+def write(files: Sequence[WrittenFile]) -> list[str]:
+    """Write a share of the files; gives their paths."""
+    for file in files:
+        file.write()
+    return [file.dest_uri for file in files]
+
+
+def meta(title: str, description: str) -> dict[str, object]:
+    """A page's metadata. The search is told of the page by `search_entry`, not by its HTML; tables want the nav's room."""
+    return {"title": title, "description": description, "search": {"exclude": True}, "hide": ["navigation"]}
+
+
+def contents(title: str, headings: tuple[Heading, ...]) -> TableOfContents:
+    """A table of contents with the title on top, where the skip link leads, and the headings below it."""
+    top = AnchorLink(title, BODY_ID, level=1)
+    top.children = [AnchorLink(escape(head.text), escape(head.anchor), level=2) for head in headings]
+    return TableOfContents([top])
+
+
+def framed(body: str) -> str:
+    """The body as Material is given it."""
+    return f'<div id="{BODY_ID}">{body}</div>'
+
+
+def search_entry(page: Page) -> dict[str, str]:
+    """What the search knows of a page; it shows titles and texts as HTML."""
+    return {"location": quote(page.path), "title": escape(page.title), "text": escape(page.search_text)}
+
+
+class Options(Config):  # type: ignore[no-untyped-call]
+    """The plugin's options in mkdocs.yml."""
+
+    records = config_options.Dir(default="parts", exists=True)
+    about = config_options.Type(str, default="")  # what the home page says of this catalog
+    figures = config_options.Type(bool, default=True)  # without them a build shows what figures cost
+
+
+class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
+    """The events, in the order in which MkDocs calls them."""
+
+    def __init__(self) -> None:
+        self._checked: CheckedCatalog
+        self._serving = False
+        self._pages: list[Page] = []
+        self._pages_in_nav: dict[str, Page] = {}
+        self._nav: Navigation
+        self._shell: Callable[[str, bool, bool], Shell]
+
+    def on_config(self, config: MkDocsConfig) -> MkDocsConfig:
+        self._read_records()
+        names = sorted(asset.name for asset in ASSETS.iterdir())
+        config.extra.setdefault("polyfills", []).append(f"assets/{SEARCH}")
+        config.extra_css[:0] = [f"assets/{name}" for name in names if name.endswith(".css")]
+        config.extra_javascript[:0] = [f"assets/{name}" for name in names if name.endswith(".js") and name != SEARCH]
+        return config
+
+    def _read_records(self) -> None:
+        """Take the records; refuse bad ones, or while serving go on with those read before."""
+        log.info(f"Reading the records in {self.config.records}")
+        checked = checked_catalog(Path(relpath(self.config.records)), today=utils.get_build_datetime().date())
+        bad = errors(checked.problems)
+        for problem in bad:
+            log.error(str(problem))
+        if not bad:
+            self._checked = checked
+            log.info(f"Records read: {count_text(len(warnings(checked.problems)), 'warning')}")
+        elif self._serving:
+            log.error(f"Records refused: {count_text(len(bad), 'error')}. Serving those read before.")
+        else:
+            raise PluginError(f"Records refused: {count_text(len(bad), 'error')}. The site is left as it was.")
+
+    def on_files(self, files: Files, *, config: MkDocsConfig) -> Files:
+        for asset in sorted(ASSETS.iterdir()):
+            files.append(File.generated(config, f"assets/{asset.name}", abs_src_path=str(asset)))
+        self._pages = []
+        for item in site(self._checked, about=self.config.about, figures=self.config.figures):
+            files.append(self._file(item, config))
+            if isinstance(item, Page):
+                self._pages.append(item)
+        self._pages_in_nav = {page.path: page for page in self._pages if page.in_nav}
+        return files
+
+    def _file(self, item: Page | DataFile, config: MkDocsConfig) -> File:
+        if isinstance(item, DataFile):
+            return WrittenFile(item.path, config, item.content)
+        if item.in_nav:
+            return File.generated(config, item.path.removesuffix(".html") + ".md", content="")
+        return WrittenFile(item.path, config, lambda: self._html(item))
+
+    def _html(self, page: Page) -> str:
+        folder = posixpath.dirname(page.path)
+        return self._shell(folder, page.record is not None, bool(page.headings)).page(page)
+
+    def on_page_content(self, html: str, *, page: SitePage, **_: object) -> str:
+        ours = self._pages_in_nav.get(page.file.dest_uri)
+        if ours is None:
+            return html
+        page.meta = meta(escape(ours.title), escape(ours.description))
+        page.toc = contents(escape(ours.title), ours.headings)
+        return framed(ours.body())
+
+    def on_nav(self, nav: Navigation, **_: object) -> Navigation:
+        self._nav = nav
+        return nav
+
+    def on_env(self, env: jinja2.Environment, *, config: MkDocsConfig, files: Files) -> jinja2.Environment:
+        """The last event before the files are written: from here on shells can be rendered."""
+
+        def shell(folder: str, has_record: bool, has_headings: bool) -> Shell:
+            page = self._shell_page(folder, has_record, has_headings, config)
+            with self._section_active(folder):
+                context = get_context(self._nav, files, config, page)
+                context = config.plugins.on_page_context(context, page=page, config=config, nav=self._nav)
+                html = env.get_template("main.html").render(context)
+            return Shell(config.plugins.on_post_page(html, page=page, config=config) or "")
+
+        self._shell = lru_cache(maxsize=16)(shell)
+        log.info(f"Writing {count_text(len(self._pages), 'page')}")
+        shared_out(write, [file for file in files if isinstance(file, WrittenFile)])
+        return env
+
+    @contextmanager
+    def _section_active(self, folder: str) -> Iterator[None]:
+        """Have the nav show where a page outside it belongs: beside the index of its topmost folder."""
+        index = f"{folder.split('/')[0]}/index.html"
+        found = [page for page in self._nav.pages if page.file.dest_uri == index]
+        for page in found:
+            page.active = True
+        yield
+        for page in found:
+            page.active = False
+
+    def _shell_page(self, folder: str, has_record: bool, has_headings: bool, config: MkDocsConfig) -> SitePage:
+        """A page of that folder with a slot for all that differs between its pages; it is in no collection."""
+        path = posixpath.join(folder, slot("name") + ".html")
+        file = File(path, None, config.site_dir, use_directory_urls=False)
+        records = Path(relpath(self.config.records, config.docs_dir)).as_posix()
+        file.edit_uri = f"{records}/{slot('record')}" if has_record else None
+        page = SitePage(slot("title"), file, config)
+        if page.edit_url:
+            page.edit_url = re.sub(r"[^/]+/\.\./", "", page.edit_url)
+        headings = (Heading(slot("anchor"), slot("heading")),) if has_headings else ()
+        page.meta = meta(slot("title"), slot("description"))
+        page.toc = contents(slot("title"), headings)
+        page.content = framed(BODY)
+        return page
+
+    def on_post_template(self, output: str, *, template_name: str, config: MkDocsConfig) -> str:
+        if template_name != "sitemap.xml":
+            return output
+        base = (config.site_url or "/").rstrip("/") + "/"
+        places = [urljoin(base, quote(page.path)) for page in self._pages if not page.in_nav]
+        entries = "".join(f"    <url>\n         <loc>{escape(place)}</loc>\n    </url>\n" for place in places)
+        return output.replace("</urlset>", f"{entries}</urlset>")
+
+    @event_priority(-100)  # after the search has written its index
+    def on_post_build(self, *, config: MkDocsConfig) -> None:
+        index_file = Path(config.site_dir, "search", "search_index.json")
+        if not index_file.exists():
+            return
+        index = json.loads(index_file.read_text("utf-8"))
+        index["docs"] += [search_entry(page) for page in self._pages if page.search_text]
+        text = json.dumps(index, ensure_ascii=False, separators=(",", ":"))
+        index_file.write_text(text, "utf-8")
+        # A page from file:// cannot fetch JSON, so Material looks there for a script that sets this name.
+        index_file.with_suffix(".js").write_text(f"var __index = {text}", "utf-8")
+        log.info(f"Pages written; the search has {len(index['docs'])} entries")
+
+    def on_serve(self, server: LiveReloadServer, **_: object) -> LiveReloadServer:
+        self._serving = True
+        server.watch(self.config.records)
+        return server
+
+    def on_shutdown(self) -> None:
+        """For a plugin that has this event MkDocs keeps one object, and so the last catalog, while it serves."""
+        self._serving = False
