@@ -12,12 +12,14 @@ from typing import Any, BinaryIO, NoReturn, TypeVar
 
 import click
 
+from builder.comparisons import Comparison, NoCommonRange, common_range_c, compared, families, sentence
+from builder.comparisons.families import DEFAULT_RANGE_C, DEFAULT_WITHIN_K
 from builder.crosschecks import checked_catalog
-from builder.exports import curve_rows, fit_rows, rows
+from builder.exports import comparison_rows, curve_rows, fit_rows, rows
 from builder.exports.rows import Column
 from builder.fits import EQUATIONS
 from builder.intake import Unreadable, record_text
-from builder.part_curve import PartCurve, part_curve, steps_from_c, whole_steps_c
+from builder.part_curve import part_curve, steps_from_c, whole_steps_c
 from builder.part_fit import fitted
 from builder.problems import Problem, count_text, errors, warnings
 from builder.records import Catalog, PartRecord, UnknownPart, read_catalog
@@ -183,7 +185,7 @@ def curve(part: str, from_c: float | None, to_c: float | None, step_k: float, re
     """
     record = _part(records, part)
     made = part_curve(record)
-    t_c = _temperatures_c(from_c, to_c, step_k, made)
+    t_c = _temperatures_c(from_c, to_c, step_k, made.operating_c)
     table = curve_rows.curve_rows(made.sample(t_c))
     if made.band.incomplete(t_c).any():
         click.echo("The tolerance band is incomplete: a tolerance that it needs is not stated.", err=True)
@@ -201,10 +203,10 @@ _BASIS_WORDS = {
 }
 
 
-def _temperatures_c(from_c: float | None, to_c: float | None, step_k: float, made: PartCurve) -> Array:
+def _temperatures_c(from_c: float | None, to_c: float | None, step_k: float, range_c: tuple[float, float]) -> Array:
     if from_c is not None and to_c is not None and from_c > to_c:
         raise click.UsageError(f"--from {number_text(from_c)} lies above --to {number_text(to_c)}. Exchange them.")
-    low_c, high_c = made.operating_c
+    low_c, high_c = range_c
     low_c = from_c if from_c is not None else low_c if to_c is None else min(low_c, to_c)
     high_c = to_c if to_c is not None else max(low_c, high_c)
     if (high_c - low_c) / step_k >= _MOST_ROWS:
@@ -285,6 +287,97 @@ def intake(file: BinaryIO, **options: str | None) -> None:
         _stop(f"{name}:{refused.line or 1}: {refused.message}", 1)
 
 
+@main.command()
+@click.argument("reference", metavar="A")
+@click.argument("others", nargs=-1, required=True, metavar="B...")
+@click.option("--from", "from_c", type=Degrees(), metavar="C", help="First temperature, °C; default the common range.")
+@click.option("--to", "to_c", type=Degrees(), metavar="C", help="Last temperature, °C.")
+@click.option(
+    "--step",
+    "step_k",
+    type=Step(),
+    default=5.0,
+    show_default=True,
+    metavar="K",
+    help="Distance of the rows, K: from --from on, or at whole steps.",
+)
+@_common
+def compare(
+    reference: str,
+    others: tuple[str, ...],
+    from_c: float | None,
+    to_c: float | None,
+    step_k: float,
+    records: Path,
+    form: str,
+) -> None:
+    """What an instrument made for part A reads with each part B fitted, in kelvin.
+
+    Positive where it shows too much; low and high for parts at the limits of their tolerance. Without --from and --to
+    over the range that A and B are both made for.
+    """
+    own, *named = _parts(records, (reference, *others))
+    found = [(other, _comparison(own, other, from_c, to_c, step_k)) for other in named]
+    if form == "json":
+        answer = comparison_rows.comparison_answer(own.part.part, [(other.part.part, c) for other, c in found])
+        click.echo(rows.json_text(answer), nl=False)
+    elif form == "csv":
+        table = [{"part": o.part.part} | row for o, c in found for row in comparison_rows.comparison_rows(c)]
+        click.echo(rows.csv_text(("part", *comparison_rows.NAMES), table), nl=False)
+    else:
+        texts = [rows.table_text(comparison_rows.COLUMNS, comparison_rows.comparison_rows(c)) for _, c in found]
+        told = [sentence(own.name, other.name, c) for other, c in found]
+        click.echo("\n\n".join(f"{said}\n\n{text}" for said, text in zip(told, texts, strict=True)))
+
+
+def _comparison(
+    own: PartRecord, other: PartRecord, from_c: float | None, to_c: float | None, step_k: float
+) -> Comparison:
+    parts = part_curve(own), part_curve(other)
+    try:
+        range_c = common_range_c(*parts) if from_c is None or to_c is None else (from_c, to_c)
+    except NoCommonRange as apart:
+        raise click.UsageError(f"{own.name} and {other.name}: {apart} Use --from and --to.") from None
+    return compared(*parts, _temperatures_c(from_c, to_c, step_k, range_c))
+
+
+@main.command("families")
+@click.option(
+    "--within",
+    "within_k",
+    type=click.FloatRange(min=0, min_open=True),
+    default=DEFAULT_WITHIN_K,
+    show_default=True,
+    metavar="K",
+    help="Largest difference of any two parts of a family, K.",
+)
+@click.option(
+    "--from", "from_c", type=Degrees(), default=DEFAULT_RANGE_C[0], show_default=True, metavar="C", help="°C."
+)
+@click.option("--to", "to_c", type=Degrees(), default=DEFAULT_RANGE_C[1], show_default=True, metavar="C", help="°C.")
+@_common
+def families_(within_k: float, from_c: float, to_c: float, records: Path, form: str) -> None:
+    """Parts whose nominal curves read the same over a range, each through each other's.
+
+    Parts whose curve does not hold over the whole range are left out and named.
+    """
+    if from_c > to_c:
+        raise click.UsageError(f"--from {number_text(from_c)} lies above --to {number_text(to_c)}. Exchange them.")
+    parts = read_catalog(records).parts
+    found = families([part_curve(record) for record in parts], within_k, (from_c, to_c))
+    numbers = [[parts[i].part.part for i in group] for group in found.groups]
+    left_out = [parts[i] for i in found.left_out]
+    if form == "json":
+        answer = {"within_k": within_k, "families": numbers, "left_out": [record.part.part for record in left_out]}
+        click.echo(rows.json_text(answer), nl=False)
+        return
+    if left_out:
+        names = ", ".join(record.name for record in left_out)
+        click.echo(f"Left out, no curve over the whole of {range_text((from_c, to_c))}: {names}.", err=True)
+    named = [[parts[i].name for i in group] for group in found.groups]
+    _print_rows(form, {}, comparison_rows.FAMILY_COLUMNS, comparison_rows.family_rows(named))
+
+
 def _print_rows(form: str, head: dict[str, Any], columns: tuple[Column, ...], table: list[rows.Row]) -> None:
     if form == "json":
         click.echo(rows.json_text(head | {"rows": table}), nl=False)
@@ -296,27 +389,38 @@ def _print_rows(form: str, head: dict[str, Any], columns: tuple[Column, ...], ta
 
 def _part(records: Path, name: str) -> PartRecord:
     """The part a command names; its problems, or that it is unknown, end the command."""
+    (record,) = _parts(records, (name,))
+    return record
+
+
+def _parts(records: Path, names: tuple[str, ...]) -> list[PartRecord]:
+    """The parts a command names; their problems, or that one is unknown, end the command."""
     catalog = read_catalog(records)
     faulty = errors(catalog.problems)
-    try:
-        record = catalog.part(name)
-    except UnknownPart as unknown:
-        for problem in faulty:
-            click.echo(str(problem), err=True)
-        if faulty:
-            _stop(
-                f"{unknown} The records have {count_text(len(faulty), 'error')}, shown above; the part may be among them.",
-                1,
-            )
-        raise click.UsageError(str(unknown)) from None
-    own = [problem for problem in faulty if problem.file == record.source.file]
+    found = [_named(catalog, name, faulty) for name in names]
+    files = {record.source.file for record in found}
+    own = [problem for problem in faulty if problem.file in files]
     for problem in own:
         click.echo(str(problem), err=True)
     if own:
         sys.exit(1)
     if faulty:
         click.echo(f"Other records have {count_text(len(faulty), 'error')}; beadroll check shows them.", err=True)
-    return record
+    return found
+
+
+def _named(catalog: Catalog, name: str, faulty: tuple[Problem, ...]) -> PartRecord:
+    try:
+        return catalog.part(name)
+    except UnknownPart as unknown:
+        if not faulty:
+            raise click.UsageError(str(unknown)) from None
+        for problem in faulty:
+            click.echo(str(problem), err=True)
+        _stop(
+            f"{unknown} The records have {count_text(len(faulty), 'error')}, shown above; the part may be among them.",
+            1,
+        )
 
 
 def _stop(message: str, code: int) -> NoReturn:

@@ -60,7 +60,8 @@ def _rule_body(rule: Rule, context: Context) -> Html:
         joined([tag("h2", text, id=anchor), body]) for (anchor, text), body in zip(_HEADINGS, bodies, strict=True)
     ]
     accept = f"accepted: [{{rule: {rule.name}, because: …}}]"
-    silenced = tag("p", "Where it is right as it stands, the record says so: ", tag("code", accept))
+    stands = tag("p", "Where it is right as it stands, the record says so: ", tag("code", accept))
+    silenced = stands if rule.acceptable else tag("p", "It is never right as it stands, so it cannot be accepted.")
     return joined(
         [tag("h1", rule.name), tag("p", rule.looks_for, class_="bd-lead"), *sections[:2], silenced, sections[2]]
     )

@@ -9,6 +9,7 @@ from dataclasses import dataclass
 from functools import cached_property
 from typing import Any
 
+from builder.comparisons.nearest import NearestParts, Neighbour
 from builder.crosschecks import CheckedCatalog
 from builder.pages.paths import Paths
 from builder.part_curve import PartCurve, Sample, whole_steps_c
@@ -67,6 +68,18 @@ class Context:
         table = getattr(record, "table", None)
         files = {record.source.file, table.file if table is not None else record.source.file}
         return tuple(p for file in sorted(files) for p in self._problems_by_file.get(file, ()))
+
+    def nearest(self, record: PartRecord) -> tuple[Neighbour, ...]:
+        """The parts that this part's firmware would read best, nearest first."""
+        return self._nearest.of(self._places[record.source.file])
+
+    @cached_property
+    def _nearest(self) -> NearestParts:
+        return NearestParts([self.curve(record) for record in self.catalog.parts])
+
+    @cached_property
+    def _places(self) -> Mapping[str, int]:
+        return {record.source.file: place for place, record in enumerate(self.catalog.parts)}
 
     def positions_of(self, record: PartRecord) -> list[tuple[PositionRecord, str]]:
         """Where a part is fitted or an alternate, and which of the two."""

@@ -12,6 +12,7 @@ from builder.pages.figures import Dots, resistance_figure, tolerance_figure
 from builder.pages.fits_section import fits_section
 from builder.pages.html import Html, facts, joined, link, notice, rows_table, table, tag
 from builder.pages.ledger import ledger_table, standing_line
+from builder.pages.nearest_section import nearest_section
 from builder.pages.page import DataFile, Heading, Page
 from builder.pages.paths import relative
 from builder.part_curve import PartCurve, Sample, fixed_points, whole_steps_c
@@ -30,6 +31,7 @@ _HEADINGS = (
     ("stated", "Stated beside computed"),
     ("r-t-table", "R–T table"),
     ("fits", "Fitted equations"),
+    ("nearest", "Nearest parts"),
     ("limits", "Limits"),
     ("use", "Where it is used"),
     ("documents", "Documents"),
@@ -91,6 +93,7 @@ def _body(record: PartRecord, context: Context) -> Html:
             _stated_section(part, curve),
             _table_section(record, context),
             fits_section(record, context),
+            nearest_section(record, context),
             _limits_section(part),
             _use_section(record, context),
             joined([_documents_section(part), _accepted_table(part)]),

@@ -7,6 +7,7 @@ from collections.abc import Iterator
 from builder.crosschecks import RULES, CheckedCatalog
 from builder.pages.checks_page import checks_page, rule_page
 from builder.pages.context import Context
+from builder.pages.families_page import families_page
 from builder.pages.home_page import home_page
 from builder.pages.maker_page import maker_pages
 from builder.pages.page import DataFile, Page
@@ -26,6 +27,7 @@ def site(checked: CheckedCatalog, *, about: str = "", figures: bool = True) -> I
     yield parts_page(context.catalog, checked.curves, context.paths)
     yield parts_data(context.catalog, checked.curves, context.paths)
     yield from maker_pages(context.catalog, checked.curves, context.paths)
+    yield families_page(context)
     yield positions_page(context)
     yield checks_page()
     yield from (rule_page(rule, context) for rule in RULES)
