@@ -109,9 +109,10 @@ def write(files: Sequence[WrittenFile]) -> list[str]:
     return [file.dest_uri for file in files]
 
 
-def meta(title: str, description: str) -> dict[str, object]:
-    """A page's metadata. The search is told of the page by `search_entry`, not by its HTML; tables want the nav's room."""
-    return {"title": title, "description": description, "search": {"exclude": True}, "hide": ["navigation"]}
+def meta(title: str, description: str, wide: bool) -> dict[str, object]:
+    """A page's metadata. The search is told of the page by `search_entry`, not by its HTML."""
+    hidden = ["navigation"] if wide else []
+    return {"title": title, "description": description, "search": {"exclude": True}, "hide": hidden}
 
 
 def contents(title: str, headings: tuple[Heading, ...]) -> TableOfContents:
@@ -148,7 +149,7 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         self._pages: list[Page] = []
         self._pages_in_nav: dict[str, Page] = {}
         self._nav: Navigation
-        self._shell: Callable[[str, bool, bool], Shell]
+        self._shell: Callable[[str, bool, bool, bool], Shell]
 
     def on_config(self, config: MkDocsConfig) -> MkDocsConfig:
         self._read_records()
@@ -193,13 +194,13 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
 
     def _html(self, page: Page) -> str:
         folder = posixpath.dirname(page.path)
-        return self._shell(folder, page.record is not None, bool(page.headings)).page(page)
+        return self._shell(folder, page.record is not None, bool(page.headings), page.wide).page(page)
 
     def on_page_content(self, html: str, *, page: SitePage, **_: object) -> str:
         ours = self._pages_in_nav.get(page.file.dest_uri)
         if ours is None:
             return html
-        page.meta = meta(escape(ours.title), escape(ours.description))
+        page.meta = meta(escape(ours.title), escape(ours.description), ours.wide)
         page.toc = contents(escape(ours.title), ours.headings)
         return framed(ours.body())
 
@@ -210,8 +211,8 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
     def on_env(self, env: jinja2.Environment, *, config: MkDocsConfig, files: Files) -> jinja2.Environment:
         """The last event before the files are written: from here on shells can be rendered."""
 
-        def shell(folder: str, has_record: bool, has_headings: bool) -> Shell:
-            page = self._shell_page(folder, has_record, has_headings, config)
+        def shell(folder: str, has_record: bool, has_headings: bool, wide: bool) -> Shell:
+            page = self._shell_page(folder, has_record, has_headings, wide, config)
             with self._section_active(folder):
                 context = get_context(self._nav, files, config, page)
                 context = config.plugins.on_page_context(context, page=page, config=config, nav=self._nav)
@@ -234,7 +235,9 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         for page in found:
             page.active = False
 
-    def _shell_page(self, folder: str, has_record: bool, has_headings: bool, config: MkDocsConfig) -> SitePage:
+    def _shell_page(
+        self, folder: str, has_record: bool, has_headings: bool, wide: bool, config: MkDocsConfig
+    ) -> SitePage:
         """A page of that folder with a slot for all that differs between its pages; it is in no collection."""
         path = posixpath.join(folder, slot("name") + ".html")
         file = File(path, None, config.site_dir, use_directory_urls=False)
@@ -244,7 +247,7 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         if page.edit_url:
             page.edit_url = re.sub(r"[^/]+/\.\./", "", page.edit_url)
         headings = (Heading(slot("anchor"), slot("heading")),) if has_headings else ()
-        page.meta = meta(slot("title"), slot("description"))
+        page.meta = meta(slot("title"), slot("description"), wide)
         page.toc = contents(slot("title"), headings)
         page.content = framed(BODY)
         return page

@@ -78,7 +78,7 @@ window.beadroll = window.beadroll || {};
       return !(tC >= this.spanC[0] - ROUNDING_K && tC <= this.spanC[1] + ROUNDING_K);
     }
 
-    /* Minimum and maximum resistance at a whole degree; not a number outside bandC, which holds span and operating range. */
+    /* Minimum and maximum resistance at a whole degree; not a number outside bandC, the span and operating range. */
     edges(tC) {
       const i = tC - this.bandC[0], nominal = this.resistance(tC);
       return [nominal * Math.exp(this.bandLow[i]), nominal * Math.exp(this.bandHigh[i])];
@@ -157,8 +157,9 @@ window.beadroll = window.beadroll || {};
         ratioPct: (r / rRef - 1) * 100,
         readsMin: shown(high, t, known),
         readsMax: shown(low, t, known),
-        referenceFar: reference.extrapolated(t) || reference.extrapolated(t + reads),
         otherFar: other.extrapolated(t),
+        referenceFar: reference.extrapolated(t),
+        readsFar: reference.extrapolated(t) || reference.extrapolated(t + reads),
       };
     });
     return { reference, other, rows };

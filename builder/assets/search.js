@@ -44,7 +44,7 @@
   }
 
   /* Material's search box is a dialog without a name. */
-  document.querySelector(".md-search")?.setAttribute("aria-label", "Search");
+  addEventListener("DOMContentLoaded", () => document.querySelector(".md-search")?.setAttribute("aria-label", "Search"));
 
   const fromFile = location.protocol === "file:";
 

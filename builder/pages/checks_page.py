@@ -20,6 +20,7 @@ def checks_page() -> Page:
         body=lambda: str(_list_body()),
         search_text="checks rules misprints warnings accepted",
         in_nav=True,
+        wide=False,
     )
 
 
@@ -32,6 +33,7 @@ def rule_page(rule: Rule, context: Context) -> Page:
         body=lambda: str(_rule_body(rule, context)),
         headings=tuple(Heading(anchor, text) for anchor, text in _HEADINGS),
         search_text=f"check rule {rule.looks_for}",
+        wide=False,
     )
 
 

@@ -10,7 +10,7 @@ from builder.pages.context import Context
 from builder.pages.html import Html, joined, link, table, tag
 from builder.pages.ledger import standing_badge
 from builder.pages.page import Page
-from builder.pages.part_page import body_text, rated_text
+from builder.pages.part_texts import body_text, rated_text
 from builder.pages.paths import relative
 from builder.problems import count_text
 from builder.records import PartRecord

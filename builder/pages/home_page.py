@@ -12,13 +12,19 @@ from builder.pages.html import Html, joined, link, notice, table, tag
 from builder.pages.ledger import standing_badge
 from builder.pages.page import Heading, Page
 from builder.pages.paths import relative
+from builder.pages.tour_section import tour_section
 from builder.problems import Problem, count_text
 from builder.records import PartRecord
 
 HERE = "index.html"
 _NEWEST = 10
 _MOST_DOUBTS = 50
-_HEADINGS = (("attention", "Needs attention"), ("newest", "Newest standings"), ("holds", "What the catalog holds"))
+_HEADINGS = (
+    ("attention", "Needs attention"),
+    ("newest", "Newest standings"),
+    ("tour", "A short tour"),
+    ("holds", "What the catalog holds"),
+)
 
 
 def home_page(context: Context) -> Page:
@@ -35,7 +41,7 @@ def home_page(context: Context) -> Page:
 
 
 def _body(context: Context) -> Html:
-    bodies = (_attention(context), _newest(context), _holds(context))
+    bodies = (_attention(context), _newest(context), tour_section(context), _holds(context))
     sections = [
         joined([tag("h2", text, id=anchor), body]) for (anchor, text), body in zip(_HEADINGS, bodies, strict=True)
     ]

@@ -10,7 +10,7 @@ from urllib.parse import quote
 from builder.pages.html import Html, joined, link, table, tag
 from builder.pages.ledger import standing_badge
 from builder.pages.page import Page
-from builder.pages.part_page import body_text, rated_text
+from builder.pages.part_texts import body_text, rated_text
 from builder.pages.parts_page import B_HEADING, PAGE, curve_b
 from builder.pages.paths import Paths, relative
 from builder.part_curve import PartCurve

@@ -22,7 +22,7 @@ class Page:
     `description` are plain text; `body` returns ready HTML, starting with its h1; `search_text` is what the
     site's search knows of the page beside its title (empty: the page is not found), with resistances in one
     word, as `10kΩ` and `10k`; `record` is the record's file below the records folder,
-    for the edit link; `in_nav` pages stand in mkdocs.yml's nav, the others are filled into a ready shell.
+    for the edit link; `wide` pages hold tables that want the room beside them; `in_nav` pages stand in mkdocs.yml's nav, the others are filled into a ready shell.
     """
 
     path: str
@@ -33,6 +33,7 @@ class Page:
     search_text: str = ""
     record: str | None = None
     in_nav: bool = False
+    wide: bool = True
 
 
 @dataclass(frozen=True)

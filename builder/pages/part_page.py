@@ -14,6 +14,7 @@ from builder.pages.html import Html, facts, joined, link, notice, rows_table, ta
 from builder.pages.ledger import ledger_table, standing_line
 from builder.pages.nearest_section import nearest_section
 from builder.pages.page import DataFile, Heading, Page
+from builder.pages.part_texts import body_text, rated_text, summary
 from builder.pages.paths import relative
 from builder.part_curve import PartCurve, Sample, fixed_points, whole_steps_c
 from builder.records import Part, PartRecord
@@ -56,24 +57,6 @@ def part_page(record: PartRecord, context: Context) -> Page:
 def part_csv(record: PartRecord, context: Context) -> DataFile:
     """The part's curve in steps of 1 K."""
     return DataFile(context.paths.part_csv(record), lambda: curve_csv(context.sample(record)))
-
-
-def summary(part: Part) -> str:
-    """What a part is, in a line."""
-    return part.description or f"{rated_text(part)} {body_text(part)} thermistor of {part.maker}"
-
-
-def rated_text(part: Part) -> str:
-    """The rated resistance, with its temperature where that is not 25 °C, and its tolerance."""
-    rated = part.rated
-    at = "" if rated.at_c == 25 else f" at {temperature_text(rated.at_c)}"
-    tolerance = "" if rated.tolerance_pct is None else f" ±{number_text(rated.tolerance_pct)} %"
-    return f"{resistance_text(rated.resistance_ohm)}{at}{tolerance}"
-
-
-def body_text(part: Part) -> str:
-    """The body, with its size code where it has one."""
-    return f"{part.body.form} {part.body.size_code}" if part.body.size_code else part.body.form
 
 
 def _search_text(part: Part) -> str:

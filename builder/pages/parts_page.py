@@ -13,7 +13,7 @@ import numpy as np
 
 from builder.pages.html import Html, html, joined, link, slug, tag
 from builder.pages.page import DataFile, Heading, Page
-from builder.pages.part_page import body_text, rated_text
+from builder.pages.part_texts import body_text, rated_text
 from builder.pages.paths import Paths, relative
 from builder.part_curve import PartCurve
 from builder.problems import count_text

@@ -9,7 +9,7 @@ from builder.pages.doubts import problem_notice
 from builder.pages.html import Html, facts, joined, link, notice, table, tag
 from builder.pages.ledger import ledger_table, standing_badge
 from builder.pages.page import Heading, Page
-from builder.pages.part_page import rated_text
+from builder.pages.part_texts import rated_text
 from builder.pages.paths import relative
 from builder.records import Position, PositionRecord
 from builder.records.position import (

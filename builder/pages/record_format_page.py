@@ -27,6 +27,7 @@ def record_format_page() -> Page:
         headings=tuple(Heading(f"{kind}-record", f"A {kind}") for kind, _ in _KINDS) + _READING_HEADINGS,
         search_text="record format fields YAML schema units table CSV columns how to add a part",
         in_nav=True,
+        wide=False,
     )
 
 

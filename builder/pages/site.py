@@ -15,6 +15,7 @@ from builder.pages.part_page import part_csv, part_page
 from builder.pages.parts_page import parts_data, parts_page
 from builder.pages.position_page import position_page, positions_page
 from builder.pages.record_format_page import record_format_page, schema_files
+from builder.pages.side_by_side_page import curve_file, side_by_side_page
 
 
 def site(checked: CheckedCatalog, *, about: str = "", figures: bool = True) -> Iterator[Page | DataFile]:
@@ -27,6 +28,7 @@ def site(checked: CheckedCatalog, *, about: str = "", figures: bool = True) -> I
     yield parts_page(context.catalog, checked.curves, context.paths)
     yield parts_data(context.catalog, checked.curves, context.paths)
     yield from maker_pages(context.catalog, checked.curves, context.paths)
+    yield side_by_side_page()
     yield families_page(context)
     yield positions_page(context)
     yield checks_page()
@@ -36,5 +38,6 @@ def site(checked: CheckedCatalog, *, about: str = "", figures: bool = True) -> I
     for record in context.catalog.parts:
         yield part_page(record, context)
         yield part_csv(record, context)
+        yield curve_file(record, context)
     for place in context.catalog.positions:
         yield position_page(place, context)

@@ -1,0 +1,79 @@
+"""A tour by example: two parts of the catalog that agree on paper and not in the cold."""
+
+from __future__ import annotations
+
+from collections import defaultdict
+from collections.abc import Iterator
+
+import numpy as np
+
+from builder.comparisons import Comparison, compared, sentence
+from builder.pages.context import Context
+from builder.pages.html import Html, joined, link, tag
+from builder.pages.side_by_side_page import side_by_side_address
+from builder.records import Part, PartRecord
+
+# Below this a pair is no lesson.
+_LEAST_K = 1.0
+_PAIR_C = (25.0, 85.0)
+
+Pair = tuple[PartRecord, PartRecord, Comparison]
+
+
+def tour_section(context: Context) -> Html:
+    """The pair that agrees in rated resistance and B25/85 and yet reads most apart at the cold end, and the way on."""
+    way = joined(
+        [
+            "Find a part by any fragment of its number under ",
+            link("Parts", "parts/index.html"),
+            "; put parts ",
+            link("side by side", "side-by-side.html"),
+            " to see what one reads in place of another; look for company under ",
+            link("Families", "families.html"),
+            ".",
+        ]
+    )
+    pair = largest_pair(context)
+    return joined([tag("p", way), _lesson(*pair, context) if pair else ""])
+
+
+def _lesson(reference: PartRecord, other: PartRecord, comparison: Comparison, context: Context) -> Html:
+    address = side_by_side_address(reference, (other,), context)
+    said = sentence(reference.name, other.name, comparison)
+    lead = "Equal on paper is not equal: these two agree in rated resistance and in B25/85. "
+    return tag("p", lead, said, " ", link("See them side by side", address), ".")
+
+
+def largest_pair(context: Context) -> Pair | None:
+    """Reference, other and their comparison; None where no two parts that agree on paper differ by a kelvin."""
+    pairs = [pair for group in _alike_on_paper(context) if (pair := _farthest(group, context))]
+    found = max(pairs, key=lambda pair: abs(pair[2].reads_k[0]), default=None)
+    return found if found and abs(found[2].reads_k[0]) > _LEAST_K else None
+
+
+def _alike_on_paper(context: Context) -> Iterator[list[PartRecord]]:
+    """Parts with one rated resistance and one stated B25/85, whose curves are more than an estimate from these."""
+    groups: dict[tuple[float, float, float], list[PartRecord]] = defaultdict(list)
+    for record in context.catalog.parts:
+        b_k = _stated_b_k(record.part)
+        if b_k is not None and context.curve(record).curve.basis in ("table", "steinhart-hart"):
+            groups[record.part.rated.resistance_ohm, record.part.rated.at_c, b_k].append(record)
+    return (group for group in groups.values() if len(group) > 1)
+
+
+def _stated_b_k(part: Part) -> float | None:
+    return next((b.b_k for b in part.b_values if tuple(sorted(b.between_c)) == _PAIR_C), None)
+
+
+def _farthest(group: list[PartRecord], context: Context) -> Pair | None:
+    """The two of a group that are farthest apart at the coldest temperature that all are made for."""
+    curves = [context.curve(record) for record in group]
+    low_c, high_c = max(c.operating_c[0] for c in curves), min(c.operating_c[1] for c in curves)
+    if low_c >= high_c:
+        return None
+    r_ohm = np.array([float(c.curve.resistance_ohm(low_c)) for c in curves])
+    if not np.isfinite(r_ohm).all():
+        return None
+    least, most = int(r_ohm.argmin()), int(r_ohm.argmax())
+    comparison = compared(curves[least], curves[most], np.linspace(low_c, high_c, 34))
+    return group[least], group[most], comparison
