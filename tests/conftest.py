@@ -1,5 +1,8 @@
-"""What tests of records share."""
+"""What tests of records and of the site share."""
 
+import os
+import subprocess
+import sys
 from collections.abc import Callable
 from pathlib import Path
 
@@ -10,6 +13,7 @@ from builder.records import Catalog, read_catalog
 # Doctests are collected from every module; two files named conftest would be taken for one.
 collect_ignore_glob = ["conftest.py", "*/conftest.py"]
 
+ROOT = Path(__file__).parents[1]
 Files = dict[str, str | bytes]
 
 
@@ -37,3 +41,15 @@ def messages(records: Callable[[Files], Catalog]) -> Callable[..., list[str]]:
         return [str(problem) for problem in records(named).problems]
 
     return told
+
+
+@pytest.fixture(scope="session")
+def demo_site(tmp_path_factory: pytest.TempPathFactory) -> Path:
+    """The demo site, built strictly once for all the tests of a worker."""
+    folder = tmp_path_factory.mktemp("demo") / "site"
+    command = [sys.executable, "-m", "mkdocs", "build", "--strict", "--quiet", "--site-dir", str(folder)]
+    built = subprocess.run(
+        command, cwd=ROOT, capture_output=True, text=True, env=os.environ | {"NO_MKDOCS_2_WARNING": "1"}
+    )
+    assert (built.returncode, built.stderr) == (0, ""), built.stderr
+    return folder

@@ -31,7 +31,7 @@ COMPARE = """(reference, other, tC) => {
     const names = ["rRef", "r", "reads", "readsMin", "readsMax", "low", "high", "refLow", "refHigh", "ratioPct"];
     return {
         figures: Object.fromEntries(names.map((name) => [name, rows.map((row) => row[name])])),
-        referenceFar: rows.map((row) => row.referenceFar),
+        readsFar: rows.map((row) => row.readsFar),
         otherFar: rows.map((row) => row.otherFar),
     };
 }"""
@@ -195,7 +195,7 @@ def check_pair(told: Any, reference: PartCurve, other: PartCurve, t_c: Array) ->
     meant = ~(np.nan_to_num(ours.reads_k) + t_c > HOTTEST_READING_C)
     assert off(seen["reads"][meant], ours.reads_k[meant]) < WITHIN_K
     assert off(np.log1p(seen["ratioPct"] / 100), np.log1p(ours.ratio_pct / 100)) < WITHIN_RATIO
-    assert told["referenceFar"] == ours.reference_extrapolated.tolist()
+    assert told["readsFar"] == ours.reference_extrapolated.tolist()
     assert told["otherFar"] == ours.other_extrapolated.tolist()
     given = np.isfinite(seen["low"])
     for name, edge_k in (("readsMin", ours.reads_min_k), ("readsMax", ours.reads_max_k)):
