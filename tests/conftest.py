@@ -1,17 +1,29 @@
 """What tests of records and of the site share."""
 
 import os
+import shutil
 import subprocess
 import sys
-from collections.abc import Callable
+from collections.abc import Callable, Iterator
 from pathlib import Path
 
 import pytest
+from playwright.sync_api import Browser, sync_playwright
 
 from builder.records import Catalog, read_catalog
 
 # Doctests are collected from every module; two files named conftest would be taken for one.
 collect_ignore_glob = ["conftest.py", "*/conftest.py"]
+
+_ARGUMENTS = (
+    "--no-sandbox",
+    "--disable-gpu",
+    "--disable-quic",
+    "--no-first-run",
+    "--disable-background-networking",
+    "--disable-component-update",
+    "--disable-sync",
+)
 
 ROOT = Path(__file__).parents[1]
 Files = dict[str, str | bytes]
@@ -53,3 +65,16 @@ def demo_site(tmp_path_factory: pytest.TempPathFactory) -> Path:
     )
     assert (built.returncode, built.stderr) == (0, ""), built.stderr
     return folder
+
+
+@pytest.fixture(scope="session")
+def chromium() -> Iterator[Browser]:
+    """Debian's Chromium, with nothing in it that calls other hosts; in continuous integration it must be there."""
+    found = shutil.which("chromium")
+    if found is None:
+        missing = pytest.fail if os.environ.get("CI") else pytest.skip
+        missing("chromium is not installed: apt-get install chromium")
+    with sync_playwright() as playwright:
+        browser = playwright.chromium.launch(executable_path=found, args=list(_ARGUMENTS))
+        yield browser
+        browser.close()

@@ -59,9 +59,10 @@ def _coefficients_differ(subject: Subject) -> Iterator[Problem]:
         return
     off_k = _reads_c(stated, math.log(part.rated.resistance_ohm)) - part.rated.at_c
     if not abs(off_k) <= _WITHIN_K:
+        read = "give no temperature" if math.isnan(off_k) else f"read {temperature_text(part.rated.at_c + off_k, 4)}"
         message = (
-            f"the coefficients read {temperature_text(part.rated.at_c + off_k, 4)} at the rated resistance, "
-            f"{resistance_text(part.rated.resistance_ohm)} at {temperature_text(part.rated.at_c)}. Compare both with the data sheet."
+            f"the coefficients {read} at the rated resistance, {resistance_text(part.rated.resistance_ohm)} at "
+            f"{temperature_text(part.rated.at_c)}. Compare both with the data sheet."
         )
         yield source.problem(("steinhart_hart",), "rated-differs", message, "warning")
     yield from _table_differs(subject, stated)
@@ -78,11 +79,14 @@ def _table_differs(subject: Subject, stated: SteinhartHart) -> Iterator[Problem]
     t_c = whole_steps_c((low, high), 1.0)
     off_k = stated_curve(stated).extended_temperature_c(curve.curve.resistance_ohm(t_c)) - t_c
     worst = int(np.argmax(np.abs(np.nan_to_num(off_k, nan=np.inf))))
-    if not abs(off_k[worst]) <= _WITHIN_K:
-        message = (
-            f"the coefficients read {signed_text(float(off_k[worst]))} K off the table at {temperature_text(float(t_c[worst]))}, "
-            f"the most from {range_text((low, high))}. Compare both with the data sheet."
+    at, off = temperature_text(float(t_c[worst])), float(off_k[worst])
+    if not abs(off) <= _WITHIN_K:
+        read = (
+            f"give no temperature at {at}, where the table has a resistance"
+            if math.isnan(off)
+            else f"read {signed_text(off)} K off the table at {at}, the most from {range_text((low, high))}"
         )
+        message = f"the coefficients {read}. Compare both with the data sheet."
         yield subject.record.source.problem(("steinhart_hart",), "coefficients-differ", message, "warning")
 
 
@@ -96,7 +100,7 @@ def _b_values_differ(subject: Subject, stated: SteinhartHart) -> Iterator[Proble
         computed_k = curve.b_value_k(*b.between_c)
         near_k, far_k = (kelvin(t_c) for t_c in sorted(b.between_c, key=lambda t_c: abs(t_c - part.rated.at_c)))
         off_k = (computed_k / b.b_k - 1) * abs(1 / near_k - 1 / far_k) * far_k**2
-        if not abs(off_k) <= _WITHIN_K:
+        if abs(off_k) > _WITHIN_K:  # not where the coefficients give no number
             message = (
                 f"{number_text(b.b_k)} K, where the coefficients give {number_text(computed_k, 5)} K: "
                 f"{number_text(abs(off_k), 2)} K apart at {temperature_text(celsius(far_k))}. Compare both with the data sheet."

@@ -7,12 +7,13 @@ from dataclasses import dataclass
 
 @dataclass(frozen=True)
 class Rule:
-    """A rule; the three texts make its page in the site."""
+    """A rule; the three texts make its page in the site. What is never right cannot be accepted."""
 
     name: str
     looks_for: str
     example: str
     settled_by: str
+    acceptable: bool = True
 
 
 RULES = (
@@ -32,12 +33,14 @@ RULES = (
         "A resistance that does not lie below the one of the row before. The resistance of an NTC thermistor falls with temperature.",
         "8057 Ω at 30 °C, followed by 8530 Ω at 35 °C.",
         "Compare both rows with the data sheet. A table that does not fall makes no curve, so it is an error.",
+        acceptable=False,
     ),
     Rule(
         "repeated-temperature",
         "A temperature that stands twice, or rows that are not in order.",
         "35 °C in two rows one after the other.",
         "Remove the row that was typed twice, or correct its temperature.",
+        acceptable=False,
     ),
     Rule(
         "uneven-step",
@@ -121,12 +124,15 @@ RULES = (
         "A field still has the text that beadroll intake puts where it cannot know.",
         "maker: FILL-IN",
         "Fill it in from the data sheet.",
+        acceptable=False,
     ),
     Rule(
         "accepted-nothing",
         "The record accepts a finding that is not there (any more).",
         "accepted: [{rule: row-out-of-line, row: 35, because: …}] in a record whose row at 35 °C is fine.",
         "Remove the entry, so that it does not silence a finding of tomorrow.",
+        acceptable=False,
     ),
 )
 RULE_NAMES = tuple(rule.name for rule in RULES)
+ACCEPTABLE = tuple(rule.name for rule in RULES if rule.acceptable)

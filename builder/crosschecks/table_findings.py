@@ -72,15 +72,20 @@ def _shown(value: float | None, column: str) -> str:
     return temperature_text(value) if column == "t_c" else f"{number_text(value, 7)} Ω"
 
 
+def _expected(finding: Finding) -> str:
+    """What the smooth curve gives: more digits than these would promise too much."""
+    return f"{number_text(finding.expected or 0.0, 5)} Ω"
+
+
 def _out_of_line(finding: Finding) -> str:
     if finding.slip in ("row-left-out", "row-doubled"):
         return _out_of_step(finding)
     if finding.column == "t_c":
         return _wrong_temperature(finding)
-    value, expected = _shown(finding.value, finding.column), _shown(finding.expected, finding.column)
     reads_k = finding.reads_k or 0.0
-    way = "above" if reads_k > 0 else "below"
-    return f"{value} reads {_kelvin(reads_k)} {way} what its neighbours expect, {expected}. {_cure(finding)}"
+    off = f"{_kelvin(reads_k)} {'above' if reads_k > 0 else 'below'}"
+    value = _shown(finding.value, finding.column)
+    return f"{value} reads {off} what its neighbours expect, {_expected(finding)}. {_cure(finding)}"
 
 
 def _wrong_temperature(finding: Finding) -> str:
@@ -90,9 +95,8 @@ def _wrong_temperature(finding: Finding) -> str:
 
 def _out_of_step(finding: Finding) -> str:
     what = "a resistance was left out" if finding.slip == "row-left-out" else "a resistance stands twice"
-    expected = _shown(finding.expected, finding.column)
     return (
-        f"from this row on every resistance is one row off: {what}. Here {expected} is expected, not "
+        f"from this row on every resistance is one row off: {what}. Here {_expected(finding)} is expected, not "
         f"{_shown(finding.value, finding.column)}. {_COMPARE}"
     )
 
@@ -119,7 +123,7 @@ def _uneven(finding: Finding) -> str:
 
 def _rated_differs(finding: Finding) -> str:
     return (
-        f"the table has {_shown(finding.value, 'r_ohm')} at {_shown(finding.t_c, 't_c')}, where the record states "
+        f"the table has {number_text(finding.value or 0.0, 5)} Ω at {_shown(finding.t_c, 't_c')}, where the record states "
         f"{_shown(finding.expected, 'r_ohm')}: {_kelvin(finding.reads_k or 0.0)} apart. Is it the table of another part?"
     )
 
@@ -148,11 +152,9 @@ def _wrong_unit(finding: Finding) -> str:
 
 
 def _not_held(finding: Finding) -> str:
-    if finding.slip == "columns-swapped":
-        return (
-            "the minimum lies above the nominal value and the maximum below it. Exchange the names of the two columns."
-        )
     end, way = ("minimum", "above") if finding.column == "r_min_ohm" else ("maximum", "below")
+    if finding.slip == "columns-swapped":
+        return f"in {finding.about} the {end} lies {way} the nominal value. Were the names of two columns exchanged?"
     value, nominal = _shown(finding.value, finding.column), _shown(finding.expected, "r_ohm")
     more = f", and so in {finding.about}" if finding.about else ""
     return f"the {end}, {value}, lies {way} the nominal value, {nominal}{more}. {_COMPARE}"

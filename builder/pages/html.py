@@ -10,6 +10,7 @@ from typing import Any
 from builder.exports.rows import Column, Row
 
 _LONG = 32
+_LONG_CLASS = ' class="bd-long"'
 
 
 class Html(str):
@@ -45,7 +46,7 @@ def tag(name: str, /, *content: Any, **attributes: Any) -> Html:
 
 def joined(parts: Iterable[Any], by: str = "") -> Html:
     """Parts as one piece of HTML, each escaped unless it is HTML."""
-    return Html(html(by).join(html(part) for part in parts))
+    return Html(html(by).join([part if isinstance(part, Html) else html(part) for part in parts]))
 
 
 def table(headings: Sequence[Any], body: Iterable[Sequence[Any]], *, caption: str, figures: bool = False) -> Html:
@@ -54,11 +55,14 @@ def table(headings: Sequence[Any], body: Iterable[Sequence[Any]], *, caption: st
     A column with nothing in any row is left out.
     """
     columns = [(heading, cells) for heading, cells in zip(headings, zip(*body, strict=True), strict=True) if any(cells)]
-    rows = (
-        tag("tr", tag("th", cells[0], scope="row"), *(tag("td", cell, class_=_length(cell)) for cell in cells[1:]))
-        for cells in zip(*(cells for _, cells in columns), strict=True)
-    )
+    rows = [_row(*cells) for cells in zip(*(cells for _, cells in columns), strict=True)]
     return _framed_table([heading for heading, _ in columns], rows, caption, figures)
+
+
+def _row(first: Any, *others: Any) -> Html:
+    # A page has hundreds of cells: put together at once.
+    cells = "".join([f"<td{_LONG_CLASS if _is_long(cell) else ''}>{html(cell)}</td>" for cell in others])
+    return Html(f'<tr><th scope="row">{html(first)}</th>{cells}</tr>')
 
 
 def rows_table(columns: Sequence[Column], rows: Iterable[Row], *, caption: str) -> Html:
@@ -99,14 +103,16 @@ def _framed_table(headings: Sequence[Any], rows: Iterable[Html], caption: str, f
 def facts(pairs: Iterable[tuple[Any, Any]]) -> Html:
     """Names and values beside each other; a pair without a value is left out."""
     shown = [(name, value) for name, value in pairs if value not in (None, "", ())]
-    written = (tag("div", tag("dt", name), tag("dd", value), class_=_length(value)) for name, value in shown)
+    written = (
+        tag("div", tag("dt", name), tag("dd", value), class_="bd-long" if _is_long(value) else None)
+        for name, value in shown
+    )
     return tag("dl", *written, class_="bd-facts")
 
 
-def _length(value: Any) -> str | None:
-    """The class of text that would make a narrow column tall."""
-    long = isinstance(value, str) and not isinstance(value, Html) and len(value) > _LONG
-    return "bd-long" if long else None
+def _is_long(value: Any) -> bool:
+    """Whether text would make a narrow column tall."""
+    return isinstance(value, str) and not isinstance(value, Html) and len(value) > _LONG
 
 
 def link(text: Any, address: str, **attributes: Any) -> Html:

@@ -28,7 +28,7 @@ def nearest_section(record: PartRecord, context: Context) -> Html:
     here = context.paths.part(record)
     others = tuple(context.catalog.parts[n.place] for n in nearest[:_CHOSEN])
     address = relative(side_by_side_address(record, others, context), here)
-    headings = ("part", "maker", "standing", "reads at most", "at", "")
+    headings = ("part", "maker", "standing", "reads at most", "at", "note")
     rows = table(headings, [_row(record, n, context) for n in nearest], caption="The nearest parts of the catalog")
     return joined([tag("p", lead), rows, tag("p", link("See the nearest side by side", address))])
 

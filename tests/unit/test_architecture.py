@@ -12,7 +12,7 @@ BUILDER = Path(__file__).parents[2] / "builder"
 # What each module or package directly below builder/ may import of the others.
 _ON_CURVES = {"units", "curves"}
 _ON_PARTS = _ON_CURVES | {"problems", "records", "part_curve"}
-_ON_CHECKS = _ON_PARTS | {"fits", "misprints", "crosschecks", "comparisons", "part_fit"}
+_ON_CHECKS = _ON_PARTS | {"fits", "misprints", "crosschecks", "comparisons", "circuit", "part_fit"}
 MAY_IMPORT: dict[str, set[str]] = {
     "units": set(),
     "problems": set(),
@@ -25,6 +25,7 @@ MAY_IMPORT: dict[str, set[str]] = {
     "part_curve": {"units", "records", "curves"},
     "part_fit": _ON_CURVES | {"records", "part_curve", "fits"},
     "comparisons": _ON_CURVES | {"part_curve"},
+    "circuit": _ON_CURVES | {"records", "part_curve"},
     "crosschecks": _ON_PARTS | {"fits", "misprints", "processes"},
     "exports": _ON_CHECKS,
     "pages": _ON_CHECKS | {"exports"},

@@ -24,7 +24,7 @@ from mkdocs.commands.build import build
 from mkdocs.config import load_config
 from mkdocs.exceptions import Abort
 from mkdocs.livereload import LiveReloadServer
-from playwright.sync_api import Browser, sync_playwright
+from playwright.sync_api import Browser
 
 from builder import plugin
 from builder.pages.page import DataFile, Heading, Page
@@ -349,16 +349,6 @@ def test_an_edited_record_reloads_the_page_and_a_bad_one_leaves_it(
     assert "<h1>second</h1>" in saved("second")
     assert "<h1>second</h1>" in saved("bad")
     assert "<h1>third</h1>" in saved("third")
-
-
-@pytest.fixture(scope="module")
-def chromium() -> Iterator[Browser]:
-    with sync_playwright() as playwright:
-        browser = playwright.chromium.launch(
-            executable_path="/usr/bin/chromium", args=["--no-sandbox", "--disable-gpu", "--no-first-run"]
-        )
-        yield browser
-        browser.close()
 
 
 @pytest.mark.parametrize(
