@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, replace
 from itertools import pairwise
@@ -11,11 +12,12 @@ from builder.intake.headings import (
     RESISTANCE_ROLES,
     Heading,
     Role,
-    resistance_unit,
+    caption_unit,
     temperature_heading,
     temperature_unit,
 )
 from builder.intake.numerals import is_tolerance
+from builder.intake.rated import named_ohms
 from builder.intake.sheets import Sheet, SheetLine
 from builder.intake.unreadable import Unreadable, clipped
 
@@ -47,9 +49,14 @@ class Layout:
     groups: tuple[dict[Role, Column], ...]
     ignored: tuple[Column, ...]
     heading_lines: tuple[SheetLine, ...]
-    caption_resistance_unit: str | None
+    caption_ohm_lines: dict[str, int]  # the units of resistance that text above the table states, and where
     caption_temperature_unit: str | None
     assumed: tuple[str, ...]
+
+    @property
+    def caption_resistance_unit(self) -> str | None:
+        """The one unit of resistance that the text above the table states."""
+        return _one(set(self.caption_ohm_lines))
 
     @property
     def resistance_columns(self) -> list[Column]:
@@ -67,13 +74,14 @@ def layout(sheet: Sheet, chosen: str | None) -> Layout:
     used = _one_temperature([c for c in columns if c.role == "temperature" or c.role in RESISTANCE_ROLES])
     groups = [_group(group, sheet) for group in _divided(used)]
     kept = _alike([g for g in groups if len(g) > 1], sheet.rows[0].number)
-    read = {c.index for group in kept for c in group.values()}
     captions = [line for line in above if line not in lines]
+    _check_one_part(kept, sheet, captions)
+    read = {c.index for group in kept for c in group.values()}
     return Layout(
         tuple(kept),
         tuple(c for c in columns if c.index not in read),
         tuple(lines),
-        _one({unit for line in captions if (unit := resistance_unit(line.text, line.number))}),
+        {unit: line.number for line in captions if (unit := caption_unit(line.text, line.number))},
         _one({unit for line in captions if (unit := temperature_unit(line.text))}),
         (*assumed, *more),
     )
@@ -227,6 +235,32 @@ def _alike(groups: Sequence[dict[Role, Column]], line: int) -> list[dict[Role, C
         named = " and ".join(_listed(list(group.values())) for group in groups)
         raise Unreadable(line, f"the tables side by side have different columns: {named}. Give them in separate files.")
     return list(groups)
+
+
+def _check_one_part(groups: Sequence[dict[Role, Column]], sheet: Sheet, captions: Sequence[SheetLine]) -> None:
+    """Tables side by side whose headings or captions name different resistances are two parts."""
+    starts = [min(c.index for c in group.values()) for group in groups]
+    ends = [*starts[1:], sheet.width]
+    over = [_cells_over(line, sheet, list(zip(starts, ends, strict=True))) for line in captions]
+    headed = [" ".join(c.heading.text for c in group.values()) for group in groups]
+    for line, texts in [(sheet.rows[0], headed), *zip(captions, over, strict=True)]:
+        named = [(text, named_ohms(text)) for text in texts]
+        first = next(((text, ohms) for text, ohms in named if ohms), None)
+        other = next((text for text, ohms in named if first and ohms and ohms != first[1]), None)
+        if first and other:
+            raise Unreadable(
+                line.number,
+                f"the tables side by side are of different resistances, {clipped(first[0])!r} and {clipped(other)!r}. "
+                "Choose one by the option column, by its heading or by its number from 1.",
+            )
+
+
+def _cells_over(line: SheetLine, sheet: Sheet, spans: Sequence[tuple[int, int]]) -> list[str]:
+    """What a line has over each of the tables side by side."""
+    if not sheet.aligned:
+        return [" ".join(filter(None, line.cells[start:end])) for start, end in spans]
+    wide = re.split(r" {2,}", line.text.expandtabs().strip())
+    return wide if len(wide) == len(spans) else []
 
 
 def _listed(columns: Sequence[Column]) -> str:

@@ -5,7 +5,8 @@ from __future__ import annotations
 import re
 from collections.abc import Sequence
 
-from builder.intake.headings import Heading, heading
+from builder.intake import first_rows
+from builder.intake.headings import Heading, Role, heading
 from builder.intake.sheets import Sheet, SheetLine
 from builder.intake.unreadable import Unreadable, clipped
 
@@ -18,6 +19,7 @@ _RESISTANCE_WORD = re.compile(r"R|Rt|res\.?|resistance", re.I)
 
 def headings(sheet: Sheet, above: Sequence[SheetLine]) -> tuple[list[SheetLine], list[Heading], list[str]]:
     """The heading lines, one heading a column, and what had to be assumed for it."""
+    _check_first_rows(sheet, above)
     lines = _heading_lines(sheet, above)
     parts = [cells for line in lines if (cells := heading_cells(sheet, line))]
     if not sheet.aligned:
@@ -31,6 +33,20 @@ def headings(sheet: Sheet, above: Sequence[SheetLine]) -> tuple[list[SheetLine],
     repeats = sheet.width // len(texts)
     tiled = f"the {len(texts)} headings hold for each of the {repeats} tables side by side"
     return lines, found * repeats, [tiled] if repeats > 1 else []
+
+
+def _check_first_rows(sheet: Sheet, above: Sequence[SheetLine]) -> None:
+    """No line under the heading has a figure where the rows have theirs; without a heading, no line that may be one."""
+    roles: list[Role] = []
+    for line in above:
+        if roles and not line.is_empty:
+            first_rows.check(sheet, line, roles)
+        cells = heading_cells(sheet, line)
+        if cells and _is_complete(cells, line.number):
+            roles = [heading(cell, line.number).role for cell in cells] * (sheet.width // len(cells))
+    if not roles:
+        for line in _heading_lines(sheet, above) or [line for line in above if not line.is_empty][-1:]:
+            first_rows.check(sheet, line, ["temperature"])
 
 
 def _check_even(sheet: Sheet, heading_line: SheetLine | None) -> None:

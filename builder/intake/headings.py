@@ -16,6 +16,10 @@ _OHM = re.compile(
     r"|[\[(] ?(?P<bare>k) ?[\])]"
 )
 _NUMBER_BEFORE = re.compile(r"(?<![\w.,])[0-9][0-9.,' ]*$")
+_NUMBER_AFTER = re.compile(r"[)\]]? ?[:=]? ?[0-9]")
+_LETTER = re.compile(r"[^\W\d_]")
+_OF_ANOTHER = re.compile(r"pull|divider|shunt", re.I)
+_OF_THE_TABLE = re.compile(r"\b(?:r|rt|r_?25|resistances?|résistances?|widerst[aä]nde?|values?|tables?|units?)\b", re.I)
 _DEGREES = re.compile(
     r"(?:°|\bdeg(?:rees?|\.)?) ?(?P<letter>[CFK])(?![A-Za-z])|(?P<word>celsius|centigrade|fahrenheit|kelvin)", re.I
 )
@@ -26,6 +30,7 @@ _ROLES: tuple[tuple[Role, re.Pattern[str]], ...] = (
     ("B-value", re.compile(r"^b ?[\[(,/] ?k|^b ?_?\(?[0-9]|beta|β|\bb[- ]?(?:value|const)")),
 )
 _RATIO = re.compile(r"\br[^/ ]* ?/ ?r[^a-z]|\br[^/ ]* ?/ ?r$|ratio")
+_PER_CENT = re.compile(r"(?:±|\+/-)? ?[0-9]+(?:[.,][0-9]+)? ?%(?! ?/)")
 _NOMINAL = re.compile(r"nom|typ|cent|norm|mean|nenn")
 _MINIMUM = re.compile(r"min|low")
 _MAXIMUM = re.compile(r"max|high|upp")
@@ -55,6 +60,8 @@ def temperature_heading(text: str) -> Heading:
 
 
 def _role(text: str, in_ohms: bool) -> Role:
+    if (_MINIMUM.search(text) or _MAXIMUM.search(text)) and not _NOMINAL.search(text):
+        text = _PER_CENT.sub("", text)  # "R min 1 %" is a limit, not a tolerance
     for role, pattern in _ROLES:
         if pattern.search(text) and not (role == "B-value" and in_ohms):
             return role
@@ -79,6 +86,14 @@ def resistance_unit(text: str, line: int) -> str | None:
             line, f"{clipped(text)!r} names {' and '.join(sorted(found))}. Leave the one that the values have."
         )
     return next(iter(found), None)
+
+
+def caption_unit(text: str, line: int) -> str | None:
+    """The unit that a text above the table states for the table's resistances; "Pull-up in kΩ: 10" states none."""
+    names_nothing = not _LETTER.search(_DEGREES.sub("", _OHM.sub("", text)))
+    if _OF_ANOTHER.search(text) or any(_NUMBER_AFTER.match(text, m.end()) for m in _OHM.finditer(text)):
+        return None
+    return resistance_unit(text, line) if names_nothing or _OF_THE_TABLE.search(text) else None
 
 
 def _ohm_unit(match: re.Match[str], text: str, line: int) -> str:

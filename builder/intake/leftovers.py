@@ -6,17 +6,16 @@ import re
 from collections.abc import Iterator, Sequence
 
 from builder.intake.columns import Layout
+from builder.intake.first_rows import PAGE_NUMBER, WORD, row_like
 from builder.intake.heading_lines import heading_cells
 from builder.intake.headings import heading, resistance_unit, temperature_unit
 from builder.intake.numerals import is_numeral
 from builder.intake.sheets import Sheet, SheetLine
 from builder.intake.unreadable import Unreadable, clipped
 
-_PAGE_NUMBER = re.compile(
-    r"[- ]*[0-9]{1,3}[- ]*|[- ]*[0-9]{1,4} ?(?:/|of|von|sur|de) ?[0-9]{1,4}[- ]*|(?:page|seite|p\.|sheet) ?[0-9]{1,4}.*",
-    re.I,
-)
-_WORD = re.compile(r"[^\W\d_]{4,}")
+_MARK = r"[*†‡§¹²³⁴⁵#]"
+_EMPHASIS = re.compile(r"(?<![0-9.])(\*+)([^*]+)\1")  # Markdown's, no footnote
+_MARKED = re.compile(rf"(?<=[0-9.]){_MARK}+|{_MARK}+(?=[-+]?[0-9])")
 
 
 def notes(sheet: Sheet, layout: Layout) -> list[str]:
@@ -34,7 +33,7 @@ def notes(sheet: Sheet, layout: Layout) -> list[str]:
         if line.number > first and text in above:
             repeated.append(line.number)
             continue
-        if _PAGE_NUMBER.fullmatch(text):
+        if PAGE_NUMBER.fullmatch(text):
             pages.append(line.number)
             continue
         if line.number > start:
@@ -45,6 +44,10 @@ def notes(sheet: Sheet, layout: Layout) -> list[str]:
     return [
         *_numbered("repeated from above the table", repeated),
         *_numbered("taken as page numbers", pages),
+        *_numbered(
+            "footnote marks beside the values",
+            [row.number for row in sheet.rows if _MARKED.search(_EMPHASIS.sub(r"\2", row.text))],
+        ),
         *others,
     ]
 
@@ -68,18 +71,9 @@ def _check_no_row(sheet: Sheet, line: SheetLine, *, inside: bool) -> None:
             )
         return
     has_digit = any("0" <= c <= "9" for c in cells[1])
-    in_words = sheet.aligned and _WORD.search(line.text)
+    in_words = sheet.aligned and WORD.search(line.text)
     if is_numeral(cells[1]) or all(map(is_numeral, words[:2])) or (has_digit and not in_words):
-        wrong = next((cell for cell in cells if not is_numeral(cell)), None)
-        what = (
-            f"but {clipped(wrong)!r} cannot be read as one of its values"
-            if wrong
-            else "but is not divided as the rows are"
-        )
-        raise Unreadable(
-            line.number,
-            f"{clipped(line.text)!r} looks like a row, {what}. Correct it, or delete the line or the column.",
-        )
+        raise row_like(line, cells)
 
 
 def _check_no_other_table(sheet: Sheet, layout: Layout, line: SheetLine) -> None:

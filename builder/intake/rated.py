@@ -17,6 +17,11 @@ _NAMED = re.compile(
 _AT_25 = re.compile(rf"{_VALUE}[^0-9.;]{{0,12}}(?:\bat|@) ?25(?:\.0+)? ?(?:°|deg)", re.I)
 
 
+_PART = re.compile(
+    r"(?<![\w.,])[0-9][0-9.,]*(?:[kMR][0-9]+| ?[kKM]?(?:Ω|[Oo]hms?)| ?[kM]|R)(?![A-Za-z0-9])"
+)  # no capital K alone, which is a kelvin as well
+
+
 @dataclass(frozen=True)
 class Statement:
     """A resistance at 25 °C that a line of text states."""
@@ -24,6 +29,20 @@ class Statement:
     line: int
     text: str
     ohm: Decimal
+
+
+def named_ohms(text: str) -> set[Decimal]:
+    """The resistances that a text names, such as 10k in "10k part"."""
+    named: set[Decimal] = set()
+    for match in _PART.finditer(text):
+        try:
+            number = numeral(match[0].replace(",", "."), ".")
+        except ValueError:
+            continue
+        unit = resistance_unit(number.suffix)
+        if unit:
+            named.add(shifted(number.value, RESISTANCE_POWER[unit]))
+    return named
 
 
 def statements(lines: Iterable[SheetLine], decimal: str) -> Iterator[Statement]:

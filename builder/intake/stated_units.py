@@ -22,6 +22,7 @@ def of_resistance(sheet: Sheet, found: Layout, chosen: Choices) -> tuple[str | N
             f"the heading says {' and '.join(sorted(map(str, stated)))}, the option unit says {chosen.resistance_unit}. "
             "Leave the option out, or correct the heading.",
         )
+    _check_captions(found, headed)
     bare = [c for c in columns if not c.heading.unit]
     if len(headed) > 1 and bare:
         raise Unreadable(
@@ -35,12 +36,23 @@ def of_resistance(sheet: Sheet, found: Layout, chosen: Choices) -> tuple[str | N
             headed.pop(),
             "as the heading says" if not bare else "as the heading that has a unit says, for all columns",
         )
-    if stated:
-        return found.caption_resistance_unit, "as the text above the table says"
+    if caption := found.caption_resistance_unit:
+        return caption, f"as line {found.caption_ohm_lines[caption]} says"
     if chosen.resistance_unit:
         return chosen.resistance_unit, "by the option unit"
     suffixed = all(_own_unit(row.cells[c.index]) for row in sheet.rows for c in columns if c.index < len(row.cells))
     return None, "each value has its unit behind it" if suffixed else ""
+
+
+def _check_captions(found: Layout, headed: set[str]) -> None:
+    """The text above the table states no other unit of resistance than the headings."""
+    other = next((unit for unit in found.caption_ohm_lines if headed and unit not in headed), None)
+    if other:
+        raise Unreadable(
+            found.caption_ohm_lines[other],
+            f"line {found.caption_ohm_lines[other]} says resistances in {other}, the heading in line "
+            f"{found.heading_lines[0].number} says {' and '.join(sorted(headed))}. Correct the one that is wrong.",
+        )
 
 
 def _own_unit(cell: str) -> bool:

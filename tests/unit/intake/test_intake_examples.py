@@ -119,6 +119,8 @@ def test_b_values_are_computed_from_the_rows_as_comments() -> None:
         ("T (°C);R (Ω)\n0;3\n\n17\n\fT (°C);R (Ω)\n25;1\n", "line 4: taken as page numbers"),
         ("T (°C);R (Ω)\n0;3\n\n17\n\fT (°C);R (Ω)\n25;1\n", "line 5: repeated from above the table"),
         ("T (°C);R (Ω);B25/T (K)\n0;3;3400\n25;1;-\n", '"B25/T (K)" left out: B-value'),
+        ("T (°C);R (Ω)\n0*;3\n25;1†\n", "lines 2, 3: footnote marks beside the values"),
+        ("All resistances in Ω\n\nT (°C);R\n0;3\n25;1\n", "resistance in Ω: as line 1 says"),
         ("T (°C);R (Ω);Rmax (Ω)\n0;3;4\n25;1;2\n", "the maximum column is left out: it has no counterpart"),
         (
             "0;3\n25;1\n",
@@ -164,7 +166,85 @@ def outcome(text: str, **options: str) -> list[list[float]] | str:
     return rows
 
 
+def refusal(text: str, **options: str) -> str:
+    """The refusal of a text, with its line."""
+    refused = outcome(text, **options)
+    assert isinstance(refused, str), refused
+    return refused
+
+
 TWO_ROWS = [[0, 28500], [25, 10000]]
+
+
+@pytest.mark.parametrize("divided", ["@", ";", "\t", "|", "  "])
+@pytest.mark.parametrize(
+    "slip", ["-10@55.3O", "l0@19.9", "-40@336O50", "-40@>336", "-40@336:05", "10-@55.3", "lO@19.9", "x@55.3"]
+)
+def test_a_slip_in_the_first_row_is_refused_as_in_any_other(divided: str, slip: str) -> None:
+    mark = "," if divided == "@" else divided
+    text = f"T (°C)@R (Ω)\n{slip}\n50@15\n75@12\n".replace("@", mark)
+    assert refusal(text).startswith(f"2: {' '.join(slip.replace('@', mark).split())!r} looks like a row, but ")
+
+
+def test_a_first_row_that_lacks_its_temperature_is_refused() -> None:
+    assert refusal("T (°C);R (Ω)\n;55.3\n50;15\n75;12\n").startswith("2: ';55.3' looks like a row")
+
+
+def test_a_first_row_with_a_slip_is_refused_without_a_heading_too() -> None:
+    assert refusal("-10;55.3O\n-5;42.3\n0;32.65\n", unit="kohm").startswith("1: '-10;55.3O' looks like a row")
+
+
+@pytest.mark.parametrize("divided", [";", "  "])
+@pytest.mark.parametrize(
+    "heading",
+    [
+        "T@R\n(°C)@(kΩ)",
+        "T (°C)@R (kΩ)\nR25 = 10 kΩ",
+        "T (°C)@R (kΩ)\nR25@10 kΩ",
+        "T (°C)@R (kΩ)\nB25/85@3435 K",
+        "T (°C)@R (kΩ)\nB25/85 3435 K",
+        "T (°C)@R (kΩ)\n°C@10 kΩ",
+        "T (°C)@R (kΩ)\n25 °C is the rated temperature",
+        "T (°C)@R (kΩ)\n\n- 4 -",
+    ],
+)
+def test_a_second_heading_line_with_figures_is_no_row(divided: str, heading: str) -> None:
+    assert outcome(f"{heading}\n0@28.5\n25@10.0\n".replace("@", divided)) == TWO_ROWS
+
+
+def test_a_page_number_under_the_heading_is_no_row() -> None:
+    assert outcome("T (°C)   R (Ω)\n- 4 -\n0   28 500\n25   10 000\n") == TWO_ROWS
+
+
+@pytest.mark.parametrize(
+    "caption",
+    ["All resistances in kΩ", "Table 2 (kΩ)", "R in kΩ", "Values in kΩ", "°C, kΩ"],
+)
+def test_a_unit_above_the_table_counts_where_the_text_speaks_of_the_table(caption: str) -> None:
+    assert outcome(f"{caption}\n\nT;R\n0;28.5\n25;10.0\n") == TWO_ROWS
+
+
+@pytest.mark.parametrize(
+    "caption", ["Pull-up in kΩ: 10", "Pull-up values in kΩ", "Load in kΩ", "Reference resistance in kΩ: 10"]
+)
+def test_a_unit_of_another_resistor_is_not_the_tables(caption: str) -> None:
+    assert "nothing states the unit" in refusal(f"{caption}\n\nT;R\n0;28500\n25;10000\n")
+
+
+def test_emphasis_is_no_footnote_mark() -> None:
+    assert not [n for n in comments("|T (°C)|R (Ω)|\n|-|-|\n|0|**3**|\n|25|*1*|\n") if "footnote" in n]
+
+
+@pytest.mark.parametrize("divided", [";", "  "])
+def test_tables_side_by_side_headed_with_different_resistances_are_refused(divided: str) -> None:
+    body = "T (°C)@R25=10k@T (°C)@R25=100k\n0@28500@50@41400\n25@10000@85@14800\n"
+    message = refusal(body.replace("@", divided), unit="ohm")
+    assert "the tables side by side are of different resistances" in message
+
+
+def test_tables_side_by_side_captioned_with_one_resistance_are_one_part() -> None:
+    text = "10k part;;10 kΩ part;\nT (°C);R (kΩ);T (°C);R (kΩ)\n0;28.5;25;10.0\n"
+    assert outcome(text) == TWO_ROWS
 
 
 def test_a_heading_given_whole_is_chosen_before_those_that_contain_it() -> None:
