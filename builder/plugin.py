@@ -242,7 +242,8 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         path = posixpath.join(folder, slot("name") + ".html")
         file = File(path, None, config.site_dir, use_directory_urls=False)
         records = Path(relpath(self.config.records, config.docs_dir)).as_posix()
-        file.edit_uri = f"{records}/{slot('record')}" if has_record else None
+        can_be_edited = has_record and self._in_project(config)
+        file.edit_uri = f"{records}/{slot('record')}" if can_be_edited else None
         page = SitePage(slot("title"), file, config)
         if page.edit_url:
             page.edit_url = re.sub(r"[^/]+/\.\./", "", page.edit_url)
@@ -251,6 +252,11 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         page.toc = contents(slot("title"), headings)
         page.content = framed(BODY)
         return page
+
+    def _in_project(self, config: MkDocsConfig) -> bool:
+        """Whether the records lie below the folder of mkdocs.yml, so that the web address of the project has them."""
+        folder = Path(config.config_file_path).resolve().parent
+        return Path(self.config.records).resolve().is_relative_to(folder)
 
     def on_post_template(self, output: str, *, template_name: str, config: MkDocsConfig) -> str:
         if template_name != "sitemap.xml":

@@ -5,6 +5,17 @@
     return query.normalize("NFKC").replace(/(\d)\s+(?=[kM]?Ω|[kM]\b)/gi, "$1");
   }
 
+  /* A fragment such as 3F38 is looked for inside words too; without a weight, so that what begins with it comes first. */
+  function insideWords(query) {
+    return query.replace(/(?<!\S)(?=[a-z]*\d)[a-z\d]{3,}(?!\S)/gi, "$& *$&*^0");
+  }
+
+  /* Material says of every word that no found word begins with that it is missing. */
+  function markFound({ title, text, terms }) {
+    const words = `${title} ${text}`.replace(/<\/?mark>/g, "").toLowerCase();
+    for (const term of Object.keys(terms)) terms[term] ||= words.includes(term);
+  }
+
   /* What the worker's script expects to find around it and a window does not have, or has with another meaning. */
   function makeWorkerScope(scope, worker) {
     scope.postMessage = (data) => worker.dispatchEvent(new MessageEvent("message", { data }));
@@ -48,10 +59,17 @@
 
   const fromFile = location.protocol === "file:";
 
-  /* Material sends its worker {type: 2, data: query}. */
+  /* Material sends its worker {type: 2, data: query}, and is sent {type: 3, data: {items: pages of entries}}. */
   window.Worker = class extends (fromFile ? FrameWorker : Worker) {
+    constructor(url) {
+      super(url);
+      this.addEventListener("message", ({ data: { type, data } }) => {
+        if (type === 3) data.items.flat().forEach(markFound);
+      });
+    }
+
     postMessage(message) {
-      super.postMessage(message.type === 2 ? { ...message, data: joined(message.data) } : message);
+      super.postMessage(message.type === 2 ? { ...message, data: insideWords(joined(message.data)) } : message);
     }
   };
 

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterable, Sequence
+from functools import cache
 from html import escape
 from typing import Any
 
@@ -36,12 +37,20 @@ def tag(name: str, /, *content: Any, **attributes: Any) -> Html:
     >>> tag("a", "R & D", href="x?a=1&b=2", class_="bd-link", hidden=False)
     '<a href="x?a=1&amp;b=2" class="bd-link">R &amp; D</a>'
     """
-    written = "".join(
-        f" {key.rstrip('_').replace('_', '-')}" + ("" if value is True else f'="{escape(str(value))}"')
+    inner = joined(content)
+    if not attributes:
+        return Html(f"<{name}>{inner}</{name}>")
+    written = [
+        f" {_attribute_name(key)}" if value is True else f' {_attribute_name(key)}="{escape(str(value))}"'
         for key, value in attributes.items()
         if value is not None and value is not False
-    )
-    return Html(f"<{name}{written}>{joined(content)}</{name}>")
+    ]
+    return Html(f"<{name}{''.join(written)}>{inner}</{name}>")
+
+
+@cache
+def _attribute_name(key: str) -> str:
+    return key.rstrip("_").replace("_", "-")
 
 
 def joined(parts: Iterable[Any], by: str = "") -> Html:

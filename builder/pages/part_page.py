@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
+
 import numpy as np
 
 from builder.curves.curve import Mask
@@ -60,11 +62,19 @@ def part_csv(record: PartRecord, context: Context) -> DataFile:
 
 
 def _search_text(part: Part) -> str:
-    # The rated resistance with and without a space before its unit: people type 10k, 10kΩ and 10 kΩ.
-    text = resistance_text(part.rated.resistance_ohm)
-    short = text.replace(" ", "")
-    words = [part.maker, part.own_number, text, short, short.removesuffix("Ω"), body_text(part), part.description]
+    rated = _resistance_words(part.rated.resistance_ohm)
+    words = [part.maker, part.own_number, *rated, body_text(part), part.description]
     return " ".join(word for word in words if word)
+
+
+def _resistance_words(r_ohm: float) -> Iterable[str]:
+    """A resistance in every way that people type it: 2.2 kΩ, 2.2kΩ, 2.2k, 2k2 and 2200."""
+    text = resistance_text(r_ohm)
+    number, unit = text.split()
+    prefix = unit.removesuffix("Ω")
+    letter = prefix or "R"
+    code = number.replace(".", letter) if "." in number else number + letter
+    return dict.fromkeys((text, number + unit, number + prefix, code, number_text(r_ohm, 9)))
 
 
 def _body(record: PartRecord, context: Context) -> Html:
@@ -128,8 +138,10 @@ def _curve_section(record: PartRecord, context: Context) -> Html:
 def _figures(record: PartRecord, curve: PartCurve, sample: Sample) -> tuple[Html, Html]:
     part = record.part
     t_c = sample.t_c
-    far = sample.extrapolated | _estimated(curve, t_c)
-    far_name = "extrapolated" if sample.extrapolated.any() else "estimated"
+    estimated = _estimated(curve, t_c) & ~sample.extrapolated
+    far = estimated | sample.extrapolated
+    kinds = (("estimated", estimated), ("extrapolated", sample.extrapolated))
+    far_name = " or ".join(kind for kind, where in kinds if where.any())
     resistance = resistance_figure(
         f"Resistance of {part.part} over temperature",
         f"Falls from {resistance_text(float(sample.r_ohm[0]))} at {temperature_text(float(t_c[0]))} to "

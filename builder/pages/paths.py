@@ -13,6 +13,12 @@ from types import MappingProxyType
 from builder.pages.html import slug
 from builder.records import Catalog, PartRecord, PositionRecord
 
+_LONGEST = 80
+_HASH_DIGITS = 6
+# Windows keeps the names of its devices, whatever follows after a point.
+_DEVICES = ("con", "prn", "aux", "nul", *(f"{port}{number}" for port in ("com", "lpt") for number in range(10)))
+_TAKEN = frozenset(("index", *_DEVICES))
+
 
 @dataclass(frozen=True, eq=False)
 class Paths:
@@ -38,17 +44,16 @@ class Paths:
 
     @cached_property
     def _makers(self) -> Mapping[str, str]:
-        return _distinct(
-            (record.part.maker, slug(record.part.maker), record.part.maker) for record in self.catalog.parts
-        )
+        # A point would let a folder take the place of a file such as `index.html`.
+        makers = dict.fromkeys(record.part.maker for record in self.catalog.parts)
+        return _distinct((maker, _file_slug(maker.replace(".", "-")), maker) for maker in makers)
 
     @cached_property
     def _parts(self) -> Mapping[str, str]:
-        # `index` is the maker's own page.
         wanted = (
             (
                 record.source.file,
-                f"parts/{self._makers[record.part.maker]}/{_number_slug(record.part.part)}",
+                f"parts/{self._makers[record.part.maker]}/{_file_slug(record.part.part)}",
                 record.name,
             )
             for record in self.catalog.parts
@@ -58,7 +63,7 @@ class Paths:
     @cached_property
     def _positions(self) -> Mapping[str, str]:
         wanted = (
-            (record.source.file, f"positions/{_number_slug(record.position.position)}", record.position.position)
+            (record.source.file, f"positions/{_file_slug(record.position.position)}", record.position.position)
             for record in self.catalog.positions
         )
         return MappingProxyType({file: f"{path}.html" for file, path in _distinct(wanted).items()})
@@ -73,16 +78,27 @@ def relative(target: str, page: str) -> str:
     return posixpath.relpath(target, posixpath.dirname(page) or ".")
 
 
-def _number_slug(number: str) -> str:
-    made = slug(number)
-    return made if made != "index" else "index-part"
+def _file_slug(name: str) -> str:
+    """A name as a file or folder of any file system, beside the `index` that every folder has."""
+    made = slug(name)
+    if len(made) > _LONGEST:
+        made = f"{made[: _LONGEST - _HASH_DIGITS - 1]}-{_hash(name)}"
+    first, point, rest = made.partition(".")
+    return f"{first}-part{point}{rest}" if first in _TAKEN else made
 
 
 def _distinct(wanted: Iterable[tuple[str, str, str]]) -> dict[str, str]:
-    """A path for each key; where several keys want one path, all of them get a hash of their name."""
-    asked = dict.fromkeys(wanted)
-    count = Counter(path for path in {key: path for key, path, _ in asked}.values())
-    return {
-        key: path if count[path] == 1 else f"{path}-{hashlib.sha256(name.encode()).hexdigest()[:6]}"
-        for key, path, name in asked
-    }
+    """A path for each key, from keys, paths and names; where keys want one path, all of them get a hash of their name."""
+    wanted = tuple(wanted)
+    paths = {key: path for key, path, _ in wanted}
+    for digits in range(_HASH_DIGITS, 65):
+        count = Counter(paths.values())
+        if len(count) == len(paths):
+            break
+        # What a hash was added to may be another's plain name.
+        paths |= {key: f"{path}-{_hash(name, digits)}" for key, path, name in wanted if count[paths[key]] > 1}
+    return paths
+
+
+def _hash(name: str, digits: int = _HASH_DIGITS) -> str:
+    return hashlib.sha256(name.encode()).hexdigest()[:digits]

@@ -135,6 +135,16 @@ def test_a_page_without_a_record_has_no_edit_link(project: Project) -> None:
     assert 'rel="edit"' not in project.read("parts/index.html")
 
 
+def test_a_record_outside_the_project_has_no_edit_link(
+    project: Project, tmp_path_factory: pytest.TempPathFactory
+) -> None:
+    elsewhere = tmp_path_factory.mktemp("records")
+    (project.folder / "mkdocs.yml").write_text(
+        MKDOCS_YML.replace("- beadroll", f"- beadroll: {{records: {elsewhere}}}")
+    )
+    assert 'rel="edit"' not in project.built(PATH)
+
+
 def test_text_from_records_is_escaped_in_the_frame(project: Project) -> None:
     evil = '"><script>alert("&")</script>'
     html = project.built(
@@ -360,12 +370,16 @@ def test_an_edited_record_reloads_the_page_and_a_bad_one_leaves_it(
         ("tarnb", [TITLE]),
         ("10 kΩ", [TITLE]),
         ("47k", ["TB3A-473F38"]),
-        ("0603", [TITLE]),
+        ("0603", [TITLE, "X-14730603"]),
+        ("73F38", ["TB3A-473F38"]),
+        ("03F", [TITLE]),
+        ("473", ["TB3A-473F38", "X-14730603"]),
     ],
 )
 def test_the_search_works_from_a_file_with_the_network_off(
     project: Project, chromium: Browser, query: str, found: list[str]
 ) -> None:
+    project.pages += (replace(PART, path=PATH.replace("103f38", "x"), title="X-14730603", search_text="1k"),)
     project.build()
     page = chromium.new_page(offline=True)
     page.set_default_timeout(5000)
@@ -379,6 +393,8 @@ def test_the_search_works_from_a_file_with_the_network_off(
     page.locator(".md-search__input").press("End")
     page.locator(f".md-search-result__item:nth-child({len(found)})").wait_for()
     assert page.locator(".md-search-result__item h1").all_inner_texts() == found
+    # Of two words joined by a hyphen one result may lack one; a fragment that is there is never said to be missing.
+    assert ("Missing" in page.locator(".md-search-result").inner_text()) == ("-" in query)
     page.close()
     assert told == []
     assert [url for url in asked if not url.startswith(f"file://{project.folder}/site/")] == []

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import csv
 import io
+import re
 from pathlib import Path
 
 import pytest
@@ -120,6 +121,20 @@ def test_rows_beyond_the_curve_are_marked_as_extrapolated(tmp_path: Path) -> Non
     assert body.count('<tr class="bd-far">') == 3
 
 
+@pytest.mark.parametrize(
+    ("fields", "named"),
+    [
+        ({"limits": {"operating_c": [-40, 125]}}, "estimated"),
+        ({"limits": {"operating_c": [-250, 125]}}, "estimated or extrapolated"),
+        (TABLE | {"limits": {"operating_c": [-10, 90]}}, "extrapolated"),
+    ],
+)
+def test_the_figures_say_what_their_dashed_lines_are(tmp_path: Path, fields: dict[str, object], named: str) -> None:
+    drawn = section(only_page(tmp_path, **TOLERANCES | fields), "curve")
+    keys = re.findall("<figcaption>.*?</figcaption>", drawn)
+    assert [text(key.rpartition("<span>")[2]) for key in keys] == [named, named]
+
+
 def test_a_curve_that_must_not_be_extrapolated_ends_where_it_is_known(tmp_path: Path) -> None:
     body = only_page(tmp_path, **BENT, limits={"operating_c": [-40, 125]})
     shown = [row[0] for row in rows(body, "Every 5 K")]
@@ -199,8 +214,22 @@ def test_the_csv_goes_through_every_row_of_the_record_s_table(tmp_path: Path) ->
 
 def test_the_search_knows_the_resistance_as_people_type_it(tmp_path: Path) -> None:
     page, _ = page_and_csv(read(tmp_path, {"own_number": "HS-1", "body": {"form": "chip", "size_code": "0603"}}))
-    assert page.search_text == "Pellworm HS-1 10 kΩ 10kΩ 10k chip 0603"
+    assert page.search_text == "Pellworm HS-1 10 kΩ 10kΩ 10k 10000 chip 0603"
     assert page.title == "PX-1 · Pellworm"
+
+
+@pytest.mark.parametrize(
+    ("r_ohm", "words"),
+    [
+        (2200, "2.2 kΩ 2.2kΩ 2.2k 2k2 2200"),
+        (470, "470 Ω 470Ω 470 470R"),
+        (4.7, "4.7 Ω 4.7Ω 4.7 4R7"),
+        (22e6, "22 MΩ 22MΩ 22M 22000000"),
+    ],
+)
+def test_the_search_knows_the_code_and_the_plain_ohms(tmp_path: Path, r_ohm: float, words: str) -> None:
+    page, _ = page_and_csv(read(tmp_path, {"rated": {"resistance_ohm": r_ohm}}))
+    assert page.search_text == f"Pellworm {words} leaded"
 
 
 def test_the_page_knows_its_record_for_the_edit_link(tmp_path: Path) -> None:

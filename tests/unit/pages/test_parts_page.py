@@ -122,6 +122,10 @@ def test_b_25_85_is_left_out_where_the_curve_must_not_be_extrapolated(written: W
     assert only_b(written({"steinhart_hart": bent})) == (None, "")
 
 
+def test_b_25_85_is_left_out_where_a_steep_end_leads_to_no_resistance(written: Write) -> None:
+    assert only_b(written({"r_t_table": {"rows": [[24, 10400], [25, 10000], [25.01, 100]]}})) == (None, "")
+
+
 def test_what_a_record_says_cannot_end_the_script_or_become_html(written: Write) -> None:
     catalog = written({"part": HOSTILE, "maker": HOSTILE, "own_number": HOSTILE, "description": HOSTILE})
     assert "<" not in script(catalog)
