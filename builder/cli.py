@@ -15,6 +15,8 @@ import click
 from builder.comparisons import Comparison, NoCommonRange, common_range_c, compared, families, sentence
 from builder.comparisons.families import DEFAULT_RANGE_C, DEFAULT_WITHIN_K
 from builder.crosschecks import checked_catalog
+from builder.crosschecks.checked import findings
+from builder.crosschecks.subject import Subject
 from builder.exports import comparison_rows, curve_rows, fit_rows, rows
 from builder.exports.rows import Column
 from builder.fits import EQUATIONS
@@ -22,7 +24,7 @@ from builder.intake import Unreadable, record_text
 from builder.part_curve import part_curve, steps_from_c, whole_steps_c
 from builder.part_fit import fitted
 from builder.problems import Problem, count_text, errors, warnings
-from builder.records import Catalog, PartRecord, UnknownPart, read_catalog
+from builder.records import Catalog, LooseTable, PartRecord, UnknownPart, read_catalog
 from builder.units import Array, number_text, ohms_from_text, range_text
 
 _MOST_ROWS = 100_000
@@ -56,7 +58,7 @@ def _common(command: _Command) -> _Command:
     return _RECORDS(_FORMAT(command))
 
 
-class Degrees(click.ParamType[float]):
+class Degrees(click.ParamType):  # type: ignore[type-arg]  # generic from click 8.3 on
     """A temperature on the command line, [°C]; a typographic minus is taken for a minus."""
 
     name = "C"
@@ -72,7 +74,7 @@ class Degrees(click.ParamType[float]):
         return number
 
 
-class Step(click.ParamType[float]):
+class Step(click.ParamType):  # type: ignore[type-arg]
     """A difference of temperatures on the command line, [K]."""
 
     name = "K"
@@ -88,7 +90,7 @@ class Step(click.ParamType[float]):
         return number
 
 
-class Resistance(click.ParamType[float]):
+class Resistance(click.ParamType):  # type: ignore[type-arg]
     """A resistance on the command line, [Ω]: a number or an R-K-M code."""
 
     name = "OHM"
@@ -122,6 +124,11 @@ def check(paths: tuple[Path, ...], records: Path, form: str, today: datetime.dat
     """
     wanted = [_inside(path, records) for path in paths]
     catalog = checked_catalog(records, today=today.date() if today else datetime.date.today()).catalog
+    # A record's own CSV belongs to it.
+    with_tables: list[PartRecord | LooseTable] = [*catalog.parts, *catalog.curveless, *catalog.loose_tables]
+    for record in with_tables:
+        if record.table is not None and wanted and _below(record.source.file, wanted):
+            wanted.append(Path(record.table.file).resolve())
     found = [problem for problem in catalog.problems if not wanted or _below(problem.file, wanted)]
     {"table": _print_problems, "json": _print_json_problems, "csv": _print_csv_problems}[form](found, catalog)
     sys.exit(1 if errors(found) else 0)
@@ -132,6 +139,8 @@ def _inside(path: Path, records: Path) -> Path:
         raise click.UsageError(f"there is no {path}. Name a record or a folder of records.")
     if not path.resolve().is_relative_to(records.resolve()):
         raise click.UsageError(f"{path} is not below {records}. Name the folder of the records with --records.")
+    if path.is_file() and path.suffix not in (".yaml", ".csv"):
+        raise click.UsageError(f"{path} is no record. Name a .yaml file, or a folder.")
     return path.resolve()
 
 
@@ -204,8 +213,8 @@ _BASIS_WORDS = {
 
 
 def _temperatures_c(from_c: float | None, to_c: float | None, step_k: float, range_c: tuple[float, float]) -> Array:
-    if from_c is not None and to_c is not None and from_c > to_c:
-        raise click.UsageError(f"--from {number_text(from_c)} lies above --to {number_text(to_c)}. Exchange them.")
+    if from_c is not None and to_c is not None:
+        _refuse_falling(from_c, to_c)
     low_c, high_c = range_c
     low_c = from_c if from_c is not None else low_c if to_c is None else min(low_c, to_c)
     high_c = to_c if to_c is not None else max(low_c, high_c)
@@ -249,6 +258,7 @@ def fit(
     made = part_curve(record)
     low_c, high_c = made.operating_c
     span_c = (low_c if from_c is None else from_c, high_c if to_c is None else to_c)
+    _refuse_falling(*span_c)
     try:
         found = fitted(record, made, equation, span_c, minimise=minimise)
     except ValueError as wrong:
@@ -345,7 +355,7 @@ def _comparison(
 @click.option(
     "--within",
     "within_k",
-    type=click.FloatRange(min=0, min_open=True),
+    type=Step(),
     default=DEFAULT_WITHIN_K,
     show_default=True,
     metavar="K",
@@ -361,8 +371,7 @@ def families_(within_k: float, from_c: float, to_c: float, records: Path, form: 
 
     Parts whose curve does not hold over the whole range are left out and named.
     """
-    if from_c > to_c:
-        raise click.UsageError(f"--from {number_text(from_c)} lies above --to {number_text(to_c)}. Exchange them.")
+    _refuse_falling(from_c, to_c)
     parts = read_catalog(records).parts
     found = families([part_curve(record) for record in parts], within_k, (from_c, to_c))
     numbers = [[parts[i].part.part for i in group] for group in found.groups]
@@ -387,6 +396,11 @@ def _print_rows(form: str, head: dict[str, Any], columns: tuple[Column, ...], ta
         click.echo(rows.table_text(columns, table))
 
 
+def _refuse_falling(from_c: float, to_c: float) -> None:
+    if from_c > to_c:
+        raise click.UsageError(f"--from {number_text(from_c)} lies above --to {number_text(to_c)}. Exchange them.")
+
+
 def _part(records: Path, name: str) -> PartRecord:
     """The part a command names; its problems, or that it is unknown, end the command."""
     (record,) = _parts(records, (name,))
@@ -400,6 +414,8 @@ def _parts(records: Path, names: tuple[str, ...]) -> list[PartRecord]:
     found = [_named(catalog, name, faulty) for name in names]
     files = {record.source.file for record in found}
     own = [problem for problem in faulty if problem.file in files]
+    for record in found:
+        own += errors(findings(Subject(record, part_curve(record), datetime.date.today())))
     for problem in own:
         click.echo(str(problem), err=True)
     if own:

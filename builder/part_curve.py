@@ -190,7 +190,7 @@ def _from_b_value(record: PartRecord, operating_c: tuple[float, float]) -> Curve
     rated = part.rated
     law = BentExponential(float(np.log(rated.resistance_ohm)), rated.at_c, stated.between_c, stated.b_k, bend_k2)
     # A pair away from the rated temperature fixes a ratio of two resistances, not the resistances.
-    fixed_c = tuple(sorted({rated.at_c, *stated.between_c} if rated.at_c in stated.between_c else {rated.at_c}))
+    fixed_c = tuple(sorted({rated.at_c, part.other_c(stated)} if part.b_values_at_rated() else {rated.at_c}))
     low_c, high_c = _widened(operating_c, (rated.at_c, *stated.between_c))
     return Curve("b-value", law, (max(low_c, law.coldest_c), high_c), fixed_c=fixed_c)
 

@@ -7,7 +7,7 @@ import os
 import sys
 import threading
 from collections.abc import Callable, Sequence
-from itertools import pairwise
+from concurrent.futures import ProcessPoolExecutor
 from typing import Any, TypeVar
 
 T = TypeVar("T")
@@ -29,14 +29,15 @@ def shared_out(work: Callable[[Sequence[T]], list[R]], items: Sequence[T]) -> li
     there are few items, one core, other threads (a fork copies their locks, not them), or no safe fork.
     """
     count = min(_cores(), len(items) // _FEWEST_ITEMS + 1)
-    if count < 2 or sys.platform != "linux" or threading.active_count() > 1 or multiprocessing.current_process().daemon:
+    if count < 2 or sys.platform != "linux" or threading.active_count() > 1:
         return work(items)
     global _work, _items
     _work, _items = work, items
     ends = [len(items) * share // (count * _SHARES_EACH) for share in range(count * _SHARES_EACH + 1)]
     try:
-        with multiprocessing.get_context("fork").Pool(count) as pool:
-            shares = pool.starmap(_share, pairwise(ends), chunksize=1)
+        # Unlike a Pool, it raises when a process is killed, instead of waiting for it for ever.
+        with ProcessPoolExecutor(count, multiprocessing.get_context("fork")) as pool:
+            shares = list(pool.map(_share, ends[:-1], ends[1:]))
     finally:
         _work, _items = None, ()
     return [result for share in shares for result in share]

@@ -7,7 +7,7 @@
 window.beadroll = window.beadroll || {};
 (() => {
   const ZERO_C = -273.15;
-  const LN_LARGEST = 700; // e to more than that is beyond a number
+  const LN_LARGEST = 700; // e to more than that, or less than minus that, is beyond a number
   const ROUNDING_K = 1e-6;
   const MOST_STEPS = 100;
 
@@ -60,7 +60,7 @@ window.beadroll = window.beadroll || {};
       const i = place(x, inside), piece = this.piece(i), dx = inside - x[i];
       let lnR = y[i] + dx * (slope[i] + dx * (piece.bend + dx * piece.twist));
       if (at !== inside) lnR += (at - inside) * slope[at < inside ? 0 : end];
-      return lnR < LN_LARGEST ? Math.exp(lnR) : NaN;
+      return Math.abs(lnR) < LN_LARGEST ? Math.exp(lnR) : NaN;
     }
 
     /* °C; beyond the span along the end's slope, even where the curve is not to be extrapolated. */

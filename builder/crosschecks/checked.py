@@ -5,6 +5,7 @@ from __future__ import annotations
 import datetime
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
+from itertools import pairwise
 from pathlib import Path
 
 from builder.crosschecks import coefficients, statements, table_findings
@@ -13,7 +14,8 @@ from builder.crosschecks.subject import Check, Subject
 from builder.part_curve import PartCurve, part_curve
 from builder.problems import Problem, in_order
 from builder.processes import shared_out
-from builder.records import Catalog, PartRecord, read_catalog
+from builder.records import Catalog, read_catalog
+from builder.records.table import TableData
 
 _CHECKS: tuple[Check, ...] = (*table_findings.CHECKS, *coefficients.CHECKS, *statements.CHECKS)
 
@@ -38,30 +40,29 @@ def checked_catalog(root: Path, *, today: datetime.date) -> CheckedCatalog:
     curves = {record.source.file: part_curve(record) for record in catalog.parts}
     subjects = [Subject(r, curves.get(r.source.file), today) for r in (*catalog.parts, *catalog.curveless)]
     found = [problem for problems in shared_out(_findings_of_share, subjects) for problem in problems]
-    left = _unexplained(catalog.problems, catalog.curveless, found)
+    found += [problem for loose in catalog.loose_tables for problem in table_findings.loose_table_findings(loose)]
+    examined = [*(r.table for r in catalog.curveless), *(loose.table for loose in catalog.loose_tables)]
+    left = _unexplained(catalog.problems, [table for table in examined if table is not None], found)
     return CheckedCatalog(replace(catalog, problems=in_order([*left, *found])), curves, today)
 
 
+def findings(subject: Subject) -> list[Problem]:
+    """What the cross-checks find in one part and its record does not accept."""
+    return list(not_accepted(subject.record, [problem for check in _CHECKS for problem in check(subject)]))
+
+
 def _findings_of_share(subjects: Sequence[Subject]) -> list[list[Problem]]:
-    return [
-        list(not_accepted(subject.record, [problem for check in _CHECKS for problem in check(subject)]))
-        for subject in subjects
-    ]
+    return [findings(subject) for subject in subjects]
 
 
 def _unexplained(
-    problems: Iterable[Problem], curveless: Iterable[PartRecord], found: Iterable[Problem]
+    problems: Iterable[Problem], tables: Iterable[TableData], found: Iterable[Problem]
 ) -> Iterator[Problem]:
     """Problems of reading, without rows out of order that a finding explains: the wrong row itself says it better.
 
     A row that is too high stands above the row before it, one that is too low has the next row above it.
     """
-    following = {
-        (table.file, line): table.lines[i + 1]
-        for record in curveless
-        if (table := record.table) is not None
-        for i, line in enumerate(table.lines[:-1])
-    }
+    following = {(table.file, line): after for table in tables for line, after in pairwise(table.lines)}
     explained = {place for p in found for place in ((p.file, p.line), (p.file, following.get((p.file, p.line))))}
     out_of_order = ("not-falling", "repeated-temperature")
     return (p for p in problems if p.rule not in out_of_order or (p.file, p.line) not in explained)

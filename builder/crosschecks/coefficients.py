@@ -4,12 +4,13 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterator
-from itertools import pairwise
+from itertools import chain, pairwise
 
 import numpy as np
 
 from builder.crosschecks.subject import Check, Subject
 from builder.curves import Curve, SteinhartHartLaw
+from builder.curves.b_value import COLD_BENDS_K2, HOT_BENDS_K2
 from builder.part_curve import whole_steps_c
 from builder.problems import Problem
 from builder.records.part import BValue, SteinhartHart
@@ -19,6 +20,10 @@ from builder.units import celsius, kelvin, number_text, range_text, resistance_t
 _WITHIN_K = 0.3
 # A wrong unit is off by tens of kelvin; read the right way the rated temperature comes back far better than this.
 _UNIT_WITHIN_K = 3.0
+# Well beyond the bends of the fourteen public tables, so that only a wrong figure gets there; two B-values, each
+# rounded to a whole kelvin, may lie 1 K closer or farther apart.
+_LIKELY_BENDS_K2 = (-6e5, 0.5e5)
+_B_ROUNDING_K = 1.0
 
 
 def stated_curve(stated: SteinhartHart) -> Curve:
@@ -55,7 +60,8 @@ def _reads_c(stated: SteinhartHart, argument: float) -> float:
 def _coefficients_differ(subject: Subject) -> Iterator[Problem]:
     part, source = subject.record.part, subject.record.source
     stated = part.steinhart_hart
-    if stated is None or any(True for _ in _units_look_wrong(subject)):
+    told = chain(_units_look_wrong(subject), _coefficients_make_no_curve(subject))
+    if stated is None or any(True for _ in told):
         return
     off_k = _reads_c(stated, math.log(part.rated.resistance_ohm)) - part.rated.at_c
     if not abs(off_k) <= _WITHIN_K:
@@ -108,23 +114,83 @@ def _b_values_differ(subject: Subject, stated: SteinhartHart) -> Iterator[Proble
             yield subject.record.source.problem(("b_values", i, "b_k"), "b-differs", message, "warning")
 
 
+def _coefficients_make_no_curve(subject: Subject) -> Iterator[Problem]:
+    stated = subject.record.part.steinhart_hart
+    if stated is not None and not _falls(stated_curve(stated), stated.span_c):
+        yield _no_curve(subject, "steinhart_hart", "the coefficients give", stated.span_c)
+
+
+def _figures_make_no_curve(subject: Subject) -> Iterator[Problem]:
+    part, made = subject.record.part, subject.curve
+    if made is None or made.curve.basis == "steinhart-hart":
+        return
+    low_c, high_c = zip(made.curve.span_c, made.operating_c, strict=True)
+    used_c = min(low_c), max(high_c)
+    if not _falls(made.curve, used_c):
+        if made.curve.basis == "table":
+            yield _no_curve(subject, "r_t_table", "the first and last rows give", used_c)
+        else:
+            used = (part.b_values_at_rated() or part.b_values)[: 1 if made.curve.basis == "b-value" else None]
+            values = " and ".join(map(_b_text, used))
+            yield _no_curve(subject, "b_values", f"{values} {'give' if used[1:] else 'gives'}", used_c)
+
+
+def _falls(curve: Curve, span_c: tuple[float, float]) -> bool:
+    """Whether a curve has a resistance everywhere in a range, lower from kelvin to kelvin."""
+    r_ohm = curve.resistance_ohm(whole_steps_c(span_c, 1.0))
+    return bool(np.isfinite(r_ohm).all() and (np.diff(r_ohm) < 0).all())
+
+
+def _no_curve(subject: Subject, field: str, what: str, span_c: tuple[float, float]) -> Problem:
+    message = (
+        f"{what} no resistance that falls with temperature everywhere from {range_text(span_c)}. "
+        "Compare them with the data sheet."
+    )
+    return subject.record.source.problem((field,), "no-curve-here", message)
+
+
 def _b_order(subject: Subject) -> Iterator[Problem]:
     part = subject.record.part
-    rising = part.b_values_at_rated()
-    for before, after in pairwise(rising):
-        hot = part.other_c(before) > part.rated.at_c
-        if hot and not before.b_k < after.b_k:
+    for before, after in pairwise(part.b_values_at_rated()):
+        if part.other_c(before) > part.rated.at_c and not before.b_k < after.b_k:
             how = "equal" if before.b_k == after.b_k else "in falling order"
             message = (
-                f"B{_pair(before)} = {number_text(before.b_k)} K and B{_pair(after)} = {number_text(after.b_k)} K are {how}; a ceramic's "
+                f"{_b_text(before)} and {_b_text(after)} are {how}; a ceramic's "
                 "B-value rises with temperature. Compare both with the data sheet: were they computed, or exchanged?"
             )
-            path = ("b_values", part.b_values.index(after), "b_k")
-            yield subject.record.source.problem(path, "b-order", message, "warning")
+            yield _pair_problem(subject, after, "b-order", message)
 
 
-def _pair(b: BValue) -> str:
-    return "/".join(number_text(t_c) for t_c in b.between_c)
+def _bend_unlikely(subject: Subject) -> Iterator[Problem]:
+    if any(True for check in (_figures_make_no_curve, _b_order) for _ in check(subject)):
+        return
+    part = subject.record.part
+    for before, after in pairwise(part.b_values_at_rated()):
+        distance_per_k = 1 / kelvin(part.other_c(after)) - 1 / kelvin(part.other_c(before))
+        bend_k2 = (after.b_k - before.b_k) / distance_per_k
+        rounding_k2 = _B_ROUNDING_K / abs(distance_per_k)
+        if not _LIKELY_BENDS_K2[0] - rounding_k2 <= bend_k2 <= _LIKELY_BENDS_K2[1] + rounding_k2:
+            message = (
+                f"{_b_text(before)} and {_b_text(after)} bend the curve by {number_text(float(f'{bend_k2:.2g}'))} K², where a ceramic "
+                f"bends by {number_text(COLD_BENDS_K2[0])} to {number_text(HOT_BENDS_K2[1])} K². Compare both with the data sheet."
+            )
+            yield _pair_problem(subject, after, "bend-unlikely", message)
 
 
-CHECKS: tuple[Check, ...] = (_units_look_wrong, _coefficients_differ, _b_order)
+def _pair_problem(subject: Subject, b: BValue, rule: str, message: str) -> Problem:
+    path = ("b_values", subject.record.part.b_values.index(b), "b_k")
+    return subject.record.source.problem(path, rule, message, "warning")
+
+
+def _b_text(b: BValue) -> str:
+    return f"B{'/'.join(map(number_text, b.between_c))} = {number_text(b.b_k)} K"
+
+
+CHECKS: tuple[Check, ...] = (
+    _units_look_wrong,
+    _coefficients_make_no_curve,
+    _coefficients_differ,
+    _figures_make_no_curve,
+    _b_order,
+    _bend_unlikely,
+)

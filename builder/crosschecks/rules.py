@@ -55,6 +55,7 @@ RULES = (
         "decimal logarithm.",
         "A table with 10 at 25 °C in a record whose rated resistance is 10 kΩ.",
         "Convert the values; the message says how. It is an error, since nobody can use the curve.",
+        acceptable=False,
     ),
     Rule(
         "rated-differs",
@@ -73,6 +74,24 @@ RULES = (
         "The stated Steinhart–Hart coefficients read more than 0.3 K off the record's own table.",
         "A coefficient with one digit mistyped, or coefficients of another part.",
         "Compare the coefficients and the table with the data sheet. The curve is made from the table.",
+    ),
+    Rule(
+        "no-curve-here",
+        "B-values, Steinhart–Hart coefficients or a table's ends that lead to no resistance, or to one that does not fall with "
+        "temperature, somewhere in the range that the curve is for.",
+        "B25/50 = 3380 K beside B25/85 = 4335 K, where 3435 K was meant: the coefficient b of the law through their points is "
+        "below zero, and no temperature has a resistance.",
+        "Compare the figures that the message names with the data sheet. Nobody can use such a curve, so it is an error.",
+        acceptable=False,
+    ),
+    Rule(
+        "bend-unlikely",
+        "Two B-values at the rated temperature that bend the curve as no ceramic does. The bend, in K², is the difference of both "
+        "over the distance of their other temperatures in 1/T; of fourteen public tables it is −275000 to −30000 K². Outside "
+        "−600000 to 50000 K² it is told, with 1 K allowed for rounding.",
+        "B25/50 = 3936 K and B25/85 = 4300 K, where 3977 K was meant: they bend the curve by −1200000 K².",
+        "Compare both with the data sheet: often one digit differs, or one of them is of another part or pair. Where the data "
+        "sheet has both, ask the maker, and accept the finding with the reason.",
     ),
     Rule(
         "b-order",
@@ -118,6 +137,27 @@ RULES = (
         "The last entry of the part's standing names a day of review that has passed.",
         "review_due: 2026-02-10, and today is later.",
         "Review the part, then append an entry with the outcome and the next day of review.",
+    ),
+    Rule(
+        "file-hash-differs",
+        "A document's file beside the record has another SHA-256 than the record states: the document was replaced.",
+        "sha256 of revision C beside a file that is revision D.",
+        "Compare the figures with the new revision, then append it to documents.",
+        acceptable=False,
+    ),
+    Rule(
+        "duplicate-part",
+        "Two records of one maker with one part number; upper and lower case are alike.",
+        "parts/tarnbrook/TB3A-103F38.yaml and parts/old/TB3A-103F38.yaml",
+        "Keep one of the two.",
+        acceptable=False,
+    ),
+    Rule(
+        "unknown-part",
+        "A position names a part that no record has.",
+        "fitted: TB3A-103F83",
+        "Correct the number, or add the part.",
+        acceptable=False,
     ),
     Rule(
         "to-be-filled-in",

@@ -7,7 +7,7 @@ from collections.abc import Iterator
 from builder.crosschecks.subject import Check, Subject
 from builder.problems import Problem, quoted
 from builder.records.yaml_text import Path
-from builder.units import range_text, temperature_text
+from builder.units import number_text, range_text, temperature_text
 
 
 def _tolerance_missing(subject: Subject) -> Iterator[Problem]:
@@ -61,7 +61,7 @@ def _bends_back(subject: Subject) -> Iterator[Problem]:
     stated = subject.record.part.steinhart_hart
     if stated is not None and stated.c <= 0:
         message = (
-            f"{stated.c:g} is not above zero, which no real ceramic has; the curve is not used outside its span. "
+            f"{number_text(stated.c)} is not above zero, which no real ceramic has; the curve is not used outside its span. "
             "Compare the coefficients with the data sheet."
         )
         yield subject.record.source.problem(("steinhart_hart", "c"), "bends-back", message, "warning")

@@ -3,11 +3,14 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Iterator, Mapping
+from dataclasses import replace
 
+from builder import misprints
 from builder.crosschecks.subject import Check, Subject
-from builder.misprints import Finding, Rated, Table, findings
+from builder.misprints import Finding, Table
 from builder.problems import Problem, Severity
-from builder.records import PartRecord
+from builder.records import LooseTable, Source
+from builder.records.part import Rated
 from builder.records.table import TableData
 from builder.units import number_text, temperature_text
 
@@ -34,26 +37,45 @@ _WHOLE_TABLE = {
 
 def _table_findings(subject: Subject) -> Iterator[Problem]:
     """Every finding in a part's table, worded, on the line of its row."""
-    record, table = subject.record, subject.record.table
-    if table is None:
-        return
-    part = record.part
-    b_values = tuple((*b.between_c, b.b_k) for b in part.b_values)
-    rated = Rated(part.rated.resistance_ohm, part.rated.at_c, b_values)
-    found = findings(Table(table.t_c, table.r_ohm, table.r_min_ohm, table.r_max_ohm), rated)
-    for finding in found:
+    record = subject.record
+    if record.table is not None:
+        b_values = tuple((*b.between_c, b.b_k) for b in record.part.b_values)
+        yield from _problems(record.source, record.table, record.part.rated, b_values)
+
+
+def loose_table_findings(loose: LooseTable) -> Iterator[Problem]:
+    """Every finding in the rows of a table whose record has errors elsewhere."""
+    found = _problems(loose.source, loose.table, loose.rated, ())
+    return (problem for problem in found if problem.row is not None)
+
+
+def _problems(
+    source: Source, table: TableData, rated: Rated | None, b_values: tuple[tuple[float, float, float], ...]
+) -> Iterator[Problem]:
+    nominal = table.r_ohm if table.ratio is None else table.ratio
+    stated = None
+    if rated is not None:
+        resistance = rated.resistance_ohm if table.ratio is None else 1.0
+        stated = misprints.Rated(resistance, rated.at_c, b_values)
+    for finding in misprints.findings(Table(table.t_c, nominal, table.r_min_ohm, table.r_max_ohm), stated):
         # Reading the table has reported each row that is out of order.
         if finding.rule not in ("not-falling", "repeated-temperature"):
-            yield _problem(finding, record, table)
+            yield _problem(_in_its_column(finding, table), source, table)
 
 
-def _problem(finding: Finding, record: PartRecord, table: TableData) -> Problem:
+def _in_its_column(finding: Finding, table: TableData) -> Finding:
+    """The finding under the name that the table's own column has."""
+    is_ratio = table.ratio is not None and finding.column == "r_ohm"
+    return replace(finding, column="ratio") if is_ratio else finding
+
+
+def _problem(finding: Finding, source: Source, table: TableData) -> Problem:
     # A table that does not fall makes no curve, one in the wrong unit a useless one; every other finding may be the
     # maker's own figure.
     severity: Severity = "warning" if table.falls and finding.rule != "units-look-wrong" else "error"
     message = _WORDING[finding.rule](finding)
     if finding.row is None:
-        return record.source.problem(("r_t_table",), finding.rule, message, severity)
+        return source.problem(("r_t_table",), finding.rule, message, severity)
     expected = None if finding.expected is None else float(f"{_restored_or_expected(finding):.7g}")
     line = table.lines[finding.row]
     return Problem(table.file, line, finding.column, finding.rule, message, severity, finding.t_c, expected)
@@ -69,12 +91,16 @@ def _shown(value: float | None, column: str) -> str:
     if value is None:
         return "nothing"
     # In the record's own unit, so that the eye finds it in the row.
-    return temperature_text(value) if column == "t_c" else f"{number_text(value, 7)} Ω"
+    return temperature_text(value) if column == "t_c" else f"{number_text(value, 7)}{_unit(column)}"
+
+
+def _unit(column: str) -> str:
+    return "" if column == "ratio" else " Ω"
 
 
 def _expected(finding: Finding) -> str:
     """What the smooth curve gives: more digits than these would promise too much."""
-    return f"{number_text(finding.expected or 0.0, 5)} Ω"
+    return f"{number_text(finding.expected or 0.0, 5)}{_unit(finding.column)}"
 
 
 def _out_of_line(finding: Finding) -> str:

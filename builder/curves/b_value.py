@@ -39,7 +39,8 @@ def b_value_k(r1_ohm: Array, t1_c: Array, r2_ohm: Array, t2_c: Array) -> Array:
     >>> round(float(b_value_k(np.e, 25.0, 1.0, 85.0)), 4)  # 1/(1/298.15 − 1/358.15)
     1779.707
     """
-    return np.log(r1_ohm / r2_ohm) / (1 / kelvin(t1_c) - 1 / kelvin(t2_c))
+    # Of two resistances far apart the ratio is beyond a float, not their logarithms.
+    return (np.log(r1_ohm) - np.log(r2_ohm)) / (1 / kelvin(t1_c) - 1 / kelvin(t2_c))
 
 
 @dataclass(frozen=True)

@@ -153,10 +153,11 @@ def _column_edges_ohm(lowest: Curve, highest: Curve, nominal: Curve, t_c: Array)
     end_c = np.clip(t_c, *nominal.span_c)
     if np.array_equal(end_c, t_c):
         return lowest.resistance_ohm(t_c), highest.resistance_ohm(t_c)
+    # A steep column has no number far out; fmin and fmax then take the other.
     ratio = nominal.resistance_ohm(t_c) / nominal.resistance_ohm(end_c)
     return (
-        np.minimum(lowest.resistance_ohm(t_c), ratio * lowest.resistance_ohm(end_c)),
-        np.maximum(highest.resistance_ohm(t_c), ratio * highest.resistance_ohm(end_c)),
+        np.fmin(lowest.resistance_ohm(t_c), ratio * lowest.resistance_ohm(end_c)),
+        np.fmax(highest.resistance_ohm(t_c), ratio * highest.resistance_ohm(end_c)),
     )
 
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import partial
 from typing import Literal
 
 import numpy as np
@@ -15,7 +16,10 @@ from builder.units import Array, celsius, kelvin
 Basis = Literal["table", "steinhart-hart", "b-values", "b-value"]
 Mask = npt.NDArray[np.bool_]
 
-_LN_LARGEST = 700.0  # e to more than that is beyond a float; a few kelvin above absolute zero gets there
+# e to more than that, or to less than its negative, is beyond a float; a few kelvin above absolute zero gets there.
+_LN_LARGEST = 700.0
+# Coefficients that make no curve are for the cross-checks to tell; here they give no number, without a warning.
+_quietly = partial(np.errstate, all="ignore")
 
 
 @dataclass(frozen=True, eq=False)
@@ -65,6 +69,7 @@ class Curve:
         t_c = self.extended_temperature_c(r_ohm)
         return self._where_known(t_c, t_c)
 
+    @_quietly()
     def extended_resistance_ohm(self, t_c: npt.ArrayLike) -> Array:
         """As `resistance_ohm`, with the end's slope even where the curve is not to be extrapolated.
 
@@ -79,7 +84,7 @@ class Curve:
         Returns
         -------
         array, the shape of `t_c`
-            Resistance. [Ω]
+            Resistance, not a number where it is beyond e^±700. [Ω]
         """
         x = 1 / _above_zero_k(np.asarray(t_c, dtype=float))
         ends = np.array(self._span_per_k)
@@ -88,8 +93,9 @@ class Curve:
         if np.any(x != inside):
             low_k, high_k = self.law.slope_k(ends)
             ln_r = ln_r + np.minimum(x - ends[0], 0) * low_k + np.maximum(x - ends[1], 0) * high_k
-        return np.exp(np.where(ln_r < _LN_LARGEST, ln_r, np.nan))
+        return np.exp(np.where(np.abs(ln_r) < _LN_LARGEST, ln_r, np.nan))
 
+    @_quietly()
     def extended_temperature_c(self, r_ohm: npt.ArrayLike) -> Array:
         """As `temperature_c`, with the end's slope even where the curve is not to be extrapolated.
 
@@ -114,6 +120,7 @@ class Curve:
             x = x + np.minimum(ln_r - y_low, 0) / low_k + np.maximum(ln_r - y_high, 0) / high_k
         return celsius(1 / np.where(x > 0, x, np.nan))
 
+    @_quietly()
     def alpha_pct_per_k(self, t_c: npt.ArrayLike) -> Array:
         """Temperature coefficient (1/R)·dR/dT.
 
@@ -125,10 +132,11 @@ class Curve:
         Returns
         -------
         array, the shape of `t_c`
-            Coefficient, negative. [%/K]
+            Coefficient, negative; not a number where the resistance is none. [%/K]
         """
         x = 1 / _above_zero_k(np.asarray(t_c, dtype=float))
-        return self._where_known(t_c, -100 * x**2 * self.law.slope_k(np.clip(x, *self._span_per_k)))
+        alpha_pct_per_k = -100 * x**2 * self.law.slope_k(np.clip(x, *self._span_per_k))
+        return np.where(np.isnan(self.resistance_ohm(t_c)), np.nan, alpha_pct_per_k)
 
     def b_value_k(self, t1_c: float, t2_c: float) -> float:
         """B-value between two temperatures.

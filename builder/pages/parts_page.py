@@ -65,7 +65,7 @@ def curve_b(curve: PartCurve) -> tuple[float | None, str]:
     """B25/85 of a curve in whole kelvin, and whether it is `estimated` or `extrapolated`; None where it has none."""
     made = curve.curve
     b_k = made.b_value_k(*_B_PAIR_C)
-    if np.isnan(b_k):
+    if not np.isfinite(b_k):
         return None, ""
     if made.extrapolated(_B_PAIR_C).any():
         return round(b_k), "extrapolated"

@@ -9,6 +9,7 @@ from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, field
 from functools import cached_property, partial
 from pathlib import Path
+from typing import TypeVar
 
 from pydantic import ValidationError
 
@@ -24,6 +25,7 @@ from builder.records.wording import worded
 # A record of a thousand rows has 50 kB; more than this is not a record.
 LARGEST_FILE_BYTES = 1_000_000
 _LEADS_OUT = "leads out of the records folder."
+_Model = TypeVar("_Model", bound=RecordModel)
 _MODELS: Mapping[str, type[RecordModel]] = {"part": Part, "position": Position}
 
 
@@ -63,6 +65,15 @@ class PositionRecord:
     source: Source
 
 
+@dataclass(frozen=True, eq=False)
+class LooseTable:
+    """A table whose record has errors elsewhere, so that its rows are looked at all the same."""
+
+    source: Source
+    table: TableData
+    rated: Rated | None
+
+
 class UnknownPart(LookupError):
     """No part, or more than one, goes by a name; the message says which names are near."""
 
@@ -72,13 +83,14 @@ class Catalog:
     """The records of one folder, parts and positions in the order of their names.
 
     `curveless` are parts whose table does not fall, so that no curve can be made: nothing finds them by name, and the
-    cross-checks say which of their rows is wrong.
+    cross-checks say which of their rows is wrong, as they do for `loose_tables`.
     """
 
     parts: tuple[PartRecord, ...] = ()
     positions: tuple[PositionRecord, ...] = ()
     problems: tuple[Problem, ...] = ()
     curveless: tuple[PartRecord, ...] = ()
+    loose_tables: tuple[LooseTable, ...] = ()
 
     def part(self, name: str) -> PartRecord:
         """The part that goes by a maker's number, `maker number`, or an own number; upper and lower case alike.
@@ -125,6 +137,7 @@ class _Reading:
     root: Path
     parts: list[PartRecord] = field(default_factory=list)
     curveless: list[PartRecord] = field(default_factory=list)
+    loose_tables: list[LooseTable] = field(default_factory=list)
     positions: list[PositionRecord] = field(default_factory=list)
     problems: list[Problem] = field(default_factory=list)
     # What records that have errors may go by: a position that names one is not told that there is no such part.
@@ -132,7 +145,7 @@ class _Reading:
 
     def add(self, other: _Reading) -> None:
         """Take over what another reading of the same folder collected."""
-        for name in ("parts", "curveless", "positions", "problems"):
+        for name in ("parts", "curveless", "loose_tables", "positions", "problems"):
             getattr(self, name).extend(getattr(other, name))
         self.faulty |= other.faulty
 
@@ -172,7 +185,7 @@ def read_catalog(root: Path) -> Catalog:
     positions = tuple(sorted(reading.positions, key=lambda r: (r.position.position.casefold(), r.source.file)))
     catalog = Catalog(parts, positions)
     problems = [*reading.problems, *_duplicates(catalog), *_unknown_parts(catalog, reading.faulty)]
-    return Catalog(parts, positions, in_order(problems), tuple(reading.curveless))
+    return Catalog(parts, positions, in_order(problems), tuple(reading.curveless), tuple(reading.loose_tables))
 
 
 def _record_files(reading: _Reading) -> Iterator[Path]:
@@ -262,7 +275,8 @@ def _added(reading: _Reading, path: Path, document: yaml_text.YamlText) -> bool:
     except ValidationError as error:
         for where, rule, message in worded(error, _MODELS[kind], document):
             reading.report(source.problem(where, rule, message))
-        _report_table(reading, path.parent, source, document.value)
+        if kind == "part":
+            _add_loose_table(reading, path.parent, source, document.value)
         return False
     if isinstance(record, Part):
         return _part_added(reading, path.parent, source, record)
@@ -300,13 +314,23 @@ def _part_added(reading: _Reading, folder: Path, source: Source, part: Part) -> 
     return falls
 
 
-def _report_table(reading: _Reading, folder: Path, source: Source, value: dict[str, object]) -> None:
-    """Report the rows of a table whose record has errors elsewhere, so that one run finds all there is to mend."""
-    try:
-        stated, rated = RTTable.model_validate(value.get("r_t_table")), Rated.model_validate(value.get("rated"))
-    except ValidationError:
+def _add_loose_table(reading: _Reading, folder: Path, source: Source, value: dict[str, object]) -> None:
+    """Keep the table of a record that has errors elsewhere, so that one run finds all there is to mend."""
+    stated, rated = _valid(RTTable, value.get("r_t_table")), _valid(Rated, value.get("rated"))
+    if stated is None:
         return
-    _table(reading, folder, source, stated, rated)
+    # Without a rated resistance a ratio cannot be told in ohm; in what does not fall it makes no difference.
+    raw = _raw_table(reading, folder, source, stated)
+    table = table_data(raw, rated.resistance_ohm if rated else 1.0, reading.report) if raw else None
+    if table is not None:
+        reading.loose_tables.append(LooseTable(source, table, rated))
+
+
+def _valid(model: type[_Model], value: object) -> _Model | None:
+    try:
+        return model.model_validate(value)
+    except ValidationError:
+        return None
 
 
 def _table(reading: _Reading, folder: Path, source: Source, stated: RTTable, rated: Rated) -> TableData | None:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from itertools import combinations
 from typing import Annotated, Literal
 
 from pydantic import Field, model_validator
@@ -24,13 +25,15 @@ from builder.records.quantities import (
     WebAddress,
     refusal,
 )
-from builder.units import temperature_text
+from builder.units import number_text, temperature_text
 
 CurveSource = Literal["table", "steinhart-hart", "b-values", "b-value"]
 StandingState = Literal["proposed", "approved", "restricted", "withdrawn"]
 Lifecycle = Literal["active", "not for new designs", "last time buy", "obsolete"]
 Column = Literal["t_c", "r_ohm", "r_min_ohm", "r_max_ohm", "ratio"]
 Form = Literal["chip", "leaded", "bead", "probe", "lug", "disc"]
+
+_SAME_WITHIN_K = 0.01  # closer temperatures are one, typed or converted differently
 
 
 class Body(RecordModel):
@@ -216,15 +219,30 @@ class Part(RecordModel):
             raise refusal("no-curve", f"the record has no {self.curve_from}. Write {has}.", "curve_from")
         return self
 
+    @model_validator(mode="after")
+    def _has_one_b_value_for_a_pair(self) -> Part:
+        for b, other in combinations(self.b_values, 2):
+            same_pair = all(map(_is_same, sorted(b.between_c), sorted(other.between_c)))
+            if same_pair and b.b_k != other.b_k:
+                values = " and ".join(f"{number_text(b_k)} K" for b_k in (b.b_k, other.b_k))
+                pair = "/".join(map(number_text, b.between_c))
+                cure = "Compare them with the data sheet, and leave one."
+                raise refusal("repeated-b-value", f"{values} are both stated for {pair} °C. {cure}", "b_values")
+        return self
+
     def b_values_at_rated(self) -> tuple[BValue, ...]:
         """The B-values that share the rated temperature, one for each other temperature."""
-        at = {self.other_c(b): b for b in reversed(self.b_values) if self.rated.at_c in b.between_c}
+        at = {
+            self.other_c(b): b
+            for b in reversed(self.b_values)
+            if any(_is_same(t_c, self.rated.at_c) for t_c in b.between_c)
+        }
         return tuple(at[t_c] for t_c in sorted(at))
 
     def other_c(self, b_value: BValue) -> float:
         """The temperature of a B-value's pair that is not the rated one. [°C]"""
         first, second = b_value.between_c
-        return second if first == self.rated.at_c else first
+        return second if _is_same(first, self.rated.at_c) else first
 
     def curve_sources(self) -> tuple[CurveSource, ...]:
         """What the record's curve can be made from, the preferred one first."""
@@ -239,3 +257,7 @@ class Part(RecordModel):
     def state(self) -> StandingState | None:
         """The standing that holds: the last entry's; None where the ledger is empty."""
         return self.standing[-1].state if self.standing else None
+
+
+def _is_same(t_c: float, other_c: float) -> bool:
+    return abs(t_c - other_c) <= _SAME_WITHIN_K

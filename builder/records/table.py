@@ -29,6 +29,10 @@ Cells = Sequence[Sequence[float | str]]
 Report = Callable[[Problem], None]
 
 _COLUMNS: tuple[str, ...] = get_args(Column)
+# Temperatures as in every other field. Resistances reach lower, so that a table typed in kΩ or MΩ is read, and told as
+# that; a ratio spans from the one end of resistance to the other.
+_OHM_BOUNDS = (1e-6, 1e9)
+_BOUNDS = dict.fromkeys(_COLUMNS, _OHM_BOUNDS) | {"t_c": (ABSOLUTE_ZERO_C + 0.01, HOTTEST_C), "ratio": (1e-7, 1e7)}
 _FIGURE_SIGNS = re.compile("[-+.eE0-9]*")
 
 
@@ -42,6 +46,7 @@ class TableData:
     r_ohm: Array
     r_min_ohm: Array | None = None
     r_max_ohm: Array | None = None
+    ratio: Array | None = None  # as typed, where the table gives R over the rated resistance
     falls: bool = True  # whether a curve can be made of it
 
     def __setstate__(self, state: dict[str, object]) -> None:
@@ -108,7 +113,8 @@ def table_data(raw: RawTable, rated_resistance_ohm: float, report: Report) -> Ta
         return None
     column = dict(zip(raw.columns, values.T, strict=True))
     nominal = column["r_ohm"] if "r_ohm" in column else column["ratio"] * rated_resistance_ohm
-    order = slice(None, None, -1) if column["t_c"][0] > column["t_c"][-1] else slice(None)
+    # By most of the steps: the first or the last temperature alone may be mistyped.
+    order = slice(None, None, -1) if np.sign(np.diff(column["t_c"])).sum() < 0 else slice(None)
     low, high = (column.get(name) for name in ("r_min_ohm", "r_max_ohm"))
     table = TableData(
         raw.file,
@@ -117,6 +123,7 @@ def table_data(raw: RawTable, rated_resistance_ohm: float, report: Report) -> Ta
         _frozen(nominal[order]),
         None if low is None else _frozen(low[order]),
         None if high is None else _frozen(high[order]),
+        _frozen(column["ratio"][order]) if "ratio" in column else None,
     )
     problems = list(order_problems(table))
     for problem in problems:
@@ -150,9 +157,8 @@ def _plain_numbers(raw: RawTable) -> Array | None:
         values = np.array([*map(float, cells)]).reshape(-1, len(raw.columns))
     except ValueError:
         return None
-    low = [ABSOLUTE_ZERO_C if name == "t_c" else 0.0 for name in raw.columns]
-    high = [HOTTEST_C if name == "t_c" else np.finfo(float).max for name in raw.columns]
-    return values if ((values > low) & (values <= high)).all() else None
+    low, high = np.transpose([_BOUNDS[name] for name in raw.columns])
+    return values if ((values >= low) & (values <= high)).all() else None
 
 
 def _row_problems(raw: RawTable, row: Sequence[float | str], line: int) -> Iterator[Problem]:
@@ -173,14 +179,14 @@ def _cell_problem(name: str, cell: float | str) -> str:
         return f"{quoted(cell or None)} stands where a number must stand. {cure}"
     if not math.isfinite(value):
         return f"{quoted(cell)} is not a finite number. Check the figure in the data sheet."
+    low, high = _BOUNDS[name]
+    if low <= value <= high:
+        return ""
     if name == "t_c":
-        impossible = not ABSOLUTE_ZERO_C < value <= HOTTEST_C
-        return (
-            f"{temperature_text(value)} is no temperature of a thermistor. Check the figure and its unit."
-            if impossible
-            else ""
-        )
-    return "" if value > 0 else f"{number_text(value)} is not above zero. Check the figure in the data sheet."
+        return f"{temperature_text(value)} is no temperature of a thermistor. Check the figure and its unit."
+    unit, cure = ("", "") if name == "ratio" else (" Ω", ", and k or M")
+    bounds = f"{number_text(low)} to {number_text(high)}{unit}"
+    return f"{number_text(value)}{unit} is outside {bounds}. Check the decimal point{cure}."
 
 
 def _number(name: str, cell: float | str) -> float | None:

@@ -14,6 +14,7 @@ _ON_CURVES = {"units", "curves"}
 _ON_PARTS = _ON_CURVES | {"problems", "records", "part_curve"}
 _ON_CHECKS = _ON_PARTS | {"fits", "misprints", "crosschecks", "comparisons", "circuit", "part_fit"}
 MAY_IMPORT: dict[str, set[str]] = {
+    "": _ON_CHECKS | {"intake"},
     "units": set(),
     "problems": set(),
     "processes": set(),

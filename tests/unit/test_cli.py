@@ -105,6 +105,30 @@ def test_check_of_a_path_tells_of_that_path_only(run):
     assert run("check", "parts").exit_code == 1
 
 
+def test_check_of_a_record_tells_of_the_csv_beside_it(run):
+    Path("parts").mkdir(exist_ok=True)
+    Path("parts", "x.csv").write_text("t_c,r_ohm\n0,30000\n25,10000\n50,12000\n")
+    result = run("check", "parts/x.yaml", x=GOOD + "r_t_table: {file: x.csv}\n")
+    assert (result.exit_code, result.stdout.partition(":")[0]) == (1, "parts/x.csv")
+
+
+def test_check_of_a_file_that_is_no_record_is_a_usage_error(run):
+    run("check")
+    Path("parts", "README.md").write_text("no record")
+    error = "parts/README.md is no record. Name a .yaml file, or a folder."
+    assert _told(run("check", "parts/README.md")) == _usage("check", "[PATH]...", error)
+
+
+def test_a_part_that_check_refuses_gives_no_curve(run):
+    rows = "".join(
+        f"    - [{t_c}, {10 * math.exp(3950 / (t_c + 273.15) - 3950 / 298.15):.5g}]\n" for t_c in range(-10, 90, 5)
+    )
+    table = f"r_t_table:\n  columns: [t_c, r_ohm]\n  rows:\n{rows}"
+    result = run("curve", "X-103", x=GOOD + table)
+    assert (result.exit_code, result.stdout) == (1, "")
+    assert "typed in kΩ" in result.stderr
+
+
 def test_check_of_a_path_that_is_not_there_is_a_usage_error(run):
     error = "there is no parts/z.yaml. Name a record or a folder of records."
     assert _told(run("check", "parts/z.yaml")) == _usage("check", "[PATH]...", error)

@@ -170,3 +170,12 @@ def test_whole_steps_and_both_ends(span_c, step_k, expected_c):
 )
 def test_steps_from_the_first_temperature_and_the_last(span_c, step_k, expected_c):
     assert steps_from_c(span_c, step_k).tolist() == expected_c
+
+
+def test_rated_temperature_is_that_of_a_pair_within_a_hundredth_of_a_kelvin(made):
+    near = made(TWO_B, rated="rated: {resistance_ohm: 10k, at_c: 25.0001}\n")
+    assert near.curve.basis == "b-values"
+    assert near.curve.fixed_c == (25.0001, 50, 85)
+    single = made(ONE_B, rated="rated: {resistance_ohm: 10k, at_c: 25.0001}\n")
+    assert single.curve.fixed_c == (25.0001, 85)
+    assert made(ONE_B, rated="rated: {resistance_ohm: 10k, at_c: 25.02}\n").curve.fixed_c == (25.02,)

@@ -6,6 +6,7 @@ import pytest
 from clean_part import CLEAN, COEFFICIENTS, RECORD, Check
 
 BOTH = "Compare both with the data sheet."
+COMPARE = "Compare them with the data sheet."
 
 
 def told(check: Check, record: str, table: bool = False) -> list[str]:
@@ -62,7 +63,8 @@ def test_coefficients_that_miss_the_rated_resistance_are_told(check: Check) -> N
 
 
 def test_coefficients_that_give_no_temperature_are_told_so(check: Check) -> None:
-    assert told(check, RECORD + record("2.341077e-4", "-2.341077e-3", COEFFICIENTS)) == [
+    found = told(check, RECORD + record("1.129241e-3", "-1.129241e-2", COEFFICIENTS))
+    assert [said for said in found if "rated-differs" in said] == [
         "parts/p.yaml:12: steinhart_hart: the coefficients give no temperature at the rated resistance, 10 kΩ at 25 °C. "
         f"{BOTH} [warning: rated-differs]"
     ]
@@ -100,6 +102,65 @@ def test_b_values_that_do_not_rise_are_told(check: Check, b_k: int, how: str) ->
         f"parts/p.yaml:7: b_values[1].b_k: B25/50 = 3936 K and B25/85 = {b_k} K are {how}; a ceramic's B-value rises with "
         "temperature. Compare both with the data sheet: were they computed, or exchanged? [warning: b-order]"
     ]
+
+
+NOWHERE = "no resistance that falls with temperature everywhere from"
+
+
+@pytest.mark.parametrize(
+    "figures",
+    [
+        "a: 1.129241e-3, b: -2.341077e-4, c: 8.775468e-8",
+        "a: 1.129241e-3, b: 0, c: 8.775468e-8",
+        "a: 1e300, b: 1e300, c: 1e300",
+        "a: 1e-3, b: 1e-320, c: 1e308",
+    ],
+)
+@pytest.mark.parametrize("table", [False, True])
+@pytest.mark.filterwarnings("error")
+def test_coefficients_that_make_no_curve_are_an_error(check: Check, figures: str, table: bool) -> None:
+    assert told(check, f"{RECORD}steinhart_hart: {{{figures}, span_c: [-20, 85]}}\n", table) == [
+        f"parts/p.yaml:12: steinhart_hart: the coefficients give {NOWHERE} −20 to 85 °C. {COMPARE} [error: no-curve-here]"
+    ]
+
+
+@pytest.mark.filterwarnings("error")
+def test_b_values_that_make_no_curve_are_an_error_that_names_them(check: Check) -> None:
+    wrong = record("3936", "3380", record("3977", "4335"))
+    assert told(check, wrong) == [
+        f"parts/p.yaml:5: b_values: B25/50 = 3380 K and B25/85 = 4335 K give {NOWHERE} −20 to 85 °C. {COMPARE} "
+        "[error: no-curve-here]"
+    ]
+
+
+def test_a_table_whose_steep_end_leads_to_no_resistance_is_an_error(check: Check) -> None:
+    rows = "r_t_table: {rows: [[24, 10400], [25, 10000], [25.01, 100]]}\n"
+    assert [said for said in told(check, RECORD + rows) if "no-curve" in said] == [
+        f"parts/p.yaml:12: r_t_table: the first and last rows give {NOWHERE} −20 to 85 °C. {COMPARE} [error: no-curve-here]"
+    ]
+
+
+def test_b_values_that_bend_as_no_ceramic_are_told(check: Check) -> None:
+    # (4300 − 3936) K / (1/358.15 − 1/323.15) per K = −1.2e6 K².
+    assert told(check, record("3977", "4300")) == [
+        "parts/p.yaml:7: b_values[1].b_k: B25/50 = 3936 K and B25/85 = 4300 K bend the curve by −1200000 K², where a ceramic "
+        f"bends by −275000 to −30000 K². {BOTH} [warning: bend-unlikely]"
+    ]
+
+
+def test_b_values_rounded_to_whole_kelvins_bend_as_they_like_where_their_pairs_are_close(check: Check) -> None:
+    # Each kelvin between B25/84 and B25/85 is a bend of −1.28e5 K²: 5 K are taken, −6e5 K² and one for rounding, 7 K not.
+    close = record("[25, 50], b_k: 3936", "[25, 84], b_k: 3972")
+    assert told(check, close) == []
+    assert len(told(check, record("3972", "3970", close))) == 1
+
+
+def test_b_values_on_both_sides_of_the_rated_temperature_bend_alike(check: Check) -> None:
+    # Of the coefficients in clean_part.py: B−20/25 = ln(97000/10000) / (1/253.15 − 1/298.15) = 3811 K.
+    assert told(check, record("[25, 50], b_k: 3936", "[-20, 25], b_k: 3811")) == []
+    (said,) = told(check, record("[25, 50], b_k: 3936", "[-20, 25], b_k: 4111"))
+    # (3977 − 4111) K / (1/358.15 − 1/253.15) per K.
+    assert "B−20/25 = 4111 K and B25/85 = 3977 K bend the curve by 120000 K²" in said
 
 
 def test_missing_tolerances_are_told_each(check: Check) -> None:
@@ -148,7 +209,7 @@ def test_coefficients_that_bend_back_are_told(check: Check) -> None:
     # Through 10 kΩ at 25 °C: 1/298.15 = a + b · ln 1e4 + c · (ln 1e4)³.
     bent = "steinhart_hart: {a: 5.8e-4, b: 3.3e-4, c: -3.404e-7, span_c: [-20, 85]}\n"
     assert [said for said in told(check, RECORD + bent) if "bends-back" in said] == [
-        "parts/p.yaml:12: steinhart_hart.c: -3.404e-07 is not above zero, which no real ceramic has; the curve is not used "
+        "parts/p.yaml:12: steinhart_hart.c: −3.404e−7 is not above zero, which no real ceramic has; the curve is not used "
         "outside its span. Compare the coefficients with the data sheet. [warning: bends-back]"
     ]
 

@@ -3,7 +3,7 @@
 import numpy as np
 import pytest
 
-from builder.curves import BentExponential, Curve, SteinhartHartLaw, b_value_k
+from builder.curves import BentExponential, Curve, SteinhartHartLaw, b_value_k, monotone_cubic
 
 LN_10K = float(np.log(10e3))
 PLAIN = Curve("b-value", BentExponential(LN_10K, 25.0, (25.0, 85.0), 3950.0, 0.0), (-40.0, 125.0))
@@ -29,6 +29,38 @@ def test_values_beyond_a_float_are_no_numbers_and_nothing_is_said_about_them():
     with np.errstate(all="raise"):
         assert np.isnan(PLAIN.resistance_ohm([-273.0, -270.0])).all()
         assert np.isfinite(PLAIN.resistance_ohm(-260.0))
+
+
+def test_a_steep_end_leads_to_no_resistance_rather_than_to_zero_or_infinity():
+    x = 1 / (np.array([25.01, 25.0, 24.0]) + 273.15)
+    steep = Curve("table", monotone_cubic(x, np.log([100.0, 10e3, 10.4e3])), (24.0, 25.01))
+    with np.errstate(all="raise"):
+        ohms = steep.resistance_ohm([-273.0, 25.0, 25.3, 85.0, 300.0])
+        assert np.isnan(ohms).tolist() == [True, False, False, True, True]
+        assert np.isnan(steep.b_value_k(25, 85))
+
+
+def test_b_value_is_a_number_where_the_ratio_of_its_resistances_is_beyond_a_float():
+    # ln R falls by 20 for each kelvin: exp(509) Ω at 25 °C, exp(−680) Ω at 85 °C.
+    steep = Curve("b-value", BentExponential(LN_10K, 50.0, (50.0, 85.0), 2e6, 0.0), (25.0, 85.0))
+    with np.errstate(all="raise"):
+        assert steep.b_value_k(25, 85) == pytest.approx(2e6, rel=1e-12)
+
+
+def test_coefficient_is_a_number_only_where_the_resistance_is():
+    t_c = np.array([-273.14, -273.0, -200.0, 25.0])
+    assert np.isnan(PLAIN.alpha_pct_per_k(t_c)).tolist() == np.isnan(PLAIN.resistance_ohm(t_c)).tolist()
+    assert np.isnan(PLAIN.alpha_pct_per_k(t_c)).tolist() == [True, True, False, False]
+
+
+@pytest.mark.parametrize("law", [(1e300, 1e300, 1e300), (1e-3, 1e-320, 1e300), (1e-3, 2e-4, 1e308), (-1e308, 1e308, -1e308), (1e-3, -2e-4, 1e-7)])  # fmt: skip
+def test_absurd_coefficients_are_passed_without_a_word(law):
+    curve = Curve("steinhart-hart", SteinhartHartLaw(*law), (-40.0, 125.0))
+    with np.errstate(all="raise"):
+        ohms = curve.resistance_ohm([-60.0, 25.0, 150.0])
+        curve.alpha_pct_per_k([-60.0, 25.0, 150.0])
+        curve.temperature_c([1.0, 1e4, 1e9])
+    assert not np.isinf(ohms).any()
 
 
 def test_resistance_below_every_temperature_is_extrapolated_and_has_no_number():

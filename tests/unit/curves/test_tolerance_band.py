@@ -120,3 +120,15 @@ def test_tolerance_in_kelvin_is_no_division_by_alpha():
     exact_k = 1 / (1 / 298.15 + np.log(1.1) / 3950) - 298.15
     assert low_k == pytest.approx(exact_k, abs=1e-9)
     assert abs(low_k + 10 / 4.4435) > 0.1  # ±10 % over 4.44 %/K
+
+
+def test_a_column_without_a_number_beyond_a_steep_end_leaves_the_band_as_wide_as_there():
+    x = 1 / (np.array([60.0, 50.0, 25.0]) + 273.15)
+    nominal, highest = _through(x, [2400.0, 3600.0, 10e3]), _through(x, [2450.0, 3700.0, 10.1e3])
+    steep = _through(1 / (np.array([60.0, 59.9, 25.0]) + 273.15), [1.0, 2390.0, 9.9e3])
+    low_ohm, _ = Band(nominal, 25.0, 1.0, columns=(steep, highest)).edges_ohm(200.0)
+    assert low_ohm == pytest.approx(nominal.resistance_ohm(200.0) / 2400, rel=1e-12)
+
+
+def _through(x, ohms):
+    return Curve("table", monotone_cubic(x, np.log(ohms)), (25.0, 60.0))

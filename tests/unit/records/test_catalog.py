@@ -167,9 +167,10 @@ def test_the_standing_that_holds_is_the_last(records):
 def test_b_values_at_the_rated_temperature_are_one_for_each_other_temperature(records):
     listed = "[25, 85], b_k: 3435, tolerance_pct: 1}\n" + "".join(
         f"  - {{between_c: [{pair}], b_k: {b_k}}}\n"
-        for pair, b_k in (("50, 25", 3380), ("25, 85", 3436), ("0, 50", 3350))
+        for pair, b_k in (("50, 25", 3380), ("85, 25", 3435), ("0, 50", 3350))
     )
     text = part("[25, 85], b_k: 3435, tolerance_pct: 1}\n", listed)
     stated = records({"a.yaml": text}).parts[0].part
-    assert [(stated.other_c(b), b.b_k) for b in stated.b_values_at_rated()] == [(50, 3380), (85, 3435)]
+    at_rated = [(stated.other_c(b), b.b_k, b.tolerance_pct) for b in stated.b_values_at_rated()]
+    assert at_rated == [(50, 3380, None), (85, 3435, 1)]
     assert stated.curve_sources() == ("b-values", "b-value")

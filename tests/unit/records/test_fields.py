@@ -176,6 +176,13 @@ SHAPES = {
     "one temperature twice": pair(
         "[25, 25.5]", ": 25 °C and 25.5 °C are less than 1 K apart. A B-value needs two temperatures."
     ),
+    "two B-values for one pair": told_of(
+        part("tolerance_pct: 1}\nlimits", "tolerance_pct: 1}\n  - {between_c: [85, 25.001], b_k: 4100}\nlimits"),
+        "5: b_values: 3435 K and 4100 K are both stated for 25/85 °C. Compare them with the data sheet, and leave one.",
+    ),
+    "one B-value twice": told_of(
+        part("tolerance_pct: 1}\nlimits", "tolerance_pct: 1}\n  - {between_c: [85, 25], b_k: 3435}\nlimits"),
+    ),
     "below absolute zero": pair(
         "[-300, 25]", "[0]: −300 °C is outside −273.14 to 1000 °C. Check the decimal point and the unit."
     ),

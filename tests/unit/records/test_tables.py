@@ -12,7 +12,7 @@ EMPTY = "the file is empty. Give a header row such as t_c,r_ohm and the rows bel
 ROW = "where 2 must stand: t_c, r_ohm. Check for a missing comma, or a comma too many: a point is the decimal sign."
 CELL = "stands where a number must stand. Write the figure without unit, with a point as decimal sign and a hyphen as minus."
 NOT_FINITE = "is not a finite number. Check the figure in the data sheet."
-NOT_ABOVE_ZERO = "is not above zero. Check the figure in the data sheet."
+NOT_OHMS = "Ω is outside 1e−6 to 1e9 Ω. Check the decimal point, and k or M."
 NO_TEMPERATURE = "is no temperature of a thermistor. Check the figure and its unit."
 ORDER = "Temperatures rise, or fall, from row to row; compare with the data sheet."
 FALLS = "An NTC's resistance falls; compare both rows with the data sheet."
@@ -74,7 +74,9 @@ ROWS = {
     "too large for a float": ("0,1e999\n25,10000", [f'2: r_ohm: "1e999" {NOT_FINITE}']),
     "a million digits": (f"0,{'9' * 900_000}\n25,10000", [f'2: r_ohm: "{"9" * 59}…" {NOT_FINITE}']),
     "a very long line": (f"0,{'a' * 900_000}\n25,10000", [f'2: r_ohm: "{"a" * 59}…" {CELL}']),
-    "zero and below": ("0,32000\n25,0\n50,-4", [f"3: r_ohm: 0 {NOT_ABOVE_ZERO}", f"4: r_ohm: −4 {NOT_ABOVE_ZERO}"]),
+    "zero and below": ("0,32000\n25,0\n50,-4", [f"3: r_ohm: 0 {NOT_OHMS}", f"4: r_ohm: −4 {NOT_OHMS}"]),
+    "too small and too large": ("0,1.1e9\n25,32000\n50,9e-7", [f"2: r_ohm: 1.1e9 {NOT_OHMS}", f"4: r_ohm: 9e−7 {NOT_OHMS}"]),
+    "code too large": ("0,2000M\n25,32000", [f"2: r_ohm: 2e9 {NOT_OHMS}"]),
     "below absolute zero": ("-300,32000\n25,10000", [f"2: t_c: −300 °C {NO_TEMPERATURE}"]),
     "hotter than any": ("0,32000\n2500,10000", [f"3: t_c: 2500 °C {NO_TEMPERATURE}"]),
     "temperature twice": ("0,32000\n0,31000\n25,10000", [f"3: t_c: 0 °C stands twice. {ORDER}"]),
@@ -97,7 +99,7 @@ ROWS = {
         "50,40000\n25,32000\n0,33000",
         [f"2: r_ohm at 50 °C: 40 kΩ is not below 32 kΩ at 25 °C. {FALLS}"],
     ),
-    "several kinds": ("0,x\n25\n50,0", [f'2: r_ohm: "x" {CELL}', f"3: r_t_table: the row has 1 value, {ROW}", f"4: r_ohm: 0 {NOT_ABOVE_ZERO}"]),
+    "several kinds": ("0,x\n25\n50,0", [f'2: r_ohm: "x" {CELL}', f"3: r_t_table: the row has 1 value, {ROW}", f"4: r_ohm: 0 {NOT_OHMS}"]),
 }  # fmt: skip
 
 
@@ -127,7 +129,7 @@ INLINE = {
     "too short": (["[0]", "[25, 10k]"], f"16: r_t_table: the row has 1 value, {ROW}"),
     "decimal comma": (["[0, 32,5]", "[25, 10k]"], f"16: r_t_table: the row has 3 values, {ROW}"),
     "text": (["[0, 32k]", "[25, x]"], f'17: r_ohm: "x" {CELL}'),
-    "zero": (["[0, 32k]", "[25, 0]"], f"17: r_ohm: 0 {NOT_ABOVE_ZERO}"),
+    "zero": (["[0, 32k]", "[25, 0]"], f"17: r_ohm: 0 {NOT_OHMS}"),
     "order": (["[0, 5]", "[2, 7]"], f"17: r_ohm at 2 °C: 7 Ω is not below 5 Ω at 0 °C. {FALLS}"),
     "one row": (["[0, 5]"], f"16: r_t_table: the table has 1 row. {TWO_ROWS}"),
     "true": (
@@ -221,3 +223,17 @@ def test_rows_are_read_even_when_the_record_has_errors_elsewhere(messages):
         'parts/part.yaml:3: body.form: "chp" is none of chip, leaded, bead, probe, lug, disc. Did you mean chip?',
         f'parts/table.csv:2: r_ohm: "x" {CELL}',
     ]
+
+
+def test_a_ratio_that_no_part_has_is_told(messages):
+    cure = "is outside 1e−7 to 1e7. Check the decimal point."
+    rows = "-40,2e7\n25,1\n125,1e-8\n"
+    assert messages({"part.yaml": WITH_CSV, "table.csv": f"t_c,ratio\n{rows}"}) == [
+        f"parts/table.csv:2: ratio: 2e7 {cure}",
+        f"parts/table.csv:4: ratio: 1e−8 {cure}",
+    ]
+
+
+def test_the_least_and_the_largest_resistance_and_ratio_are_taken(messages):
+    for rows in ("t_c,r_ohm\n-90,1e9\n300,0.01\n", "t_c,ratio\n-90,1e7\n300,1e-7\n"):
+        assert messages({"part.yaml": WITH_CSV, "table.csv": rows}) == []
