@@ -12,19 +12,20 @@ from typing import Any, BinaryIO, NoReturn, TypeVar
 
 import click
 
+from builder.circuit import budget, firmware_part, thermistor
 from builder.comparisons import Comparison, NoCommonRange, common_range_c, compared, families, sentence
 from builder.comparisons.families import DEFAULT_RANGE_C, DEFAULT_WITHIN_K
 from builder.crosschecks import checked_catalog
 from builder.crosschecks.checked import findings
 from builder.crosschecks.subject import Subject
-from builder.exports import comparison_rows, curve_rows, fit_rows, rows
+from builder.exports import budget_rows, comparison_rows, curve_rows, fit_rows, rows
 from builder.exports.rows import Column
 from builder.fits import EQUATIONS
 from builder.intake import Unreadable, record_text
 from builder.part_curve import part_curve, steps_from_c, whole_steps_c
 from builder.part_fit import fitted
-from builder.problems import Problem, count_text, errors, warnings
-from builder.records import Catalog, LooseTable, PartRecord, UnknownPart, read_catalog
+from builder.problems import Problem, count_text, errors, nearest, warnings
+from builder.records import Catalog, LooseTable, PartRecord, Position, UnknownPart, read_catalog
 from builder.units import Array, number_text, ohms_from_text, range_text
 
 _MOST_ROWS = 100_000
@@ -326,7 +327,7 @@ def compare(
     Positive where it shows too much; low and high for parts at the limits of their tolerance. Without --from and --to
     over the range that A and B are both made for.
     """
-    own, *named = _parts(records, (reference, *others))
+    own, *named = _parts(read_catalog(records), (reference, *others))
     found = [(other, _comparison(own, other, from_c, to_c, step_k)) for other in named]
     if form == "json":
         answer = comparison_rows.comparison_answer(own.part.part, [(other.part.part, c) for other, c in found])
@@ -387,6 +388,50 @@ def families_(within_k: float, from_c: float, to_c: float, records: Path, form: 
     _print_rows(form, {}, comparison_rows.FAMILY_COLUMNS, comparison_rows.family_rows(named))
 
 
+@main.command("budget")
+@click.argument("position")
+@click.option(
+    "--step",
+    "step_k",
+    type=Step(),
+    default=5.0,
+    show_default=True,
+    metavar="K",
+    help="Distance of the rows, which stand at whole steps and at both ends of the range, K.",
+)
+@_common
+def budget_(position: str, step_k: float, records: Path, form: str) -> None:
+    """Error budget of the part fitted at POSITION: bias, a band for each source, worst case, trips.
+
+    POSITION is its name, such as coolbox-main/RT1. The worst case is looked for between the rows too.
+    """
+    catalog = read_catalog(records)
+    place = _position(catalog, position)
+    fitted, made_for = _parts(catalog, (place.fitted, firmware_part(place)))
+    low_c, high_c = place.range_c
+    if (high_c - low_c) / step_k >= _MOST_ROWS:
+        raise click.UsageError(f"that is more than {_MOST_ROWS} rows. Choose a larger --step.")
+    found = budget(place, thermistor(fitted), part_curve(made_for), step_k)
+    if form == "json":
+        click.echo(rows.json_text(budget_rows.budget_answer(found, fitted.part.part)), nl=False)
+    elif form == "csv":
+        click.echo(rows.csv_text(budget_rows.csv_names(found), budget_rows.csv_rows(found)), nl=False)
+    else:
+        click.echo(f"{place.position}, {place.purpose}: {fitted.name}")
+        click.echo(rows.table_text(budget_rows.columns(found), budget_rows.shown_rows(found)))
+    for line in budget_rows.budget_sentences(found):
+        click.echo(line, err=form != "table")
+
+
+def _position(catalog: Catalog, name: str) -> Position:
+    """The position a command names; that it is unknown ends the command."""
+    places = {record.position.position: record.position for record in catalog.positions}
+    known = {number.casefold(): place for number, place in places.items()}
+    if name.strip().casefold() not in known:
+        raise click.UsageError(f"{name} is not a position of the catalog.{nearest(name, places) or ' Check its name.'}")
+    return known[name.strip().casefold()]
+
+
 def _print_rows(form: str, head: dict[str, Any], columns: tuple[Column, ...], table: list[rows.Row]) -> None:
     if form == "json":
         click.echo(rows.json_text(head | {"rows": table}), nl=False)
@@ -403,13 +448,12 @@ def _refuse_falling(from_c: float, to_c: float) -> None:
 
 def _part(records: Path, name: str) -> PartRecord:
     """The part a command names; its problems, or that it is unknown, end the command."""
-    (record,) = _parts(records, (name,))
+    (record,) = _parts(read_catalog(records), (name,))
     return record
 
 
-def _parts(records: Path, names: tuple[str, ...]) -> list[PartRecord]:
+def _parts(catalog: Catalog, names: tuple[str, ...]) -> list[PartRecord]:
     """The parts a command names; their problems, or that one is unknown, end the command."""
-    catalog = read_catalog(records)
     faulty = errors(catalog.problems)
     found = [_named(catalog, name, faulty) for name in names]
     files = {record.source.file for record in found}

@@ -10,7 +10,7 @@ from mkdocs.structure.files import File
 
 BUILDER = Path(__file__).parents[2] / "builder"
 # Written in numpydoc style throughout; a function that raises says so in a section of its own.
-NUMPYDOC = ("units.py", "curves", "fits", "misprints")
+NUMPYDOC = ("units.py", "curves", "fits", "misprints", "circuit")
 
 Function = ast.FunctionDef | ast.AsyncFunctionDef
 Documented = Function | ast.ClassDef | ast.Module
