@@ -12,7 +12,7 @@ from builder.misprints.columns import Column
 from builder.misprints.rounding import printed
 from builder.misprints.scales import levels
 from builder.misprints.sequence import Sequence
-from builder.misprints.table import ZERO_C_K, Finding, Table, middle
+from builder.misprints.table import ZERO_C_K, Finding, Table, in_reach, middle
 
 _NAMES = ("r_min_ohm", "r_max_ohm")
 _FEWEST_ROWS = 6
@@ -50,7 +50,7 @@ def _end(table: Table, name: str, nominal: Column, rated_c: float) -> Column | N
     typed = table.column(name)
     assert typed is not None
     typed = typed[nominal.seq.rows]
-    has = np.isfinite(typed) & (typed > 0)
+    has = in_reach(typed)
     if has.sum() < _FEWEST_ROWS:
         return None
     seq, r_ohm = Sequence(nominal.seq.rows[has], nominal.seq.t_c[has]), typed[has]

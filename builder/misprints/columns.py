@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass, replace
-from functools import cached_property
+from functools import cached_property, partial
 from math import exp
 
 import numpy as np
@@ -154,6 +154,7 @@ def _resistances(column: Column, row: int, value: float, expected: float) -> tup
     slips = explanations(
         number, int(column.printed.digits[row]), expected=expected / scale, most=float(limit(curve)[row]),
         sigma=float(np.hypot(curve.expected_sigma[row], _ROUGHNESS_K * curve.points.slope_per_k[row])),
+        prints=partial(column.printed.prints, row),
     )  # fmt: skip
     return tuple(replace(slip, restored=float(f"{slip.restored * scale:.12g}")) for slip in slips)
 

@@ -13,12 +13,12 @@ from builder.misprints.outliers import misfit
 from builder.misprints.rounding import printed
 from builder.misprints.sequence import Sequence
 from builder.misprints.shifts import Shift, shifts
-from builder.misprints.table import ZERO_C_K, Finding, Rated, Table, usual_slope
+from builder.misprints.table import ZERO_C_K, Finding, Rated, Table, in_reach, usual_slope
 from builder.units import Array
 
 _FEWEST_ROWS = 6
 _ROUNDINGS = 1.01
-_HOTTEST_C, _HIGHEST_OHM = 1e4, 1e15  # what lies beyond is no figure of a table
+_HOTTEST_C = 1e4  # what lies beyond is no figure of a table
 
 
 def findings(table: Table, rated: Rated | None = None) -> tuple[Finding, ...]:
@@ -37,7 +37,7 @@ def findings(table: Table, rated: Rated | None = None) -> tuple[Finding, ...]:
         Units first, then rows in the table's order, then the table as a whole; empty for a clean table and for
         one of fewer than six rows, of which nothing can be said.
     """
-    usable = (np.abs(table.t_c) < _HOTTEST_C) & (table.r_ohm > 0) & (table.r_ohm < _HIGHEST_OHM)
+    usable = (np.abs(table.t_c) < _HOTTEST_C) & in_reach(table.r_ohm)
     seq = sequence.sequence(table.t_c, usable)
     if seq.t_c.size < _FEWEST_ROWS or seq.in_order.sum() < _FEWEST_ROWS - 2 or np.ptp(seq.t_c[seq.in_order]) == 0:
         return ()
@@ -71,13 +71,15 @@ def _nominal(table: Table, seq: Sequence, rated: Rated | None) -> tuple[Column, 
 def _in_step(nominal: Column) -> tuple[Shift | None, Column]:
     """The column with its temperatures put back in step, where that leaves fewer findings than taking it as typed."""
     wrong = int(nominal.out_of_line.sum())
-    if wrong < 2:
+    if wrong < 2 and not nominal.out_of_line[0]:
         return None, nominal
     tries = [(shift, replace(nominal, t_c=shift.t_c)) for shift in shifts(nominal.t_c, nominal.y)]
     if not tries:
         return None, nominal
     best = min(tries, key=lambda pair: misfit(pair[1].first_curve))
-    return best if best[1].out_of_line.sum() + 1 < wrong else (None, nominal)
+    left = int(best[1].out_of_line.sum())
+    first_alone = wrong == 1 and best[0].start == 1 and not left
+    return best if left + 1 < wrong or first_alone else (None, nominal)
 
 
 def _of_rows(table: Table, nominal: Column, shift: Shift | None, rated_c: float) -> list[Finding]:
@@ -112,10 +114,10 @@ def _typed(nominal: Column, row: int) -> float:
 
 
 def _put_right(seq: Sequence, moved: list[Finding]) -> Array:
-    """The temperatures with the mistyped ones restored, as far as that is known."""
+    """The temperatures with the mistyped ones restored, or else where their resistances belong."""
     if not moved:
         return seq.t_c
-    restored = {one.row: one.restored for one in moved if one.restored is not None}
+    restored = {one.row: one.expected if one.restored is None else one.restored for one in moved}
     return np.array([restored.get(int(row), t_c) for row, t_c in zip(seq.rows, seq.t_c, strict=True)])
 
 

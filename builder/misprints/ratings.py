@@ -27,7 +27,7 @@ def findings(curve: Smooth, span_c: tuple[float, float], rated: Rated) -> list[F
     if inside[0] and rated.rated_resistance_ohm is not None:
         off, slope_per_k = float(ln_r[0]) - log(rated.rated_resistance_ohm), float(points.slope_per_k[near[0]])
         if abs(off) > _RATED_K * slope_per_k + half[0] + _SIGMAS * sigma[0]:
-            found.append(_rated_differs(rated, off, slope_per_k))
+            found.append(_rated_differs(rated, float(ln_r[0]), off, slope_per_k))
     for i, (t1_c, t2_c, stated_k) in enumerate(rated.b_values):
         one, two = 2 * i + 1, 2 * i + 2
         b_k, noise = (ln_r[one] - ln_r[two]) / (x[one] - x[two]), np.hypot(sigma[one], sigma[two])
@@ -38,10 +38,9 @@ def findings(curve: Smooth, span_c: tuple[float, float], rated: Rated) -> list[F
     return found
 
 
-def _rated_differs(rated: Rated, off: float, slope_per_k: float) -> Finding:
-    stated_ohm = rated.rated_resistance_ohm or 0.0
+def _rated_differs(rated: Rated, ln_r: float, off: float, slope_per_k: float) -> Finding:
     return Finding(
-        "rated-differs", t_c=rated.rated_c, value=stated_ohm * exp(off), expected=stated_ohm,
+        "rated-differs", t_c=rated.rated_c, value=exp(ln_r), expected=rated.rated_resistance_ohm,
         reads_k=-off / slope_per_k, slip="another-part",
     )  # fmt: skip
 

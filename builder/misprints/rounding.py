@@ -6,9 +6,12 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from builder.misprints.table import HIGHEST_OHM, LOWEST_OHM
 from builder.units import Array
 
 _MOST_DIGITS = 8
+_MOST_TYPED = 15  # a float holds no more
+_AROUND = 3
 _POWERS = 10.0 ** np.arange(_MOST_DIGITS)
 
 
@@ -62,6 +65,16 @@ class Printed:
     digits: Array
     half: Array
 
+    def prints(self, row: int, number: float) -> bool:
+        """Whether a number has no more digits, or no more decimals, than the rows around that row are printed with."""
+        around = np.delete(np.arange(self.digits.size), row)
+        around = around[np.abs(around - row) <= _AROUND]
+        decades = np.floor(np.log10(self.numbers[around]))
+        value = np.array([number])
+        digits, decade = significant_digits(value)[0], np.floor(np.log10(number))
+        finest = (self.digits[around] - decades).max()
+        return bool(digits <= self.digits[around].max() or digits - decade <= finest)
+
 
 def printed(r_ohm: Array, cells: tuple[str | None, ...] | None = None) -> Printed:
     """How a column was printed, from the source's cells or else from the numbers themselves.
@@ -100,14 +113,14 @@ def _usual_digits(values: Array) -> Array:
 
 def _number_or(cell: str | None, r_ohm: float) -> float:
     number = number_of(cell) if cell else 0.0
-    return number if number > 0 else float(r_ohm)
+    return number if LOWEST_OHM < number < HIGHEST_OHM else float(r_ohm)
 
 
 def _digits_of(cell: str | None) -> int:
     """Digits of a cell with a decimal point; a whole number's trailing zeros say nothing."""
     if not cell or not (number_of(cell) > 0 and ("." in cell or "," in cell)):
         return 0
-    return len([c for c in cell.lower().split("e")[0] if c.isdigit()]) - _leading_zeros(cell)
+    return min(len([c for c in cell.lower().split("e")[0] if c.isdigit()]) - _leading_zeros(cell), _MOST_TYPED)
 
 
 def _leading_zeros(cell: str) -> int:

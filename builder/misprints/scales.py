@@ -21,9 +21,12 @@ _AXES: dict[str, Callable[[Array], Array]] = {
 _FACTORS = {"": 1.0, "kilo-missed": 1e3, "mega-missed": 1e6, "kilo-typed-twice": 1e-3}
 _FEWEST_ROWS = 3
 _QUARTER = 8
+_OFF_LEVEL = 0.2  # in powers of 1000: a factor of 25 to 40 is no unit
+_WINDOW = 5
 _CLOSE = 0.07  # in ln R; far above what tables differ by, far below a wrong unit
 _NATURAL_B_K = (1500.0, 7000.0)
 _NATURAL_BEND_K = (-118.0, 60.0)  # c over B: real ceramics lie between −110 and −5 K, °F axes below −113 K
+_SURE_BEND_K = (-112.0, 60.0)
 
 
 @dataclass(frozen=True, eq=False)
@@ -40,13 +43,16 @@ class Scale:
 def scale(axis_t: Array, y: Array, rated: Rated | None) -> Scale:
     """The first reading of the table's units that makes a thermistor of it, and the rated one if it is stated.
 
-    The table is taken as typed wherever that is possible at all.
+    The table is taken as typed wherever that is possible at all, and its axis as typed wherever that makes a
+    thermistor: another rated resistance is no other axis.
     """
     typed = Scale(axis_t, _AXES[""], 1.0, "", "")
     off = _off(typed, y, rated)
     if _is_natural(axis_t, y) if off is None else abs(off) < _CLOSE:
         return typed
-    for axis, to_c in _AXES.items():
+    axes = [""] if _is_natural(axis_t, y, _SURE_BEND_K) else list(_AXES)
+    for axis in axes:
+        to_c = _AXES[axis]
         for unit, factor in _FACTORS.items():
             other = Scale(to_c(axis_t), to_c, factor, axis, unit)
             if other.t_c.min() > -ZERO_C_K and _is_natural(other.t_c, y) and abs(_off(other, y, rated) or 0.0) < _CLOSE:
@@ -54,7 +60,7 @@ def scale(axis_t: Array, y: Array, rated: Rated | None) -> Scale:
     return typed
 
 
-def _is_natural(t_c: Array, y: Array) -> bool:
+def _is_natural(t_c: Array, y: Array, bend_k: tuple[float, float] = _NATURAL_BEND_K) -> bool:
     """Whether B and the bend of ln R over 1/T are those of a real ceramic, from chords of a quarter of the table."""
     typed_x = 1 / (t_c + ZERO_C_K)
     x = np.linspace(typed_x[-1], typed_x[0], 4 * _QUARTER)
@@ -64,7 +70,7 @@ def _is_natural(t_c: Array, y: Array) -> bool:
     half = chords.size // 2
     bend_k2 = middle((chords[:half] - chords[-half:]) / (centres[:half] - centres[-half:])) / 2
     b_k = middle(chords)
-    return _NATURAL_B_K[0] < b_k < _NATURAL_B_K[1] and _NATURAL_BEND_K[0] < bend_k2 / b_k < _NATURAL_BEND_K[1]
+    return _NATURAL_B_K[0] < b_k < _NATURAL_B_K[1] and bend_k[0] < bend_k2 / b_k < bend_k[1]
 
 
 def _off(other: Scale, y: Array, rated: Rated | None) -> float | None:
@@ -86,7 +92,12 @@ def _near(t_c: Array, y: Array, at_c: float) -> float:
 def levels(x_per_k: Array, y: Array) -> Array:
     """Powers of 1000 by which each row stands off the first row's unit; a run of one or two rows is a slip, not a
     unit, and has the level of the row before."""
-    jumps = np.rint((np.diff(y) - usual_slope(x_per_k, y) * np.diff(x_per_k)) / _LN_1000)
+    flat = (y - usual_slope(x_per_k, y) * x_per_k) / _LN_1000
+    jumps = np.rint(np.diff(flat))
+    jumps[np.abs(np.diff(flat) - jumps) > _OFF_LEVEL] = 0.0
+    for i in np.flatnonzero(jumps):
+        if np.rint(_middle_jump(flat, int(i) + 1)) != jumps[i]:
+            jumps[i] = 0.0
     if not jumps.any():
         return np.zeros(y.size)
     level = np.concatenate([[0.0], np.cumsum(jumps)])
@@ -99,6 +110,11 @@ def levels(x_per_k: Array, y: Array) -> Array:
     level = level[np.where(last < 0, np.argmax(units), last)]
     powers: Array = level - level[0]
     return powers
+
+
+def _middle_jump(flat: Array, row: int) -> float:
+    """From the middle of the rows before a row to the middle of those from it on: one or two wrong rows do not count."""
+    return float(np.median(flat[row : row + _WINDOW]) - np.median(flat[max(row - _WINDOW, 0) : row]))
 
 
 def whole_table(found: Scale) -> list[Finding]:

@@ -14,6 +14,7 @@ from builder.units import Array
 _FAR_STEPS = 6  # an end row this many times the widest other step away has a mistyped temperature
 _EQUAL_C = 1e-6
 _COLDEST_C = -270.0
+_EVEN_STEPS = 5  # fewer equal steps do not make the wider one beside them a hole at an end
 
 
 @dataclass(frozen=True, eq=False)
@@ -97,14 +98,15 @@ def repeated(seq: Sequence, t_c: Array) -> list[Finding]:
 def holes(seq: Sequence, t_c: Array) -> list[Finding]:
     """Steps two or more times as wide as all others around them: a row is missing.
 
-    A table whose steps change for good, or that has several widths, is not an even one with a hole.
+    A table whose steps change for good, or that has several widths, is not an even one with a hole; nor is a short
+    one whose first or last step is wider.
     """
     steps = np.diff(t_c)
     if not steps.size or steps.min() <= 0:
         return []
     usual = middle(steps)
     odd = np.flatnonzero(~_equal(steps, np.full(steps.size, usual)))
-    inner = (odd >= 1) & (odd < steps.size - 1)
+    inner = (odd >= 1) & (odd < steps.size - 1) | (steps.size - odd.size >= _EVEN_STEPS)
     whole = _equal(steps[odd] / usual, np.rint(steps[odd] / usual)) & (steps[odd] > usual)
     if odd.size > max(1, steps.size // 40) or not (inner & whole).all():
         return []

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Callable, Iterator
 from itertools import pairwise
 from math import erf, log, sqrt
 
@@ -50,7 +50,9 @@ def _swaps(figures: str) -> Iterator[tuple[str, str]]:
             yield "two-digits-swapped", figures[:at] + b + a + figures[at + 2 :]
 
 
-def explanations(value: float, digits: int, *, expected: float, sigma: float, most: float) -> tuple[Slip, ...]:
+def explanations(
+    value: float, digits: int, *, expected: float, sigma: float, most: float, prints: Callable[[float], bool]
+) -> tuple[Slip, ...]:
     """The slips that explain a value, the likeliest first; one alone where it is the only likely one.
 
     Parameters
@@ -63,6 +65,8 @@ def explanations(value: float, digits: int, *, expected: float, sigma: float, mo
         Standard uncertainty of the expectation, in ln R. [no unit]
     most : float
         How far a row that belongs may lie from the expectation, in ln R. [no unit]
+    prints : function
+        Whether the table prints its rows as finely as such a value. [no unit]
 
     Returns
     -------
@@ -72,7 +76,7 @@ def explanations(value: float, digits: int, *, expected: float, sigma: float, mo
     likely = {}
     for slip, half in edits(value, digits):
         off = log(slip.restored / expected)
-        if abs(off) <= most:
+        if abs(off) <= most and prints(slip.restored):
             likely[slip.restored] = (_chance(off, half, sigma), slip)
     ranked = sorted(likely.values(), key=lambda pair: -pair[0])
     total = sum(chance for chance, _ in ranked)

@@ -11,6 +11,7 @@ from builder.units import ABSOLUTE_ZERO_C, Array
 
 Mask = NDArray[np.bool_]
 ZERO_C_K = -ABSOLUTE_ZERO_C
+LOWEST_OHM, HIGHEST_OHM = 1e-9, 1e15  # what lies beyond is no resistance, whatever its unit
 _TOGETHER = 1e-12  # in 1/T, below a microkelvin
 
 
@@ -18,6 +19,12 @@ def middle(values: Array) -> float:
     """The middle value (the upper one of two); numpy's own median is ten times slower on a table's few rows."""
     half = values.size // 2
     return float(np.partition(values, half)[half])
+
+
+def in_reach(r_ohm: Array) -> Mask:
+    """Values that may be resistances; nan is none."""
+    reach: Mask = (r_ohm > LOWEST_OHM) & (r_ohm < HIGHEST_OHM)
+    return reach
 
 
 def usual_slope(x: Array, y: Array) -> float:

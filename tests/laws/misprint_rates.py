@@ -21,6 +21,7 @@ from misprint_tables import (
     Slipped,
     cell_slip,
     clean_table,
+    end_temperature_mistyped,
     row_left_out,
     row_missing,
     several_slips,
@@ -33,6 +34,7 @@ STEPS = ("1", "2", "5", "10", "uneven")
 DIGITS = (3, 4, 5, 6)
 PLAIN_K, FINE_K = (0.3, np.inf), (0.1, 0.3)
 _PAIR_C = (25.0, 85.0)
+FEWEST_CLEAN = 20  # clean tables of every step and number of digits, for false alarms must be rare indeed
 
 
 @dataclass(frozen=True)
@@ -63,20 +65,20 @@ def measured(count: int, seed: int = 2026) -> list[Rate]:
 
 
 def _rates(rng: np.random.Generator, count: int, step: str, digits: int) -> Iterator[Rate]:
-    def tables() -> Iterator[tuple[int, Printed]]:
+    def tables(count: int = count) -> Iterator[tuple[int, Printed]]:
         return ((i, clean_table(rng, step=step, digits=digits)) for i in range(count))
 
-    silent = sum(not _answer(printed, i) for i, printed in tables())
-    yield Rate("clean", step, digits, count, silent)
+    clean = max(count, FEWEST_CLEAN)
+    silent = sum(not _answer(printed, i) for i, printed in tables(clean))
+    yield Rate("clean", step, digits, clean, silent)
     for band, label in ((PLAIN_K, "above 0.3 K"), (FINE_K, "0.1 to 0.3 K")):
         for kind in CELL_SLIPS:
             yield _slips(f"{kind}, {label}", step, digits, [
                 (i, cell_slip(rng, printed, kind, band)) for i, printed in tables()
             ])  # fmt: skip
     yield _slips("several", step, digits, [(i, several_slips(rng, p, int(rng.integers(2, 5)))) for i, p in tables()])
-    if step != "uneven":
-        for kind, make in (("left out", row_left_out), ("missing", row_missing), ("temperature", temperature_mistyped)):
-            yield _structure(kind, step, digits, [(i, make(rng, printed)) for i, printed in tables()])
+    for kind, make in ({"left out, uneven": row_left_out} if step == "uneven" else STRUCTURE).items():
+        yield _structure(kind, step, digits, [(i, make(rng, printed)) for i, printed in tables()])
     for kind, spoil in WHOLE.items():
         answers = [spoil(rng, printed) for _, printed in tables() if _covers(printed)]
         yield Rate(kind, step, digits, len(answers), sum(answers))
@@ -107,7 +109,7 @@ def _slips(kind: str, step: str, digits: int, slips: list[tuple[int, Slipped | N
 
 
 def _structure(kind: str, step: str, digits: int, slips: list[tuple[int, Slipped]]) -> Rate:
-    expected = "temperature-mistyped" if kind == "temperature" else "row-left-out"
+    expected = "temperature-mistyped" if "temperature" in kind else "row-left-out"
     answers = [(_answer(slipped.table, i), slipped) for i, slipped in slips]
     found = sum([(one.row, one.slip) for one in answer] == [(s.rows[0], expected)] for answer, s in answers)
     return Rate(kind, step, digits, len(slips), found)
@@ -155,6 +157,12 @@ def _other_resistance(rng: np.random.Generator, printed: Printed) -> bool:
     return _is_named(found, "rated-differs", "another-part")
 
 
+STRUCTURE: dict[str, Callable[[np.random.Generator, Printed], Slipped]] = {
+    "left out": row_left_out,
+    "missing": row_missing,
+    "temperature": temperature_mistyped,
+    "end temperature": end_temperature_mistyped,
+}
 WHOLE: dict[str, Callable[[np.random.Generator, Printed], bool]] = {
     "kilo missed": _kilo,
     "Fahrenheit axis": _fahrenheit,
@@ -203,9 +211,11 @@ _PAGE_NAMES = {
     "digit, 0.1 to 0.3 K": "one wrong digit, 0.1 to 0.3 K",
     "swap, 0.1 to 0.3 K": "two digits swapped, 0.1 to 0.3 K",
     "several": "two to four rows with wrong digits",
-    "left out": "a resistance left out, all later rows one off",
+    "left out": "a resistance left out of an even table, all later rows one off",
+    "left out, uneven": "a resistance left out of an uneven table",
     "missing": "a row left out of an even table",
-    "temperature": "a temperature mistyped",
+    "temperature": "a temperature mistyped, in an inner row",
+    "end temperature": "the first or last temperature mistyped",
     "kilo missed": "kΩ heading missed",
     "kilo from a row on": "kΩ from some row on",
     "Fahrenheit axis": "temperatures in °F",

@@ -217,21 +217,28 @@ def several_slips(rng: np.random.Generator, table: Printed, count: int) -> Slipp
 
 
 def row_left_out(rng: np.random.Generator, table: Printed) -> Slipped:
-    """The resistances skip one row: from there on each stands one temperature too early."""
-    at = int(rng.integers(2, table.t_c.size - 3))
+    """The resistances skip one row: from there on each stands one temperature too early, in two rows at least."""
+    at = int(rng.integers(1, table.t_c.size - 2))
     cells = table.cells[:at] + table.cells[at + 1 :]
     return Slipped(_of_rows(table, table.t_c[:-1], cells), (at,), "left out", (), (table.cells[at],))
 
 
 def row_missing(rng: np.random.Generator, table: Printed) -> Slipped:
     """A whole row is missing, temperature and all."""
-    at = int(rng.integers(3, table.t_c.size - 3))
+    at = int(rng.integers(1, table.t_c.size - 1))
     cells = table.cells[:at] + table.cells[at + 1 :]
     return Slipped(_of_rows(table, np.delete(table.t_c, at), cells), (at,), "missing", (), (table.cells[at],))
 
 
 def temperature_mistyped(rng: np.random.Generator, table: Printed) -> Slipped:
-    at = int(rng.integers(1, table.t_c.size - 1))
+    return _with_temperature(rng, table, int(rng.integers(1, table.t_c.size - 1)))
+
+
+def end_temperature_mistyped(rng: np.random.Generator, table: Printed) -> Slipped:
+    return _with_temperature(rng, table, int(rng.choice([0, table.t_c.size - 1])))
+
+
+def _with_temperature(rng: np.random.Generator, table: Printed, at: int) -> Slipped:
     was = int(table.t_c[at])
     edits = {was - 1, was + 1, -was, int(str(abs(was))[::-1]), was + 10, was - 10, was + 2}
     edits = {edit for edit in edits if abs(edit - was) > 5 * table.half_k[at]}

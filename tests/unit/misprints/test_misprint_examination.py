@@ -16,9 +16,9 @@ def five_digits(values: np.ndarray) -> np.ndarray:
     return np.array([float(f"{value:.4e}") for value in values])
 
 
-def r_ohm(t_c: np.ndarray = T_C) -> np.ndarray:
+def r_ohm(t_c: np.ndarray = T_C, b_k: float = 3950, c_k2: float = -1.7e5) -> np.ndarray:
     d, d2 = 1 / (t_c + 273.15) - 1 / 298.15, 1 / 358.15 - 1 / 298.15
-    return five_digits(10e3 * np.exp(3950 * d - 1.7e5 * (d**2 - d * d2)))
+    return five_digits(10e3 * np.exp(b_k * d + c_k2 * (d**2 - d * d2)))
 
 
 def spoilt(row: int, value: float) -> np.ndarray:
@@ -74,6 +74,18 @@ def test_a_resistance_left_out_is_one_finding() -> None:
     assert found.reads_k == pytest.approx(5.0)
 
 
+@pytest.mark.parametrize("row", [1, 2, T_C.size - 3])
+def test_a_resistance_left_out_beside_an_end_is_one_finding(row: int) -> None:
+    found = only(Table(T_C[:-1], np.delete(r_ohm(), row)), None)
+    assert (found.row, found.slip) == (row, "row-left-out")
+
+
+def test_a_resistance_left_out_of_an_uneven_table_is_one_finding() -> None:
+    t_c = np.array([-40.0, -33, -20, -11, 0, 4, 13, 25, 31, 44, 50, 63, 70, 85, 91, 100, 112, 125])
+    found = only(Table(t_c[:-1], np.delete(r_ohm(t_c), 8)))
+    assert (found.row, found.slip) == (8, "row-left-out")
+
+
 def test_a_resistance_typed_twice_is_one_finding() -> None:
     found = only(Table(T_C, np.insert(r_ohm(), LEFT_OUT, r_ohm()[LEFT_OUT - 1])[:-1]))
     assert (found.row, found.slip) == (LEFT_OUT, "row-doubled")
@@ -124,6 +136,28 @@ def test_a_fahrenheit_axis_is_named(rated: Rated | None) -> None:
 @pytest.mark.parametrize("rated", [RATED, None])
 def test_a_kelvin_axis_is_named(rated: Rated | None) -> None:
     assert only(Table(T_C + 273.15, r_ohm()), rated).slip == "kelvin-for-celsius"
+
+
+def test_another_rated_resistance_is_no_other_axis() -> None:
+    t_c = np.arange(10.0, 61.0, 5.0)
+    for rated_ohm in (1e3, 4.7e3, 15e3, 22e3, 100e3):
+        assert only(Table(t_c, r_ohm(t_c, 2800, -2.75e5)), Rated(rated_ohm)).rule == "rated-differs"
+
+
+@pytest.mark.parametrize("factors", [(30.0,), (1 / 30,), (25.0, 40.0), (250.0,), (1 / 250, 1 / 250)])
+@pytest.mark.parametrize("row", [0, 15, T_C.size - 2])
+def test_rows_that_are_far_off_are_no_other_unit(factors: tuple[float, ...], row: int) -> None:
+    values = r_ohm()
+    rows = list(range(row, row + len(factors)))
+    values[rows] *= factors
+    assert [(one.rule, one.row) for one in findings(Table(T_C, values), RATED)] == [
+        ("row-out-of-line", row) for row in rows
+    ]
+
+
+@pytest.mark.parametrize("value", [5e-324, 1e-320, 1e300])
+def test_a_number_that_is_no_resistance_is_passed_over(value: float) -> None:
+    assert only(Table(T_C, spoilt(15, value))).rule == "uneven-step"
 
 
 def test_a_slip_beside_a_missed_unit_is_found_too() -> None:

@@ -43,3 +43,15 @@ def test_half_a_unit_is_a_share_of_the_value() -> None:
 
 def test_a_decimal_comma_is_read() -> None:
     assert printed(np.array([1.25, 1.15, 1.05]), ("1,250", "1,150", "1,050")).digits.tolist() == [4, 4, 4]
+
+
+def test_a_row_is_printed_as_finely_as_the_rows_around_it() -> None:
+    three_digits = printed(np.array([2490.0, 2370.0, 2206.0, 2150.0, 2050.0, 1960.0]))
+    assert three_digits.prints(2, 2260.0)
+    assert not three_digits.prints(2, 2256.0)
+
+
+def test_fixed_decimals_allow_more_digits_above_a_decade() -> None:
+    two_decimals = printed(np.array([9.85, 9.41, 9.02, 8.66, 8.31]))
+    assert two_decimals.prints(0, 10.25)
+    assert not two_decimals.prints(0, 10.257)

@@ -48,9 +48,19 @@ def test_a_hole_in_an_even_axis_is_found_with_the_temperature_that_is_missing() 
 
 
 @pytest.mark.parametrize(
+    ("t_c", "row", "missing_c"), [((0, 5, 10, 15, 20, 25, 35), 6, 30.0), ((0, 10, 15, 20, 25, 30, 35), 1, 5.0)]
+)
+def test_a_hole_beside_an_end_of_an_even_axis_is_found(t_c: tuple[float, ...], row: int, missing_c: float) -> None:
+    seq = of(*t_c)
+    assert [(hole.row, hole.expected) for hole in holes(seq, seq.t_c)] == [(row, missing_c)]
+
+
+@pytest.mark.parametrize(
     "t_c",
     [
-        (0, 5, 10, 15, 20, 25, 30, 40),
+        (0, 5, 10, 15, 20, 30),
+        (0, 10, 15, 20, 25, 30),
+        (0, 5, 10, 15, 20, 25, 30, 42),
         (0, 5, 10, 15, 20, 30, 40, 50, 60),
         (0, 10, 20, 25, 30, 40, 50, 60),
         (-40, -20, 0, 10, 20, 30, 60, 85),

@@ -23,17 +23,28 @@ def test_every_single_slip_is_undone(typed: float, digits: int, kind: str, was: 
     assert Slip(kind, was) in [slip for slip, _ in edits(typed, digits)]
 
 
+def every(_: float) -> bool:
+    return True
+
+
 def test_the_only_likely_slip_is_named_alone() -> None:
-    assert explanations(6830.0, 4, expected=6529.6, sigma=2e-4, most=3e-3) == (Slip("one-digit", 6530.0),)
+    assert explanations(6830.0, 4, expected=6529.6, sigma=2e-4, most=3e-3, prints=every) == (Slip("one-digit", 6530.0),)
 
 
 def test_slips_that_explain_equally_well_are_all_given() -> None:
-    found = explanations(6537.0, 4, expected=6530.5, sigma=5e-4, most=3e-3)
+    found = explanations(6537.0, 4, expected=6530.5, sigma=5e-4, most=3e-3, prints=every)
     assert {Slip("one-digit", 6530.0), Slip("one-digit", 6531.0)} <= set(found)
 
 
 def test_no_slip_is_given_where_none_explains_the_value() -> None:
-    assert explanations(6830.0, 4, expected=4711.0, sigma=2e-4, most=1e-3) == ()
+    assert explanations(6830.0, 4, expected=4711.0, sigma=2e-4, most=1e-3, prints=every) == ()
+
+
+def test_a_value_that_the_table_would_not_print_is_no_explanation() -> None:
+    among = {"expected": 2258.0, "sigma": 2e-3, "most": 1e-2}
+    assert Slip("one-digit", 2256.0) in explanations(2206.0, 4, **among, prints=every)
+    found = explanations(2206.0, 4, **among, prints=lambda value: value % 10 == 0)
+    assert found == (Slip("two-digits-swapped", 2260.0),)
 
 
 def test_slips_of_a_temperature_are_signs_digits_and_swaps() -> None:
