@@ -104,6 +104,25 @@ class Resistance(click.ParamType):  # type: ignore[type-arg]
             self.fail(f"{wrong}.", param, ctx)
 
 
+_FROM = click.option(
+    "--from",
+    "from_c",
+    type=Degrees(),
+    metavar="C",
+    help="First temperature, °C; default the operating range, of several parts the common one.",
+)
+_TO = click.option("--to", "to_c", type=Degrees(), metavar="C", help="Last temperature, °C.")
+_STEP = click.option(
+    "--step",
+    "step_k",
+    type=Step(),
+    default=5.0,
+    show_default=True,
+    metavar="K",
+    help="Distance of the rows, K: from --from on, or at whole steps and both ends of the range.",
+)
+
+
 @click.group(context_settings={"help_option_names": ["-h", "--help"], "max_content_width": 110})
 @click.version_option(package_name="beadroll")
 def main() -> None:
@@ -174,19 +193,9 @@ def _print_csv_problems(found: list[Problem], _: Catalog) -> None:
 
 @main.command()
 @click.argument("part")
-@click.option(
-    "--from", "from_c", type=Degrees(), metavar="C", help="First temperature, °C; default the operating range."
-)
-@click.option("--to", "to_c", type=Degrees(), metavar="C", help="Last temperature, °C.")
-@click.option(
-    "--step",
-    "step_k",
-    type=Step(),
-    default=5.0,
-    show_default=True,
-    metavar="K",
-    help="Distance of the rows, K: from --from on, or at whole steps.",
-)
+@_FROM
+@_TO
+@_STEP
 @_common
 def curve(part: str, from_c: float | None, to_c: float | None, step_k: float, records: Path, form: str) -> None:
     """Resistance of PART over temperature, with its tolerance in ohm and in kelvin.
@@ -239,10 +248,8 @@ def temperature(part: str, ohm: tuple[float, ...], records: Path, form: str) -> 
 @main.command()
 @click.argument("part")
 @click.option("--equation", required=True, type=click.Choice(tuple(EQUATIONS)), help="Which equation.")
-@click.option(
-    "--from", "from_c", type=Degrees(), metavar="C", help="First temperature, °C; default the operating range."
-)
-@click.option("--to", "to_c", type=Degrees(), metavar="C", help="Last temperature, °C.")
+@_FROM
+@_TO
 @click.option(
     "--minimise",
     type=click.Choice(["kelvin", "ohm"]),
@@ -301,17 +308,9 @@ def intake(file: BinaryIO, **options: str | None) -> None:
 @main.command()
 @click.argument("reference", metavar="A")
 @click.argument("others", nargs=-1, required=True, metavar="B...")
-@click.option("--from", "from_c", type=Degrees(), metavar="C", help="First temperature, °C; default the common range.")
-@click.option("--to", "to_c", type=Degrees(), metavar="C", help="Last temperature, °C.")
-@click.option(
-    "--step",
-    "step_k",
-    type=Step(),
-    default=5.0,
-    show_default=True,
-    metavar="K",
-    help="Distance of the rows, K: from --from on, or at whole steps.",
-)
+@_FROM
+@_TO
+@_STEP
 @_common
 def compare(
     reference: str,
@@ -390,15 +389,7 @@ def families_(within_k: float, from_c: float, to_c: float, records: Path, form: 
 
 @main.command("budget")
 @click.argument("position")
-@click.option(
-    "--step",
-    "step_k",
-    type=Step(),
-    default=5.0,
-    show_default=True,
-    metavar="K",
-    help="Distance of the rows, which stand at whole steps and at both ends of the range, K.",
-)
+@_STEP
 @_common
 def budget_(position: str, step_k: float, records: Path, form: str) -> None:
     """Error budget of the part fitted at POSITION: bias, a band for each source, worst case, trips.

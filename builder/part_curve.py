@@ -22,7 +22,7 @@ from builder.curves import (
 from builder.curves.b_value import TYPICAL_BEND_K2
 from builder.curves.curve import Mask
 from builder.records import Part, PartRecord
-from builder.records.part import BValue
+from builder.records.part import BValue, SteinhartHart
 from builder.records.table import TableData
 from builder.units import Array, kelvin
 
@@ -168,6 +168,11 @@ def _from_table(record: PartRecord, operating_c: tuple[float, float]) -> Curve: 
 def _from_steinhart_hart(record: PartRecord, operating_c: tuple[float, float]) -> Curve:  # noqa: ARG001
     stated = record.part.steinhart_hart
     assert stated is not None
+    return stated_curve(stated)
+
+
+def stated_curve(stated: SteinhartHart) -> Curve:
+    """The curve of stated coefficients, whatever else the record has."""
     law = SteinhartHartLaw(stated.a, stated.b, stated.c)
     return Curve("steinhart-hart", law, stated.span_c, extends=stated.c > 0)
 

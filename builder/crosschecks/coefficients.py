@@ -9,9 +9,9 @@ from itertools import chain, pairwise
 import numpy as np
 
 from builder.crosschecks.subject import Check, Subject
-from builder.curves import Curve, SteinhartHartLaw
+from builder.curves import Curve
 from builder.curves.b_value import COLD_BENDS_K2, HOT_BENDS_K2
-from builder.part_curve import whole_steps_c
+from builder.part_curve import stated_curve, whole_steps_c
 from builder.problems import Problem
 from builder.records.part import BValue, SteinhartHart
 from builder.units import celsius, kelvin, number_text, range_text, resistance_text, signed_text, temperature_text
@@ -24,12 +24,6 @@ _UNIT_WITHIN_K = 3.0
 # rounded to a whole kelvin, may lie 1 K closer or farther apart.
 _LIKELY_BENDS_K2 = (-6e5, 0.5e5)
 _B_ROUNDING_K = 1.0
-
-
-def stated_curve(stated: SteinhartHart) -> Curve:
-    """The curve of stated coefficients, whatever else the record has."""
-    law = SteinhartHartLaw(stated.a, stated.b, stated.c)
-    return Curve("steinhart-hart", law, stated.span_c, extends=stated.c > 0)
 
 
 def _units_look_wrong(subject: Subject) -> Iterator[Problem]:
