@@ -12,6 +12,7 @@ window.beadroll = window.beadroll || {};
   const MOST_PARTS = 6;
   const OPTIONS = 12; // parts listed while a number is typed
   const STEPS = [1, 5, 10];
+  const PAPER_STEPS = [1, 5, 10, 20, 50], PAPER_ROWS = 34;
   const COLDEST_C = -273, HOTTEST_C = 1000;
   const SAME_K = 0.01; // hundredths of a kelvin are what a sentence shows
   const SAME_RATIO = 1e-6; // bands of equal parts differ by rounding of this size
@@ -103,7 +104,7 @@ window.beadroll = window.beadroll || {};
       doubts.push(`a curve ends within the ${rangeText([rows[0].tC, rows.at(-1).tC])} asked for`);
     }
     if (known.some((row) => Number.isNaN(row.low))) {
-      doubts.push(`no tolerance is given for ${otherName} outside ${rangeText(other.bandC)}`);
+      doubts.push(`the tolerance of ${otherName} is not shown outside ${rangeText(other.bandC)}`);
     }
     return `${[clauses.join(", "), ...doubts].join("; ")}.`;
   }
@@ -120,14 +121,16 @@ window.beadroll = window.beadroll || {};
     return `reads at most ${amount} (at ${degrees(worst.tC)}) ${place}`;
   }
 
-  /* How the bands lie to each other, where both are given. */
-  function bandSentence(otherName, referenceName, rows) {
+  /* How the bands lie to each other, where both are shown. A band that lacks a tolerance is too narrow to lie within. */
+  function bandSentence(otherName, referenceName, rows, other) {
     const known = rows.filter((row) => Number.isFinite(row.low + row.refLow));
     if (!known.length) return "";
     const isInside = ({ low, high, refLow, refHigh }) =>
       low >= refLow * (1 - SAME_RATIO) && high <= refHigh * (1 + SAME_RATIO);
-    const verb = known.every(isInside) ? "lies within" : "reaches outside";
-    return `The tolerance of ${otherName} ${verb} that of ${referenceName}.`;
+    const within = known.every(isInside);
+    if (within && known.some((row) => other.isIncomplete(row.tC))) return "";
+    const place = known.length < rows.length ? ` ${where(known)}` : "";
+    return `The tolerance of ${otherName} ${within ? "lies within" : "reaches outside"} that of ${referenceName}${place}.`;
   }
 
   /* ---- The parts that can be chosen ---- */
@@ -450,22 +453,28 @@ window.beadroll = window.beadroll || {};
       fillRange(range);
       drawChart(tC);
       // Two thousand cells at 1 K take longer to lay out than all else: the chart is seen before them.
-      requestAnimationFrame(() => setTimeout(fillTable));
+      requestAnimationFrame(() => setTimeout(() => fillTable()));
       differencesTable(differences.querySelector("table"), shown, reference);
       const lines = sentenceLines();
       sentences.replaceChildren(...lines.map((line) => element("li", {}, line)));
       return common ? "" : "The operating ranges do not meet; the reference’s is shown.";
     }
 
-    function fillTable() {
+    function fillTable(step = state.step) {
       const reference = shown.find(({ part }) => part.key === state.reference);
-      if (reference) figuresTable(find(".bd-side-rows table"), VIEWS[state.view], shown, reference.curve, state.step);
+      if (reference) figuresTable(find(".bd-side-rows table"), VIEWS[state.view], shown, reference.curve, step);
+    }
+
+    /* As many rows as fit on the page beside the chart; CSV has them all. */
+    function paperStep() {
+      const degrees = shown.length ? shown[0].rows.length - 1 : 0;
+      return PAPER_STEPS.find((step) => step >= state.step && degrees / step < PAPER_ROWS) ?? PAPER_STEPS.at(-1);
     }
 
     function sentenceLines() {
       const reference = parts.get(state.reference);
       return shown.filter(({ part }) => part !== reference).map(({ part, ...comparison }) => [
-        sentence(reference.name, part.name, comparison), bandSentence(part.name, reference.name, comparison.rows),
+        sentence(reference.name, part.name, comparison), bandSentence(part.name, reference.name, comparison.rows, comparison.curve),
       ].filter(Boolean).join(" "));
     }
 
@@ -496,8 +505,7 @@ window.beadroll = window.beadroll || {};
     /* ---- Address and history: one step back for one field, not for one letter ---- */
 
     function remember(changedField) {
-      const address = `${location.href.split("#")[0]}${hashOf(state)}`;
-      history[changedField === lastField ? "replaceState" : "pushState"](null, "", address);
+      history[changedField === lastField ? "replaceState" : "pushState"](null, "", address());
       lastField = changedField === "parts" || changedField === "hidden" ? null : changedField;
     }
 
@@ -531,10 +539,14 @@ window.beadroll = window.beadroll || {};
       reference: (value) => { state.reference = value; changed("reference"); },
     };
 
+    function address() {
+      return `${location.href.split("#")[0]}${hashOf(state)}`;
+    }
+
     const fileName = (ending) => `side-by-side-${state.view}.${ending}`;
     const does = {
       async link() {
-        await beadroll.copied(location.href);
+        await beadroll.copied(address());
         say("Link copied.");
       },
       async sentences() {
@@ -559,8 +571,12 @@ window.beadroll = window.beadroll || {};
     form.addEventListener("change", () => { lastField = null; });
     root.addEventListener("click", (event) => does[event.target.closest("button")?.dataset.does]?.());
     addEventListener("popstate", () => {
-      if (!/^#[^=]+$/.test(location.hash)) restore(); // else it is an anchor of the page
+      // An anchor of the page is jumped to; the address goes on holding the view.
+      if (/^#[^=]+$/.test(location.hash)) history.replaceState(null, "", address());
+      else restore();
     });
+    addEventListener("beforeprint", () => fillTable(paperStep()));
+    addEventListener("afterprint", () => fillTable());
 
     root.hidden = false;
     restore();

@@ -82,10 +82,13 @@ class Comparison:
 
     @property
     def within_reference_band(self) -> bool:
-        """Whether no part within the other's tolerance lies outside the reference's, at any temperature."""
+        """Whether no part within the other's tolerance lies outside the reference's, at any temperature.
+
+        A band that lacks a tolerance is narrower than the truth, so nothing is claimed of it.
+        """
         (ref_low, ref_high), (low, high) = self._bands_ohm
         inside = (low >= ref_low * (1 - _SAME_RATIO)) & (high <= ref_high * (1 + _SAME_RATIO))
-        return bool(self.known.any() and inside[self.known].all())
+        return bool(self.known.any() and inside[self.known].all()) and not self.tolerance_incomplete
 
     @property
     def bands_overlap(self) -> bool:

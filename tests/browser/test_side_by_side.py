@@ -465,7 +465,7 @@ def test_what_rests_on_an_extrapolation_is_marked_by_a_sign_and_a_sentence(opene
     assert f"the curve of {full_name(OTHER)} is extrapolated outside −40 to 125 °C" in side.sentences()[0]
     # No tolerance is told outside the operating range, so none is shown.
     assert side.column(5)[:4] == ["–"] * 4 and side.column(5)[4] != "–"
-    assert f"no tolerance is given for {full_name(OTHER)} outside −40 to 125 °C" in side.sentences()[0]
+    assert f"the tolerance of {full_name(OTHER)} is not shown outside −40 to 125 °C" in side.sentences()[0]
 
 
 def test_ranges_that_do_not_meet_are_said(opened: Opened) -> None:
@@ -594,3 +594,24 @@ def test_axe_finds_no_violation(opened: Opened, scheme: str, width: int) -> None
         side.field.fill(typed)
         found = axe.run(side.page, options={"preload": False}).response["violations"]
         assert [(v["id"], [n["html"] for n in v["nodes"]]) for v in found] == []
+
+
+def test_the_link_and_the_address_hold_the_view_after_a_jump_within_the_page(opened: Opened) -> None:
+    side = opened(fragment(REFERENCE, OTHER), permissions=["clipboard-read", "clipboard-write"])
+    before = side.page.url
+    side.page.evaluate("location.hash = 'page-body'")
+    side.page.wait_for_function("location.hash !== '#page-body'")
+    assert side.page.url == before
+    side.page.get_by_role("button", name="Copy link").click()
+    side.page.get_by_text("Link copied.").wait_for()
+    assert side.page.evaluate("navigator.clipboard.readText()") == before
+
+
+def test_paper_gets_a_table_that_fits_one_page_and_the_screen_its_own_again(opened: Opened) -> None:
+    side = opened(f"{fragment(REFERENCE, OTHER)}&step=1&from=-40&to=125")
+    rows = side.page.locator(".bd-side-rows tbody tr")
+    assert rows.count() == 166
+    side.page.evaluate("dispatchEvent(new Event('beforeprint'))")
+    assert rows.count() == 34
+    side.page.evaluate("dispatchEvent(new Event('afterprint'))")
+    assert rows.count() == 166

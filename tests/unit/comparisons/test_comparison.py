@@ -117,6 +117,11 @@ def test_where_no_curve_reaches_there_is_no_worst():
     assert (found.within_reference_band, found.bands_overlap) == (False, False)
 
 
+def test_nothing_is_claimed_of_a_band_that_lacks_a_tolerance():
+    assert compared(plain(pct=1), plain(pct=0.5), T_C).within_reference_band
+    assert not compared(plain(pct=1), plain(pct=None), T_C).within_reference_band
+
+
 def test_tolerance_that_the_other_does_not_state_is_noted():
     assert not compared(plain(), plain()).tolerance_incomplete
     assert compared(plain(), plain(pct=None)).tolerance_incomplete
