@@ -7,6 +7,7 @@ import re
 import subprocess
 from pathlib import Path
 
+import click
 import pytest
 import yaml
 
@@ -65,4 +66,4 @@ def test_continuous_integration_runs_the_readme_s_own_test_command() -> None:
 
 def test_the_command_lines_of_the_readme_are_those_of_the_program() -> None:
     named = set(re.findall(r"(?:^|[\s`/])beadroll ([a-z]+)\b", README))
-    assert named and named <= set(main.commands)
+    assert named and named <= set(main.list_commands(click.Context(main)))

@@ -13,8 +13,9 @@ BUILDER = Path(__file__).parents[2] / "builder"
 _ON_CURVES = {"units", "curves"}
 _ON_PARTS = _ON_CURVES | {"problems", "records", "part_curve"}
 _ON_CHECKS = _ON_PARTS | {"fits", "misprints", "crosschecks", "comparisons", "circuit", "part_fit"}
+_ON_RECORD_KEEPING = _ON_CHECKS | {"decisions", "ledger", "history", "bills", "questions"}
 MAY_IMPORT: dict[str, set[str]] = {
-    "": _ON_CHECKS | {"intake"},
+    "": _ON_RECORD_KEEPING | {"intake"},
     "units": set(),
     "problems": set(),
     "processes": set(),
@@ -27,11 +28,17 @@ MAY_IMPORT: dict[str, set[str]] = {
     "part_fit": _ON_CURVES | {"records", "part_curve", "fits"},
     "comparisons": _ON_CURVES | {"part_curve"},
     "circuit": _ON_CURVES | {"records", "part_curve"},
-    "crosschecks": _ON_PARTS | {"fits", "misprints", "processes"},
-    "exports": _ON_CHECKS,
-    "pages": _ON_CHECKS | {"exports"},
-    "cli": _ON_CHECKS | {"exports", "intake"},
-    "plugin": _ON_CHECKS | {"exports", "pages", "processes"},
+    "crosschecks": _ON_PARTS | {"fits", "misprints", "ledger", "processes"},
+    "ledger": {"units", "problems", "records"},
+    "decisions": _ON_CHECKS | {"ledger"},
+    "bills": {"units", "problems", "records", "ledger", "decisions"},
+    "questions": _ON_CHECKS | {"intake"},
+    "history": _ON_CHECKS | {"ledger", "decisions", "processes"},
+    "exports": _ON_RECORD_KEEPING,
+    "pages": _ON_RECORD_KEEPING | {"exports"},
+    "commands": _ON_RECORD_KEEPING | {"exports", "intake"},
+    "cli": {"commands"},
+    "plugin": _ON_RECORD_KEEPING | {"exports", "pages", "processes"},
 }
 
 
@@ -111,7 +118,7 @@ def test_nothing_imports_the_command_line_or_the_plugin(module):
 
 @pytest.mark.parametrize(
     ("package", "layers"),
-    [("click", {"cli"}), ("pydantic", {"records"}), ("yaml", {"records"}), ("matplotlib", {"pages"})],
+    [("click", {"cli", "commands"}), ("pydantic", {"records"}), ("yaml", {"records"}), ("matplotlib", {"pages"})],
 )
 def test_a_library_is_known_where_it_is_needed_only(package, layers):
     assert {layer(module) for module in importers_of(package, BUILDER)} <= layers
@@ -125,7 +132,9 @@ def faulty(tmp_path):
         "__init__.py": "",
         "units.py": "from builder.problems import nearest",
         "problems.py": "def f():\n    from builder import cli\n",
-        "cli.py": "import builder.units",
+        "cli.py": "from builder.commands import checking",
+        "commands/__init__.py": "",
+        "commands/checking.py": "import builder.units",
         "curves/__init__.py": "from builder.records.part import Part\nimport mkdocs.utils",
         "records/__init__.py": "",
         "records/part.py": "",
@@ -142,6 +151,6 @@ def test_the_checks_themselves_find_these_faults(faulty):
         "builder.problems imports builder.cli",
         "builder.units imports builder.problems",
     ]
-    assert set(cycle(faulty)) == {"builder.units", "builder.problems", "builder.cli"}
+    assert set(cycle(faulty)) == {"builder.units", "builder.problems", "builder.cli", "builder.commands.checking"}
     assert importers_of("mkdocs", faulty) == ["builder.curves"]
     assert importers_of("builder.cli", faulty) == ["builder.problems"]

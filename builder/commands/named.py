@@ -1,0 +1,67 @@
+"""The records that a command names."""
+
+from __future__ import annotations
+
+import datetime
+import sys
+from pathlib import Path
+from typing import NoReturn
+
+import click
+
+from builder.crosschecks.checked import findings
+from builder.crosschecks.subject import Subject
+from builder.part_curve import part_curve
+from builder.problems import Problem, count_text, errors, nearest
+from builder.records import Catalog, PartRecord, Position, UnknownPart, read_catalog
+
+
+def named_position(catalog: Catalog, name: str) -> Position:
+    """The position a command names; that it is unknown ends the command."""
+    places = {record.position.position: record.position for record in catalog.positions}
+    known = {number.casefold(): place for number, place in places.items()}
+    if name.strip().casefold() not in known:
+        raise click.UsageError(f"{name} is not a position of the catalog.{nearest(name, places) or ' Check its name.'}")
+    return known[name.strip().casefold()]
+
+
+def named_part(records: Path, name: str) -> PartRecord:
+    """The part a command names; its problems, or that it is unknown, end the command."""
+    (record,) = named_parts(read_catalog(records), (name,))
+    return record
+
+
+def named_parts(catalog: Catalog, names: tuple[str, ...]) -> list[PartRecord]:
+    """The parts a command names; their problems, or that one is unknown, end the command."""
+    faulty = errors(catalog.problems)
+    found = [_named(catalog, name, faulty) for name in names]
+    files = {record.source.file for record in found}
+    own = [problem for problem in faulty if problem.file in files]
+    for record in found:
+        own += errors(findings(Subject(record, part_curve(record), datetime.date.today())))
+    for problem in own:
+        click.echo(str(problem), err=True)
+    if own:
+        sys.exit(1)
+    if faulty:
+        click.echo(f"Other records have {count_text(len(faulty), 'error')}; beadroll check shows them.", err=True)
+    return found
+
+
+def _named(catalog: Catalog, name: str, faulty: tuple[Problem, ...]) -> PartRecord:
+    try:
+        return catalog.part(name)
+    except UnknownPart as unknown:
+        if not faulty:
+            raise click.UsageError(str(unknown)) from None
+        for problem in faulty:
+            click.echo(str(problem), err=True)
+        stop(
+            f"{unknown} The records have {count_text(len(faulty), 'error')}, shown above; the part may be among them.",
+            1,
+        )
+
+
+def stop(message: str, code: int) -> NoReturn:
+    click.echo(message, err=True)
+    sys.exit(code)
