@@ -11,6 +11,7 @@ from builder.exports.rows import Column
 
 
 def print_rows(form: str, head: dict[str, Any], columns: tuple[Column, ...], table: list[rows.Row]) -> None:
+    """Rows in the form asked for; `head` goes before them in JSON."""
     if form == "json":
         click.echo(rows.json_text(head | {"rows": table}), nl=False)
     elif form == "csv":

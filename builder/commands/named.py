@@ -63,5 +63,6 @@ def _named(catalog: Catalog, name: str, faulty: tuple[Problem, ...]) -> PartReco
 
 
 def stop(message: str, code: int) -> NoReturn:
+    """End the command with a message."""
     click.echo(message, err=True)
     sys.exit(code)

@@ -40,6 +40,7 @@ TODAY = click.option(
 
 
 def common(command: _Command) -> _Command:
+    """The options that every command takes."""
     return RECORDS(FORMAT(command))
 
 
@@ -108,6 +109,7 @@ STEP = click.option(
 
 
 def temperatures_c(from_c: float | None, to_c: float | None, step_k: float, range_c: tuple[float, float]) -> Array:
+    """The temperatures of a command's rows: whole steps and both ends, or from --from on. [°C]"""
     if from_c is not None and to_c is not None:
         refuse_falling(from_c, to_c)
     low_c, high_c = range_c
@@ -120,5 +122,6 @@ def temperatures_c(from_c: float | None, to_c: float | None, step_k: float, rang
 
 
 def refuse_falling(from_c: float, to_c: float) -> None:
+    """Refuse a range whose ends are exchanged."""
     if from_c > to_c:
         raise click.UsageError(f"--from {number_text(from_c)} lies above --to {number_text(to_c)}. Exchange them.")
