@@ -54,7 +54,6 @@ def _end(table: Table, name: str, nominal: Column, rated_c: float) -> Column | N
     if has.sum() < _FEWEST_ROWS:
         return None
     seq, r_ohm = Sequence(nominal.seq.rows[has], nominal.seq.t_c[has]), typed[has]
-    cells = table.cells(name)
     t_c, x = nominal.t_c[has], 1 / (nominal.t_c[has] + ZERO_C_K)
     width = np.abs(np.log(r_ohm) - nominal.curve.fitted[has])
     narrowest = float(t_c[np.argmin(np.median(sliding_window_view(np.pad(width, 1, mode="edge"), 3), axis=1))])
@@ -62,7 +61,7 @@ def _end(table: Table, name: str, nominal: Column, rated_c: float) -> Column | N
     factor = nominal.scale_factor * 1000.0 ** -levels(x, np.log(r_ohm))
     return Column(
         name, seq, t_c, r_ohm, nominal.scale_factor, factor,
-        printed(r_ohm, None if cells is None else tuple(cells[i] for i in seq.rows)),
+        printed(r_ohm),
         nominal.to_c, kinks_c, nominal.printed.half[has],
     )  # fmt: skip
 

@@ -51,11 +51,10 @@ def findings(table: Table, rated: Rated | None = None) -> tuple[Finding, ...]:
 
 def _nominal(table: Table, seq: Sequence, rated: Rated | None) -> tuple[Column, scales.Scale]:
     """The nominal column in °C and Ω."""
-    r_ohm, cells = table.r_ohm[seq.rows], table.cells("r_ohm")
+    r_ohm = table.r_ohm[seq.rows]
     level = scales.levels(1 / (seq.placed_c + ZERO_C_K), np.log(r_ohm))
     y = np.log(r_ohm) - level * np.log(1000.0)
-    ordered = None if cells is None else tuple(cells[i] for i in seq.rows)
-    column = partial(Column, "r_ohm", seq, r_ohm=r_ohm, printed=printed(r_ohm, ordered))
+    column = partial(Column, "r_ohm", seq, r_ohm=r_ohm, printed=printed(r_ohm))
     found = scales.scale(seq.placed_c, y, rated)
     if found.axis:
         # Rows out of line and resistances out of step can feign the bend of a wrong axis: look again without them.

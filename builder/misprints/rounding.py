@@ -6,21 +6,11 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from builder.misprints.table import HIGHEST_OHM, LOWEST_OHM
 from builder.units import Array
 
 _MOST_DIGITS = 8
-_MOST_TYPED = 15  # a float holds no more
 _AROUND = 3
 _POWERS = 10.0 ** np.arange(_MOST_DIGITS)
-
-
-def number_of(cell: str) -> float:
-    """The number that a cell prints; nan if it prints none."""
-    try:
-        return float(cell.replace(",", ".").replace(" ", ""))
-    except ValueError:
-        return float("nan")
 
 
 def significant_digits(values: Array) -> Array:
@@ -54,7 +44,7 @@ class Printed:
     Attributes
     ----------
     numbers : array of shape (n,)
-        The numbers in the cells: resistances, or ratios. [Ω or no unit]
+        The numbers in the cells. [Ω]
     digits : array of shape (n,)
         Significant digits of each. [no unit]
     half : array of shape (n,)
@@ -76,27 +66,21 @@ class Printed:
         return bool(digits <= self.digits[around].max() or digits - decade <= finest)
 
 
-def printed(r_ohm: Array, cells: tuple[str | None, ...] | None = None) -> Printed:
-    """How a column was printed, from the source's cells or else from the numbers themselves.
+def printed(r_ohm: Array) -> Printed:
+    """How a column was printed, from the numbers themselves.
 
     Parameters
     ----------
     r_ohm : array of shape (n,)
         Resistances. [Ω]
-    cells : tuple of n texts, optional
-        The cells as printed; they show trailing zeros, and the digits of a table of ratios. [no unit]
 
     Returns
     -------
     Printed
         Numbers, digits and half units.
     """
-    numbers, in_text = r_ohm, np.zeros(r_ohm.size)
-    if cells is not None:
-        numbers = np.array([_number_or(cell, r) for cell, r in zip(cells, r_ohm, strict=True)])
-        in_text = np.array([_digits_of(cell) for cell in cells], dtype=float)
-    digits = np.maximum(_usual_digits(numbers), in_text)
-    return Printed(numbers, digits, 5.0 * 10.0**-digits / mantissas(numbers))
+    digits = _usual_digits(r_ohm)
+    return Printed(r_ohm, digits, 5.0 * 10.0**-digits / mantissas(r_ohm))
 
 
 def _usual_digits(values: Array) -> Array:
@@ -109,23 +93,6 @@ def _usual_digits(values: Array) -> Array:
     places: Array = _closed(digits - decade) + decade
     usual: Array = np.minimum(_closed(digits), places)
     return usual
-
-
-def _number_or(cell: str | None, r_ohm: float) -> float:
-    number = number_of(cell) if cell else 0.0
-    return number if LOWEST_OHM < number < HIGHEST_OHM else float(r_ohm)
-
-
-def _digits_of(cell: str | None) -> int:
-    """Digits of a cell with a decimal point; a whole number's trailing zeros say nothing."""
-    if not cell or not (number_of(cell) > 0 and ("." in cell or "," in cell)):
-        return 0
-    return min(len([c for c in cell.lower().split("e")[0] if c.isdigit()]) - _leading_zeros(cell), _MOST_TYPED)
-
-
-def _leading_zeros(cell: str) -> int:
-    figures = [c for c in cell if c.isdigit()]
-    return next((i for i, c in enumerate(figures) if c != "0"), len(figures))
 
 
 def _closed(fineness: Array) -> Array:

@@ -46,24 +46,17 @@ class Table:
         Nominal resistances. [Ω]
     r_min_ohm, r_max_ohm : array of shape (n,), optional
         Lowest and highest resistances; nan where a row has none. [Ω]
-    texts : dict of column name to n cells, optional
-        The cells as they stand in the source, to know the digits printed; None where unknown. [no unit]
     """
 
     t_c: Array
     r_ohm: Array
     r_min_ohm: Array | None = None
     r_max_ohm: Array | None = None
-    texts: dict[str, tuple[str | None, ...]] | None = None
 
     def column(self, name: str) -> Array | None:
         """The column of that name, or None where the table has none."""
         column: Array | None = getattr(self, name)
         return column
-
-    def cells(self, name: str) -> tuple[str | None, ...] | None:
-        """The source texts of that column, or None."""
-        return None if self.texts is None else self.texts.get(name)
 
 
 @dataclass(frozen=True)

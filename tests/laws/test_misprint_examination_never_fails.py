@@ -8,7 +8,6 @@ from hypothesis import strategies as st
 
 from builder.misprints import Rated, Table, findings
 
-CELLS = st.sampled_from(["4k7", "", "1,2", "x", "1e4", "0", "12.50", "5e-324", "1e400", f"{1e-300:.320f}", None])
 POSITIVE = st.floats(min_value=0.0, exclude_min=True, allow_infinity=False)
 NUMBERS = st.one_of(
     POSITIVE,
@@ -23,14 +22,11 @@ RATED = st.sampled_from(
 )
 
 
-@given(st.lists(st.tuples(TEMPERATURES, NUMBERS, NUMBERS, NUMBERS, CELLS), max_size=20), RATED)
+@given(st.lists(st.tuples(TEMPERATURES, NUMBERS, NUMBERS, NUMBERS), max_size=20), RATED)
 @settings(max_examples=60, deadline=None, derandomize=True)
-def test_any_columns_are_answered(
-    rows: list[tuple[float, float, float, float, str | None]], rated: Rated | None
-) -> None:
+def test_any_columns_are_answered(rows: list[tuple[float, float, float, float]], rated: Rated | None) -> None:
     t_c, r_ohm, low, high = (np.array([row[i] for row in rows], dtype=float) for i in range(4))
-    texts = {"r_ohm": tuple(row[4] for row in rows)}
-    for found in findings(Table(t_c, r_ohm, low, high, texts), rated):
+    for found in findings(Table(t_c, r_ohm, low, high), rated):
         assert found.row is None or 0 <= found.row < len(rows)
 
 

@@ -27,22 +27,8 @@ def test_fixed_digits_stay_over_decades() -> None:
     assert printed(np.array([12.34, 10.55, 9.123, 7.841, 6.702])).digits.tolist() == [4, 4, 4, 4, 4]
 
 
-def test_the_cells_show_the_trailing_zeros() -> None:
-    assert printed(np.array([1.2, 1.1, 1.0]), ("1.200", "1.100", "1.000")).digits.tolist() == [4, 4, 4]
-
-
-def test_a_ratio_has_the_digits_of_its_cell() -> None:
-    ratios = printed(np.array([15345.5, 4700.0, 1692.0]), ("3.265", "1.000", "0.360"))
-    assert ratios.digits.tolist() == [4, 4, 3]
-    assert ratios.half == pytest.approx([0.0005 / 3.265, 0.0005, 0.0005 / 0.36])
-
-
 def test_half_a_unit_is_a_share_of_the_value() -> None:
     assert printed(np.array([534.0, 521.0, 508.0])).half == pytest.approx([0.5 / 534, 0.5 / 521, 0.5 / 508])
-
-
-def test_a_decimal_comma_is_read() -> None:
-    assert printed(np.array([1.25, 1.15, 1.05]), ("1,250", "1,150", "1,050")).digits.tolist() == [4, 4, 4]
 
 
 def test_a_row_is_printed_as_finely_as_the_rows_around_it() -> None:
