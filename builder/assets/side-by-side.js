@@ -156,10 +156,9 @@ window.beadroll = window.beadroll || {};
   }
 
   /* Parts that hold all words typed; those whose number begins so come first. */
-  function matching(parts, text, chosen) {
+  function matching(parts, text) {
     const words = plain(text).split(/\s+/).filter(Boolean);
-    const holds = (part) => words.every((word) => part.found.includes(word));
-    const found = [...parts.values()].filter((part) => !chosen.includes(part.key) && holds(part));
+    const found = [...parts.values()].filter((part) => words.every((word) => part.found.includes(word)));
     const begins = (part) => words.length > 0 && part.start.startsWith(words[0]);
     return [...found.filter(begins), ...found.filter((part) => !begins(part))];
   }
@@ -227,14 +226,15 @@ window.beadroll = window.beadroll || {};
     }
 
     open() {
-      const found = this.found(this.field.value);
+      const { found, note } = this.found(this.field.value);
       this.parts = found.slice(0, OPTIONS);
       this.list.replaceChildren(...this.parts.map((part, i) => element(
         "li", { role: "option", id: `bd-side-option-${i}`, "aria-selected": "false" },
         element("b", {}, part.number), " ", element("small", {}, part.about),
       )));
       this.expand(this.parts.length > 0);
-      this.said(`${count(found.length, "part")} found${found.length > OPTIONS ? `, the first ${OPTIONS} listed` : ""}`);
+      const listed = found.length > OPTIONS ? `, the first ${OPTIONS} listed` : "";
+      this.said(note || `${count(found.length, "part")} found${listed}`);
       this.activate(this.field.value.trim() && this.parts.length ? 0 : -1);
     }
 
@@ -353,11 +353,18 @@ window.beadroll = window.beadroll || {};
 
     const say = (text) => { status.textContent = text; };
 
-    const isFull = () => state.chosen.length >= MOST_PARTS;
+    /* The parts that can still be added, and what is said where there is more to say than how many. */
+    function foundFor(text) {
+      if (state.chosen.length >= MOST_PARTS) return { found: [], note: `${MOST_PARTS} parts are the most; remove one first.` };
+      const holding = matching(parts, text), isChosen = ({ key }) => state.chosen.includes(key);
+      const found = holding.filter((part) => !isChosen(part));
+      const note = holding.length && !found.length ? `${holding.map(({ number }) => number).join(", ")}: chosen already.` : "";
+      return { found, note };
+    }
 
     const field = new PartField(find("#bd-side-find"), find("#bd-side-found"), {
-      found: (text) => (isFull() ? [] : matching(parts, text, state.chosen)),
-      said: (text) => say(isFull() ? `${MOST_PARTS} parts are the most; remove one first.` : text),
+      found: foundFor,
+      said: say,
       picked: (part) => {
         state.chosen = [...state.chosen, part.key];
         state.reference ??= part.key;

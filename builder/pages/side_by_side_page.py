@@ -153,8 +153,8 @@ _FORM = Html("""\
 </fieldset>
 <fieldset>
 <legend>Range, °C</legend>
-<label>from <input name="from" type="number" step="1" min="-273" max="1000"></label>
-<label>to <input name="to" type="number" step="1" min="-273" max="1000"></label>
+<label>from <input name="from" type="number" step="1" min="-273" max="1000" aria-describedby="bd-side-said"></label>
+<label>to <input name="to" type="number" step="1" min="-273" max="1000" aria-describedby="bd-side-said"></label>
 <button type="button" data-does="common">Common range</button>
 </fieldset>
 <label>Table every
@@ -162,7 +162,7 @@ _FORM = Html("""\
 </label>
 </div>
 </form>
-<p class="bd-side-said" role="status"></p>
+<p class="bd-side-said" id="bd-side-said" role="status"></p>
 <div class="bd-side-tools">
 <button type="button" data-does="link">Copy link</button>
 <button type="button" data-does="sentences">Copy sentences</button>

@@ -259,6 +259,15 @@ def test_no_part_found_is_said(opened: Opened) -> None:
     assert side.said() == "0 parts found" and side.chosen() == []
 
 
+def test_a_part_that_is_chosen_already_is_said_to_be(opened: Opened) -> None:
+    side = opened()
+    side.choose(REFERENCE)
+    side.field.fill(REFERENCE)
+    assert side.said() == f"{REFERENCE}: chosen already."
+    side.field.fill("a-103")
+    assert re.fullmatch(r"\d+ parts found", side.said())
+
+
 def test_an_option_is_chosen_by_pointing(opened: Opened) -> None:
     side = opened()
     side.field.fill("osp4-103v")
