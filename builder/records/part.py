@@ -156,6 +156,17 @@ class Document(RecordModel):
     file: Text | None = Field(None, description="The document's file beside the record.")
 
 
+class DocumentRevision(RecordModel):
+    """One revision of one of the part's documents, named as the part's `documents` name it."""
+
+    title: Text = Field(description="The document's title.", examples=["data sheet"])
+    revision: Text | None = Field(None, description="Its revision, as text; an approval needs it.", examples=["C"])
+
+    def __str__(self) -> str:
+        """As a sentence names it: `data sheet, revision C`."""
+        return self.title if self.revision is None else f"{self.title}, revision {self.revision}"
+
+
 class Standing(RecordModel):
     """One entry of the ledger: appended to, never edited; the last entry holds."""
 
@@ -163,6 +174,11 @@ class Standing(RecordModel):
     on: Day = Field(description="Day of the decision, year-month-day.", examples=["2026-02-10"])
     by: Text = Field(description="Who decided.", examples=["component engineering"])
     because: Text = Field(description="Why, in a sentence.")
+    document: DocumentRevision | None = Field(
+        None,
+        description="The document that the decision rests on; approved and restricted need one, with its revision.",
+        examples=[{"title": "data sheet", "revision": "C"}],
+    )
     only_for: Several[Text] = Field(
         (), description="Positions or boards it may be fitted at, where it is restricted to some."
     )
