@@ -2,28 +2,16 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
-
 from builder.exports.curve_script import curve_script
 from builder.pages.context import Context
 from builder.pages.html import Html, joined, link, notice, tag
 from builder.pages.page import DataFile, Page
-from builder.pages.parts_page import B_HEADING, curve_b
+from builder.pages.part_facts import FACT_NAMES, part_facts
 from builder.pages.parts_page import DATA as PARTS_DATA
 from builder.pages.parts_page import PAGE as PARTS_PAGE
-from builder.part_curve import PartCurve
-from builder.records import Part, PartRecord
-from builder.units import number_text, range_text, resistance_text, temperature_text
+from builder.records import PartRecord
 
 PAGE = "side-by-side.html"
-NOT_STATED = "not stated"
-_SOURCES = {
-    "table": "R–T table",
-    "steinhart-hart": "Steinhart–Hart coefficients",
-    "b-values": "B-values (estimate)",
-    "b-value": "one B-value (estimate)",
-}
-_Fact = Callable[[Part, PartCurve], str | None]
 
 
 def side_by_side_page() -> Page:
@@ -42,51 +30,13 @@ def curve_file(record: PartRecord, context: Context) -> DataFile:
     """A part's curve for the browser, beside the part's page."""
     path = context.paths.part(record).removesuffix(".html")
     key, curve = path.removeprefix("parts/"), context.curve(record)
-    return DataFile(f"{path}.js", lambda: curve_script(key, curve, _facts(record.part, curve)))
+    return DataFile(f"{path}.js", lambda: curve_script(key, curve, part_facts(record.part, curve)))
 
 
 def side_by_side_address(reference: PartRecord, others: tuple[PartRecord, ...], context: Context) -> str:
     """The page's address, from the site's root, with parts chosen."""
     keys = [context.paths.part(r).removeprefix("parts/").removesuffix(".html") for r in (reference, *others)]
     return f"{PAGE}#reference={keys[0]}&parts={','.join(keys)}"
-
-
-def _facts(part: Part, curve: PartCurve) -> list[str]:
-    return [fact(part, curve) or NOT_STATED for _, fact in _FACTS]
-
-
-def _quantity(value: float | None, unit: str, sign: str = "") -> str | None:
-    return None if value is None else f"{sign}{number_text(value)} {unit}"
-
-
-def _b_text(part: Part, curve: PartCurve) -> str | None:  # noqa: ARG001
-    b_k, mark = curve_b(curve)
-    return None if b_k is None else f"{b_k} {mark}".strip()
-
-
-def _rated(part: Part, curve: PartCurve) -> str:  # noqa: ARG001
-    return f"{resistance_text(part.rated.resistance_ohm)} at {temperature_text(part.rated.at_c)}"
-
-
-_FACTS: tuple[tuple[str, _Fact], ...] = (
-    ("Maker", lambda part, _: part.maker),
-    ("Own number", lambda part, _: part.own_number),
-    ("Standing", lambda part, _: part.state() or "no standing"),
-    ("Lifecycle", lambda part, _: part.lifecycle),
-    ("Rated resistance", _rated),
-    ("Tolerance", lambda part, _: _quantity(part.rated.tolerance_pct, "%", "±")),
-    (B_HEADING, _b_text),
-    ("Curve made from", lambda _, curve: _SOURCES[curve.curve.basis]),
-    ("Curve known", lambda _, curve: range_text(curve.curve.span_c)),
-    ("Body", lambda part, _: part.body.form),
-    ("Size code", lambda part, _: part.body.size_code or "none"),
-    ("Operating range", lambda part, _: range_text(part.limits.operating_c) if part.limits.operating_c else None),
-    ("Largest power", lambda part, _: _quantity(part.limits.max_power_mw, "mW")),
-    ("Dissipation factor", lambda part, _: _quantity(part.limits.dissipation_mw_per_k, "mW/K")),
-    ("Time constant", lambda part, _: _quantity(part.limits.time_constant_s, "s")),
-    ("Medium of these two", lambda part, _: part.limits.medium),
-    ("Qualification", lambda part, _: ", ".join(part.qualification)),
-)
 
 
 def _body() -> Html:
@@ -107,7 +57,7 @@ def _body() -> Html:
 
 
 def _differences() -> Html:
-    rows = [tag("tr", tag("th", label, scope="row")) for label, _ in _FACTS]
+    rows = [tag("tr", tag("th", label, scope="row")) for label in FACT_NAMES]
     head = tag("thead", tag("tr", tag("td")))
     shown = tag(
         "table",
