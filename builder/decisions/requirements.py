@@ -1,0 +1,125 @@
+"""What a position asks of a part beside its reading: nothing here is cured by firmware."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import dataclass
+from typing import Literal
+
+from builder.records import Part, Position
+from builder.records.part import Standing
+from builder.units import number_text, temperature_text
+
+About = Literal[
+    "error",
+    "trips",
+    "sensor faults",
+    "body",
+    "range",
+    "qualification",
+    "time constant",
+    "standing",
+    "lifecycle",
+]
+
+
+@dataclass(frozen=True)
+class Reason:
+    """One reason of a verdict, as a sentence without a full stop.
+
+    `against` is True where it speaks against the part, None where a figure is missing that would decide, named by
+    `missing`, and False where it is only to be known.
+    """
+
+    about: About
+    message: str
+    against: bool | None
+    missing: tuple[str, ...] = ()
+
+
+def requirement_reasons(position: Position, part: Part) -> Iterator[Reason]:
+    """What speaks against a part at a position, or is to be known, by its record alone."""
+    yield from _footprint(position, part)
+    yield from _range(position, part)
+    yield from _qualification(position, part)
+    yield from _time_constant(position, part)
+    yield from _standing(position, part)
+    yield from _lifecycle(part)
+
+
+def body_text(part: Part) -> str:
+    """A body in words.
+
+    Examples
+    --------
+    >>> from builder.records.part import Body
+    >>> body_text(Part.model_construct(body=Body(form="chip", size_code="0603")))
+    'chip 0603'
+    """
+    return " ".join(filter(None, (part.body.form, part.body.size_code)))
+
+
+def _footprint(position: Position, part: Part) -> Iterator[Reason]:
+    # A chip always states its size code, so a body without one is none.
+    footprint, body = position.requires.size_code, part.body
+    if footprint is not None and body.size_code != footprint:
+        message = f"{body.size_code or body_text(part)} does not stand on the footprint {footprint}"
+        yield Reason("body", message, True)
+
+
+def _range(position: Position, part: Part) -> Iterator[Reason]:
+    if part.limits.operating_c is None:
+        yield _not_stated("range", "operating range", "limits.operating_c")
+        return
+    (low_c, high_c), (coldest_c, hottest_c) = position.range_c, part.limits.operating_c
+    if low_c < coldest_c:
+        yield Reason("range", f"operates from {temperature_text(coldest_c)}, the range reaches {temperature_text(low_c)}", True)  # fmt: skip
+    if high_c > hottest_c:
+        yield Reason("range", f"operates to {temperature_text(hottest_c)}, the range reaches {temperature_text(high_c)}", True)  # fmt: skip
+
+
+def _qualification(position: Position, part: Part) -> Iterator[Reason]:
+    stated = {text.casefold() for text in part.qualification}
+    for asked in position.requires.qualification:
+        if asked.casefold() not in stated:
+            has = f"it has {', '.join(part.qualification)}" if stated else "it has none"
+            yield Reason("qualification", f"{asked} is required, {has}", True)
+
+
+def _time_constant(position: Position, part: Part) -> Iterator[Reason]:
+    slowest_s, own_s = position.requires.time_constant_max_s, part.limits.time_constant_s
+    if slowest_s is None:
+        return
+    if own_s is None:
+        yield _not_stated("time constant", "time constant", "limits.time_constant_s")
+    elif own_s > slowest_s:
+        message = f"time constant {number_text(own_s)} s, at most {number_text(slowest_s)} s is required"
+        yield Reason("time constant", message, True)
+
+
+def _standing(position: Position, part: Part) -> Iterator[Reason]:
+    yield from ledger_reasons("the part", part.standing)
+    only_for = part.standing[-1].only_for if part.standing else ()
+    here = {position.position.casefold(), position.board.casefold()}
+    if only_for and here.isdisjoint(name.casefold() for name in only_for):
+        yield Reason("standing", f"the part may be fitted only at {', '.join(only_for)}", True)
+
+
+def ledger_reasons(whose: str, standing: tuple[Standing, ...]) -> Iterator[Reason]:
+    """What the last entry of a ledger means; an approval needs no word."""
+    if not standing:
+        yield Reason("standing", f"{whose} has no entry in its ledger", False)
+        return
+    last = standing[-1]
+    if last.state in ("withdrawn", "proposed"):
+        message = f"{whose} is {last.state} since {last.on.isoformat()} ({last.by}: {last.because})"
+        yield Reason("standing", message, last.state == "withdrawn")
+
+
+def _lifecycle(part: Part) -> Iterator[Reason]:
+    if part.lifecycle != "active":
+        yield Reason("lifecycle", f"the part is {part.lifecycle}", part.lifecycle == "obsolete")
+
+
+def _not_stated(about: About, what: str, field: str) -> Reason:
+    return Reason(about, f"the part's {what} is not stated ({field})", None, (field,))
