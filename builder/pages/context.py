@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import datetime
+import hashlib
 from collections import defaultdict
 from collections.abc import Mapping
 from dataclasses import dataclass
@@ -68,6 +69,11 @@ class Context:
         table = getattr(record, "table", None)
         files = {record.source.file, table.file if table is not None else record.source.file}
         return tuple(p for file in sorted(files) for p in self._problems_by_file.get(file, ()))
+
+    def digest(self, record: PartRecord | PositionRecord) -> str:
+        """What a page takes of a record, in short, for its `made_from`: its file and its table's, its page's path, its problems."""
+        path = self.paths.part(record) if isinstance(record, PartRecord) else self.paths.position(record)
+        return hashlib.sha256(repr((record.digest, path, self.problems(record))).encode()).hexdigest()
 
     def nearest(self, record: PartRecord) -> tuple[Neighbour, ...]:
         """The parts that this part's firmware would read best, nearest first."""

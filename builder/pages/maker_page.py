@@ -47,6 +47,7 @@ def _maker_page(maker: str, records: Sequence[PartRecord], curves: Mapping[str, 
         description=f"{count} of {maker}",
         body=lambda: str(_body(maker, records, curves, paths)),
         search_text=f"maker, {count}",
+        made_from=tuple(f"{paths.part(record)} {record.digest}" for record in records),
     )
 
 

@@ -2,13 +2,13 @@
 
 from __future__ import annotations
 
-from builder.comparisons.nearest import Neighbour
 from builder.pages.context import Context
 from builder.pages.html import Html, joined, link, table, tag
 from builder.pages.ledger import standing_badge
 from builder.pages.paths import relative
 from builder.pages.side_by_side_page import side_by_side_address
 from builder.records import PartRecord
+from builder.records.part import StandingState
 from builder.units import range_text, signed_text, temperature_text
 
 # As many as are still told apart in one figure.
@@ -29,14 +29,40 @@ def nearest_section(record: PartRecord, context: Context) -> Html:
     others = tuple(context.catalog.parts[n.place] for n in nearest[:_CHOSEN])
     address = relative(side_by_side_address(record, others, context), here)
     headings = ("part", "maker", "standing", "reads at most", "at", "note")
-    rows = table(headings, [_row(record, n, context) for n in nearest], caption="The nearest parts of the catalog")
-    return joined([tag("p", lead), rows, tag("p", link("See the nearest side by side", address))])
+    rows = [_row(*shown, here) for shown in shown_neighbours(record, context)]
+    named = table(headings, rows, caption="The nearest parts of the catalog")
+    return joined([tag("p", lead), named, tag("p", link("See the nearest side by side", address))])
 
 
-def _row(record: PartRecord, neighbour: Neighbour, context: Context) -> tuple[object, ...]:
-    other = context.catalog.parts[neighbour.place]
-    name = link(other.part.part, relative(context.paths.part(other), context.paths.part(record)))
-    partly = "" if neighbour.whole_range else "over a part of the range only"
-    worst = f"{signed_text(neighbour.worst_k)} K"
-    standing = standing_badge(other.part.state())
-    return name, other.part.maker, standing, worst, temperature_text(neighbour.at_c), partly
+def shown_neighbours(
+    record: PartRecord, context: Context
+) -> list[tuple[str, str, str, StandingState | None, float, float, bool]]:
+    """Of each of the nearest parts all that the section shows: page, number, maker, standing, and its figures."""
+    return [
+        (
+            context.paths.part(other),
+            other.part.part,
+            other.part.maker,
+            other.part.state(),
+            neighbour.worst_k,
+            neighbour.at_c,
+            neighbour.whole_range,
+        )
+        for neighbour in context.nearest(record)
+        for other in (context.catalog.parts[neighbour.place],)
+    ]
+
+
+def _row(
+    path: str,
+    number: str,
+    maker: str,
+    state: StandingState | None,
+    worst_k: float,
+    at_c: float,
+    whole_range: bool,
+    here: str,
+) -> tuple[object, ...]:
+    partly = "" if whole_range else "over a part of the range only"
+    worst = f"{signed_text(worst_k)} K"
+    return link(number, relative(path, here)), maker, standing_badge(state), worst, temperature_text(at_c), partly

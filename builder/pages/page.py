@@ -23,6 +23,11 @@ class Page:
     site's search knows of the page beside its title (empty: the page is not found), with resistances in one
     word, as `10kΩ` and `10k`; `record` is the record's file below the records folder,
     for the edit link; `wide` pages hold tables that want the room beside them; `in_nav` pages stand in mkdocs.yml's nav, the others are filled into a ready shell.
+
+    A page that was made before is taken as it was, if nothing that it is made from has changed: `made_from` has a text
+    or digest of everything that the body shows or is computed from (`Context.digest` for a record), beside the code,
+    the options, the shell and the other fields here, which count anyway. What a page does not show stays out. None:
+    the page is made anew at every build.
     """
 
     path: str
@@ -34,11 +39,13 @@ class Page:
     record: str | None = None
     in_nav: bool = False
     wide: bool = True
+    made_from: tuple[str, ...] | None = None
 
 
 @dataclass(frozen=True)
 class DataFile:
-    """A file of the site beside the pages: a table, a script with data, a schema."""
+    """A file of the site beside the pages: a table, a script with data, a schema; `made_from` as of a page."""
 
     path: str
     content: Callable[[], str]
+    made_from: tuple[str, ...] | None = None

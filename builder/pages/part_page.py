@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
+from typing import Any
 
 import numpy as np
 
@@ -14,7 +15,7 @@ from builder.pages.figures import Dots, resistance_figure, tolerance_figure
 from builder.pages.fits_section import fits_section
 from builder.pages.html import Html, facts, joined, link, notice, rows_table, table, tag
 from builder.pages.ledger import ledger_table, standing_line
-from builder.pages.nearest_section import nearest_section
+from builder.pages.nearest_section import nearest_section, shown_neighbours
 from builder.pages.page import DataFile, Heading, Page
 from builder.pages.part_texts import body_text, rated_text, summary
 from builder.pages.paths import relative
@@ -53,12 +54,18 @@ def part_page(record: PartRecord, context: Context) -> Page:
         headings=tuple(Heading(anchor, text) for anchor, text in _HEADINGS),
         search_text=_search_text(part),
         record=record.source.below,
+        made_from=(
+            context.digest(record),
+            context.paths.maker(part.maker),
+            repr(shown_neighbours(record, context)),
+            repr(_uses(record, context)),
+        ),
     )
 
 
 def part_csv(record: PartRecord, context: Context) -> DataFile:
     """The part's curve in steps of 1 K."""
-    return DataFile(context.paths.part_csv(record), lambda: curve_csv(context.sample(record)))
+    return DataFile(context.paths.part_csv(record), lambda: curve_csv(context.sample(record)), (record.digest,))
 
 
 def _search_text(part: Part) -> str:
@@ -304,16 +311,26 @@ def _with_unit(value: float | None, unit: str) -> str | None:
     return None if value is None else f"{number_text(value)} {unit}"
 
 
-def _use_section(record: PartRecord, context: Context) -> Html:
-    here = context.paths.part(record)
-    rows = [
+def _uses(record: PartRecord, context: Context) -> list[Any]:
+    """What the page takes of the positions that name the part."""
+    return [
         (
-            link(place.position.position, relative(context.paths.position(place), here)),
+            context.paths.position(place),
+            place.position.position,
             place.position.board,
             place.position.purpose,
+            place.position.range_c,
             role,
         )
         for place, role in context.positions_of(record)
+    ]
+
+
+def _use_section(record: PartRecord, context: Context) -> Html:
+    here = context.paths.part(record)
+    rows = [
+        (link(name, relative(path, here)), board, purpose, role)
+        for path, name, board, purpose, _, role in _uses(record, context)
     ]
     if not rows:
         return tag("p", "No position of the catalog names it.")

@@ -45,11 +45,12 @@ class Source:
 
 @dataclass(frozen=True, eq=False)
 class PartRecord:
-    """A part, the numbers of its table where it has one, and where it was read."""
+    """A part, the numbers of its table where it has one, where it was read, and a digest of all that was read for it."""
 
     part: Part
     source: Source
     table: TableData | None = None
+    digest: str = ""
 
     @property
     def name(self) -> str:
@@ -59,10 +60,11 @@ class PartRecord:
 
 @dataclass(frozen=True, eq=False)
 class PositionRecord:
-    """A position and where it was read."""
+    """A position, where it was read, and a digest of that."""
 
     position: Position
     source: Source
+    digest: str = ""
 
 
 @dataclass(frozen=True, eq=False)
@@ -142,6 +144,13 @@ class _Reading:
     problems: list[Problem] = field(default_factory=list)
     # What records that have errors may go by: a position that names one is not told that there is no such part.
     faulty: set[str] = field(default_factory=set)
+    # Every file that was looked at, with a digest of what stood there.
+    seen: dict[str, str] = field(default_factory=dict)
+
+    @property
+    def digest(self) -> str:
+        """Of every file that was looked at."""
+        return hashlib.sha256(repr(sorted(self.seen.items())).encode()).hexdigest()
 
     def add(self, other: _Reading) -> None:
         """Take over what another reading of the same folder collected."""
@@ -231,6 +240,7 @@ def _text(reading: _Reading, path: Path) -> str | None:
         message = f"the file is larger than {LARGEST_FILE_BYTES / 1e6:.0f} MB. Move it out of the records, if it is none, or give fewer rows."
         reading.report_file(path, "file-too-large", message)
         return None
+    reading.seen[path.as_posix()] = hashlib.sha256(data).hexdigest()
     try:
         return data.decode("utf-8-sig")
     except UnicodeDecodeError as error:
@@ -281,7 +291,7 @@ def _added(reading: _Reading, path: Path, document: yaml_text.YamlText) -> bool:
     if isinstance(record, Part):
         return _part_added(reading, path.parent, source, record)
     assert isinstance(record, Position)
-    reading.positions.append(PositionRecord(record, source))
+    reading.positions.append(PositionRecord(record, source, reading.digest))
     return True
 
 
@@ -310,7 +320,7 @@ def _part_added(reading: _Reading, folder: Path, source: Source, part: Part) -> 
         if table is None:
             return False
     falls = table is None or table.falls
-    (reading.parts if falls else reading.curveless).append(PartRecord(part, source, table))
+    (reading.parts if falls else reading.curveless).append(PartRecord(part, source, table, reading.digest))
     return falls
 
 
