@@ -12,6 +12,7 @@ from typing import Any
 
 from builder.comparisons.nearest import NearestParts, Neighbour
 from builder.crosschecks import CheckedCatalog
+from builder.decisions import Swap, swap
 from builder.pages.paths import Paths
 from builder.part_curve import PartCurve, Sample, whole_steps_c
 from builder.problems import Problem
@@ -90,6 +91,21 @@ class Context:
     def positions_of(self, record: PartRecord) -> list[tuple[PositionRecord, str]]:
         """Where a part is fitted or an alternate, and which of the two."""
         return self._positions_by_part.get(record.source.file, [])
+
+    def alternates(self, record: PositionRecord) -> list[PartRecord]:
+        """The parts that are alternates at a position."""
+        return [self.catalog.part(alternate.part) for alternate in record.position.alternates]
+
+    def swap(self, record: PositionRecord, alternate: PartRecord) -> Swap:
+        """What fitting an alternate at a position does; computed once."""
+        key = record.source.file, alternate.source.file
+        if key not in self._swaps:
+            self._swaps[key] = swap(record, alternate, self.catalog)
+        return self._swaps[key]
+
+    @cached_property
+    def _swaps(self) -> dict[tuple[str, str], Swap]:
+        return {}
 
     @cached_property
     def _problems_by_file(self) -> Mapping[str, tuple[Problem, ...]]:

@@ -38,6 +38,14 @@ class Paths:
         """`positions/<position>.html`."""
         return self._positions[record.source.file]
 
+    def swap(self, record: PositionRecord, alternate: PartRecord) -> str:
+        """`positions/<position>/<maker>/<number>.html`: the review of an alternate there."""
+        return f"{self.position(record).removesuffix('.html')}/{self.part(alternate).removeprefix('parts/')}"
+
+    def swap_csv(self, record: PositionRecord, alternate: PartRecord) -> str:
+        """What the instrument reads with the alternate, beside its review."""
+        return self.swap(record, alternate).removesuffix(".html") + ".csv"
+
     def maker(self, maker: str) -> str:
         """`parts/<maker>/index.html`."""
         return f"parts/{self._makers[maker]}/index.html"

@@ -1,4 +1,4 @@
-"""Positions: the list of them, and a page for each with what its record says."""
+"""The page of a position, with what its record says."""
 
 from __future__ import annotations
 
@@ -34,41 +34,6 @@ CAUTION = (
     "the whole circuit is assessed for it, an open or shorted sensor must lead to the safe state, and local codes and "
     "licensed practice decide."
 )
-
-
-def positions_page(context: Context) -> Page:
-    """The list of positions."""
-    return Page(
-        path="positions/index.html",
-        title="Positions",
-        description="Where thermistors are fitted, with range, limit and the parts that may stand there.",
-        body=lambda: str(_list_body(context)),
-        search_text="positions boards designators fitted alternates",
-        in_nav=True,
-    )
-
-
-def _list_body(context: Context) -> Html:
-    rows = [
-        (
-            link(place.position.position, relative(context.paths.position(place), "positions/index.html")),
-            place.position.board,
-            place.position.purpose,
-            range_text(place.position.range_c),
-            f"±{number_text(place.position.limit_k)} K",
-            _part_link(place.position.fitted, "positions/index.html", context),
-            len(place.position.alternates) or "none",
-        )
-        for place in context.catalog.positions
-    ]
-    headings = ("position", "board", "purpose", "range", "limit", "fitted", "alternates")
-    shown = (
-        table(headings, rows, caption="Every position of the catalog")
-        if rows
-        else tag("p", "The catalog has none yet.")
-    )
-    lead = "A position is one place on one board where a thermistor is fitted."
-    return joined([tag("h1", "Positions"), tag("p", lead), shown])
 
 
 def position_page(record: PositionRecord, context: Context) -> Page:

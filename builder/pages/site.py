@@ -13,9 +13,11 @@ from builder.pages.maker_page import maker_pages
 from builder.pages.page import DataFile, Page
 from builder.pages.part_page import part_csv, part_page
 from builder.pages.parts_page import parts_data, parts_page
-from builder.pages.position_page import position_page, positions_page
+from builder.pages.position_page import position_page
+from builder.pages.positions_page import positions_page
 from builder.pages.record_format_page import record_format_page, schema_files
 from builder.pages.side_by_side_page import curve_file, side_by_side_page
+from builder.pages.swap_page import swap_csv, swap_page
 
 
 def site(checked: CheckedCatalog, *, about: str = "", figures: bool = True) -> Iterator[Page | DataFile]:
@@ -41,3 +43,6 @@ def site(checked: CheckedCatalog, *, about: str = "", figures: bool = True) -> I
         yield curve_file(record, context)
     for place in context.catalog.positions:
         yield position_page(place, context)
+        for alternate in context.alternates(place):
+            yield swap_page(place, alternate, context)
+            yield swap_csv(place, alternate, context)

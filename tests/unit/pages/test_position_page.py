@@ -6,9 +6,9 @@ from pathlib import Path
 from typing import Any
 
 import pytest
-from small_site import LEAST_POSITION, fact, only_position, read, rows, section, text
+from small_site import LEAST_POSITION, fact, only_position, read, rows, section
 
-from builder.pages.position_page import CAUTION, position_page, positions_page
+from builder.pages.position_page import CAUTION, position_page
 
 TRIPS = [
     {"name": "alarm", "at_c": -15, "when": "rising", "within_k": 1.5},
@@ -113,20 +113,6 @@ def test_the_fitted_part_shows_its_own_standing_and_an_alternate_the_one_it_has_
         ["2026-01-01", "withdrawn", "us", "here"],
         ["2026-01-01", "proposed", "us", "here"],
     ]
-
-
-def test_the_list_links_every_position_and_its_fitted_part(tmp_path: Path) -> None:
-    places = ({"position": "a/RT1", "alternates": [{"part": "PX-1"}]}, {"position": "b/RT1"})
-    body = positions_page(read(tmp_path, positions=places)).body()
-    assert rows(body, "Every position") == [
-        ["a/RT1", "Board", "air", "0 to 60 °C", "±1 K", "PX-1", "1"],
-        ["b/RT1", "Board", "air", "0 to 60 °C", "±1 K", "PX-1", "none"],
-    ]
-    assert 'href="a-rt1.html"' in body and 'href="../parts/pellworm/px-1.html"' in body
-
-
-def test_a_catalog_without_positions_says_so(tmp_path: Path) -> None:
-    assert "The catalog has none yet." in text(positions_page(read(tmp_path)).body())
 
 
 def test_the_search_knows_a_position_by_its_board_and_its_parts(tmp_path: Path) -> None:
