@@ -70,26 +70,21 @@ def _board(board: str, anchor: str, places: Sequence[PositionRecord], context: C
     rows = [
         (
             link(place.position.position, relative(context.paths.position(place), HERE)),
-            place.position.purpose,
-            joined(
-                [
-                    _whole(f"±{number_text(place.position.limit_k)} K"),
-                    " ",
-                    _whole(f"at {range_text(place.position.range_c)}"),
-                ]
-            ),
             _part_link(context.catalog.part(place.position.fitted), context),
             *_verdicts(place, columns, context),
+            _limit(place),
+            place.position.purpose,
         )
         for place in places
     ]
-    headings = ("position", "purpose", "limit", "fitted", *(_part_link(part, context) for part in columns))
+    headings = ("position", "fitted", *(_part_link(part, context) for part in columns), "limit", "purpose")
     counted = f"{count_text(len(places), 'position')}, {count_text(len(columns), 'alternate')}"
     return joined([tag("h2", board, id=anchor), table(headings, rows, caption=f"{board}: {counted}")])
 
 
-def _whole(text: str) -> Html:
-    return tag("span", text, class_="bd-whole")
+def _limit(place: PositionRecord) -> Html:
+    texts = f"±{number_text(place.position.limit_k)} K", f"at {range_text(place.position.range_c)}"
+    return joined((tag("span", text, class_="bd-whole") for text in texts), " ")
 
 
 def _verdicts(place: PositionRecord, columns: Sequence[PartRecord], context: Context) -> list[Html]:

@@ -22,10 +22,10 @@ def test_each_board_shows_its_positions_by_its_alternates_with_the_verdict(tmp_p
     verdicts = [context.swap(context.catalog.positions[0], part).verdict for part in context.catalog.parts[1:]]
     assert verdicts == ["undecided", "does not fit"]
     assert rows(body, "A: 2 positions, 2 alternates") == [
-        ["a/RT1", "air", "±1 K at 0 to 60 °C", "PX-1", *verdicts],
-        ["a/RT2", "air", "±1 K at 0 to 60 °C", "PX-1", "–", "–"],
+        ["a/RT1", "PX-1", *verdicts, "±1 K at 0 to 60 °C", "air"],
+        ["a/RT2", "PX-1", "–", "–", "±1 K at 0 to 60 °C", "air"],
     ]
-    assert rows(body, "B: 1 position, 0 alternates") == [["b/RT1", "air", "±1 K at 0 to 60 °C", "PX-1"]]
+    assert rows(body, "B: 1 position, 0 alternates") == [["b/RT1", "PX-1", "±1 K at 0 to 60 °C", "air"]]
 
 
 def test_names_and_verdicts_lead_to_their_pages(tmp_path: Path) -> None:
