@@ -1,4 +1,4 @@
-"""Static figures of the part pages: SVG with the look of matplotlib, filled in as text.
+"""Static figures: SVG with the look of matplotlib, filled in as text.
 
 Every figure is a `<figure class="bd-figure">` to be put into a page as it stands. It carries no ids, takes its
 colours from the page and says its title and description to a screen reader. Texts are plain; they are
@@ -12,7 +12,7 @@ from html import escape
 
 import numpy as np
 
-from builder.pages.figures.marks import Band, BoolArray, Dots, Limit, Line, Mark, Plot
+from builder.pages.figures.marks import Band, BoolArray, Dots, Layer, Limit, Line, Mark, Plot
 from builder.pages.figures.scales import (
     HEIGHT,
     LEFT,
@@ -25,6 +25,7 @@ from builder.pages.figures.scales import (
     kelvin_scale,
     resistance_scale,
     temperature_scale,
+    width_scale,
 )
 
 __all__ = [
@@ -36,6 +37,7 @@ __all__ = [
     "reads_figure",
     "residual_figure",
     "resistance_figure",
+    "stack_figure",
     "tolerance_figure",
 ]
 
@@ -108,6 +110,18 @@ def reads_figure(
     return _figure(title, description, scale, marks, dashed_name)
 
 
+def stack_figure(
+    title: str, description: str, t_c: FloatArray, widths_k: Mapping[str, FloatArray], *, label: str
+) -> str:
+    """Up to six widths, by name, stacked over temperature from the first one up."""
+    tops_k = np.cumsum(list(widths_k.values()), axis=0)
+    layers = [
+        Layer(name, t_c, top_k - width_k, top_k, series)
+        for series, ((name, width_k), top_k) in enumerate(zip(widths_k.items(), tops_k, strict=True), start=1)
+    ]
+    return _figure(title, description, width_scale(tops_k[-1], label), layers, "")
+
+
 def _figure(title: str, description: str, y: Scale, marks: Sequence[Mark], dashed_name: str) -> str:
     over_t = [mark for mark in marks if not isinstance(mark, Limit)]
     plot = Plot(temperature_scale(np.concatenate([mark.t_c for mark in over_t])), y)
@@ -139,14 +153,14 @@ def _unclipped(drawn: Sequence[tuple[Mark, str]]) -> str:
     return f'<g transform="translate({LEFT} {TOP}) scale(.1)">{inner}</g>' if inner else ""
 
 
-def _lines(marks: Sequence[Mark]) -> list[Line]:
-    return [mark for mark in marks if isinstance(mark, Line)]
+def _numbered(marks: Sequence[Mark]) -> list[Line | Layer]:
+    return [mark for mark in marks if isinstance(mark, Line | Layer)]
 
 
 def _numbers(marks: Sequence[Mark], plot: Plot) -> str:
-    """The number of each of several lines beside its right end, kept apart, for eyes that see no colour."""
+    """The number of each of several lines or layers beside its right end, kept apart, for eyes that see no colour."""
     ends = []
-    for line in _lines(marks):
+    for line in _numbered(marks):
         down = plot.points(line.t_c, line.values)[:, 1] / 10
         ends += [(y, line.series) for y in down[np.isfinite(down)][-1:].clip(0, PLOT_HEIGHT).tolist()]
     if len(ends) < 2:
@@ -161,7 +175,7 @@ def _numbers(marks: Sequence[Mark], plot: Plot) -> str:
 
 
 def _key(drawn: Sequence[tuple[Mark, str]], dashed_name: str) -> str:
-    numbered = len(_lines([mark for mark, _ in drawn])) > 1
+    numbered = len(_numbered([mark for mark, _ in drawn])) > 1
     entries = [_entry(mark.swatch(), _key_text(mark, numbered)) for mark, _ in drawn]
     if any("bdf-far" in svg for _, svg in drawn):
         entries.append(_entry('<path class="bdf-line bdf-far" d="M0 60h300"/>', dashed_name))
@@ -169,7 +183,7 @@ def _key(drawn: Sequence[tuple[Mark, str]], dashed_name: str) -> str:
 
 
 def _key_text(mark: Mark, numbered: bool) -> str:
-    return f"{mark.series} {mark.name}" if numbered and isinstance(mark, Line) else mark.name
+    return f"{mark.series} {mark.name}" if numbered and isinstance(mark, Line | Layer) else mark.name
 
 
 def _entry(swatch: str, text: str) -> str:

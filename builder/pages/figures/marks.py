@@ -17,6 +17,9 @@ BoolArray = NDArray[np.bool_]
 MOST_POINTS = 200
 # Far enough outside for a line to leave the plot at its true slope, near enough for a browser's arithmetic.
 FARTHEST_TENTHS = 100_000
+# Upright strokes across a layer, this far apart; the style sheet breaks them into dashes and dots. Layers of other
+# series are plain.
+HATCH_TENTHS = {2: 50, 3: 60, 4: 80, 6: 30}
 
 
 @dataclass(frozen=True)
@@ -97,6 +100,42 @@ class Band:
 
 
 @dataclass(frozen=True, eq=False)
+class Layer:
+    """One layer of a stack over temperature; `series` 1 to 6 chooses colour and hatching."""
+
+    name: str
+    t_c: FloatArray
+    low: FloatArray
+    high: FloatArray
+    series: int
+
+    @property
+    def extent(self) -> FloatArray:
+        """The values that the axis must hold."""
+        return self.high
+
+    @property
+    def values(self) -> FloatArray:
+        """The layer's middle, where its number stands."""
+        middle: FloatArray = (self.low + self.high) / 2
+        return middle
+
+    def svg(self, plot: Plot) -> str:
+        """What is drawn over the frame; empty where there is no number."""
+        runs = [_thinned(run) for run in _runs(plot.points(self.t_c, self.low, self.high))]
+        fill = "".join(_moves(np.concatenate([run[:, :2], run[::-1, ::2]])) + "z" for run in runs)
+        hatching = "".join(_uprights(run, HATCH_TENTHS[self.series]) for run in runs if self.series in HATCH_TENTHS)
+        return _path(f"bdf-layer bdf-l{self.series}", fill) + _path(f"bdf-hatch bdf-h{self.series}", hatching)
+
+    def swatch(self) -> str:
+        """The sample of it in the key."""
+        area = _path(f"bdf-layer bdf-l{self.series}", "M0 0h300v120h-300z")
+        box = np.array([[0.0, 120.0, 0.0], [300.0, 120.0, 0.0]])
+        hatching = _uprights(box, HATCH_TENTHS[self.series]) if self.series in HATCH_TENTHS else ""
+        return area + _path(f"bdf-hatch bdf-h{self.series}", hatching)
+
+
+@dataclass(frozen=True, eq=False)
 class Dots:
     """Single points, as discs or as rings; points outside the plot are left out."""
 
@@ -149,7 +188,7 @@ class Limit:
         return _path("bdf-limit", "M0 60h300")
 
 
-Mark = Line | Band | Dots | Limit
+Mark = Line | Band | Layer | Dots | Limit
 
 
 def _near_and_far(points: FloatArray, dashed: BoolArray | None) -> tuple[FloatArray, FloatArray]:
@@ -193,6 +232,14 @@ def _moves(run: FloatArray) -> str:
     # numbers as well as a space does.
     text = "l" + str(steps)[1:-1].replace(", ", " ").replace(" -", "-") if steps else "h0"
     return f"M{places[0, 0]} {places[0, 1]}{text}"
+
+
+def _uprights(run: FloatArray, distance: int) -> str:
+    """Strokes from the low to the high edge of a run of points, at whole multiples of a distance."""
+    x = np.arange(np.ceil(run[0, 0] / distance), run[-1, 0] / distance) * distance
+    low, high = (np.interp(x, run[:, 0], edge) for edge in run.T[1:])
+    places = np.rint(np.column_stack([x, low, high])).astype(int).tolist()
+    return "".join(f"M{x} {y}V{end}" for x, y, end in places)
 
 
 def _path(style: str, d: str) -> str:

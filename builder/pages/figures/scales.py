@@ -10,7 +10,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 FloatArray = NDArray[np.float64]
-Quantity = Literal["temperature", "resistance", "kelvin"]
+Quantity = Literal["temperature", "resistance", "kelvin", "width"]
 
 # The picture in its own pixels; the margins hold tick labels of 19 px, the size used on a phone.
 WIDTH, HEIGHT = 560, 370
@@ -66,6 +66,13 @@ def kelvin_scale(values_k: FloatArray, label: str) -> Scale:
     low, high = _extremes(values_k, empty=(-1.0, 1.0))
     limit_k = _round_up(max(-low, high, 0.01), (1, 2, 5))
     return Scale("kelvin", -limit_k, limit_k, _round_up(limit_k / 5.5, (1, 2, 5)), label)
+
+
+def width_scale(widths_k: FloatArray, label: str) -> Scale:
+    """Scale in K from zero to a round number."""
+    _, high = _extremes(widths_k, empty=(0.0, 1.0))
+    top_k = _round_up(max(high, 0.01), (1, 1.5, 2, 3, 4, 5, 6, 8))
+    return Scale("width", 0.0, top_k, _round_up(top_k / 5.5, (1, 2, 5)), label)
 
 
 def _extremes(values: FloatArray, empty: tuple[float, float]) -> tuple[float, float]:
