@@ -10,6 +10,7 @@ from dataclasses import dataclass
 from functools import cached_property
 from typing import Any
 
+from builder.circuit import Budget, Thermistor, budget, firmware_part
 from builder.comparisons.nearest import NearestParts, Neighbour
 from builder.crosschecks import CheckedCatalog
 from builder.decisions import Swap, swap
@@ -63,6 +64,23 @@ class Context:
 
     @cached_property
     def _sampled(self) -> list[Any]:
+        return [None, None]
+
+    def budget(self, record: PositionRecord) -> Budget:
+        """What is fitted at a position, every 1 K over its range; kept until another position is asked for."""
+        if self._budgeted[0] is not record:
+            self._budgeted[:] = [record, self._budget(record)]
+        made: Budget = self._budgeted[1]
+        return made
+
+    def _budget(self, record: PositionRecord) -> Budget:
+        position = record.position
+        fitted, made_for = (self.catalog.part(name) for name in (position.fitted, firmware_part(position)))
+        thermistor = Thermistor(self.curve(fitted), fitted.part.limits.dissipation_mw_per_k)
+        return budget(position, thermistor, self.curve(made_for), SAMPLE_STEP_K)
+
+    @cached_property
+    def _budgeted(self) -> list[Any]:
         return [None, None]
 
     def problems(self, record: PartRecord | PositionRecord) -> tuple[Problem, ...]:

@@ -38,6 +38,10 @@ class Paths:
         """`positions/<position>.html`."""
         return self._positions[record.source.file]
 
+    def position_csv(self, record: PositionRecord) -> str:
+        """The budget's CSV, beside the position's page."""
+        return self.position(record).removesuffix(".html") + ".csv"
+
     def swap(self, record: PositionRecord, alternate: PartRecord) -> str:
         """`positions/<position>/<maker>/<number>.html`: the review of an alternate there."""
         return f"{self.position(record).removesuffix('.html')}/{self.part(alternate).removeprefix('parts/')}"

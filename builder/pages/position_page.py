@@ -4,13 +4,16 @@ from __future__ import annotations
 
 from typing import Any
 
+from builder.pages.budget_section import budget_section, codes_section, position_sources, verdict_line
 from builder.pages.context import Context
 from builder.pages.doubts import problem_notice
+from builder.pages.figures.schematic import schematic_figure
 from builder.pages.html import Html, facts, joined, link, notice, table, tag
 from builder.pages.ledger import ledger_table, standing_badge
 from builder.pages.page import Heading, Page
 from builder.pages.part_texts import rated_text
 from builder.pages.paths import relative
+from builder.pages.trips_section import trips_section
 from builder.records import Position, PositionRecord
 from builder.records.position import (
     BValueFirmware,
@@ -25,7 +28,9 @@ from builder.units import number_text, range_text, resistance_text, temperature_
 _HEADINGS = (
     ("circuit", "Circuit"),
     ("converter", "Converter and firmware"),
+    ("budget", "Error budget"),
     ("trips", "Trips"),
+    ("codes", "Codes and resolution"),
     ("parts", "Fitted part and alternates"),
     ("requirements", "Requirements"),
 )
@@ -47,15 +52,18 @@ def position_page(record: PositionRecord, context: Context) -> Page:
         headings=tuple(Heading(anchor, text) for anchor, text in _HEADINGS),
         search_text=f"{position.board} {position.purpose} {' '.join(position.named_parts().values())}",
         record=record.source.below,
+        made_from=position_sources(record, context),
     )
 
 
 def _body(record: PositionRecord, context: Context) -> Html:
     position = record.position
     bodies = (
-        _circuit(position),
+        _circuit_section(position, context),
         joined([_converter(position), _firmware(position, record, context)]),
-        _trips(position),
+        budget_section(record, context),
+        trips_section(context.budget(record), figures=context.figures),
+        codes_section(context.budget(record)),
         _parts(record, context),
         _requirements(position),
     )
@@ -78,12 +86,27 @@ def _head(record: PositionRecord, context: Context) -> Html:
     notes = notice("note", position.notes) if position.notes else ""
     caution = notice("caution", CAUTION) if position.trips else ""
     return joined(
-        [tag("h1", position.position), tag("p", position.purpose, class_="bd-lead"), known, *doubts, notes, caution]
+        [
+            tag("h1", position.position),
+            tag("p", position.purpose, class_="bd-lead"),
+            verdict_line(context.budget(record)),
+            caution,
+            known,
+            *doubts,
+            notes,
+        ]
     )
 
 
 def _part_link(name: str, here: str, context: Context) -> Html:
     return link(name, relative(context.paths.part(context.catalog.part(name)), here))
+
+
+def _circuit_section(position: Position, context: Context) -> Html:
+    if not context.figures:
+        return _circuit(position)
+    drawn = Html(schematic_figure(position, context.catalog.part(position.fitted).part))
+    return tag("div", drawn, _circuit(position), class_="bd-beside")
 
 
 def _circuit(position: Position) -> Html:
@@ -152,15 +175,6 @@ def _method(firmware: Firmware, position: Position, record: PositionRecord, cont
     if isinstance(firmware, TableFirmware):
         return [f"a table every {number_text(firmware.step_k)} K made from ", part, ", straight lines between its rows"]
     return ["the inverse of the curve of ", part]
-
-
-def _trips(position: Position) -> Html:
-    if not position.trips:
-        return tag("p", "The firmware acts on no threshold here.")
-    rows = [
-        (trip.name, temperature_text(trip.at_c), trip.when, _stated(trip.within_k, "K", "±")) for trip in position.trips
-    ]
-    return table(("trip", "acts at", "when", "may act within"), rows, caption="Thresholds that the firmware acts on")
 
 
 def _parts(record: PositionRecord, context: Context) -> Html:

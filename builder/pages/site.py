@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from builder.crosschecks import RULES, CheckedCatalog
+from builder.pages.budget_section import budget_csv
 from builder.pages.checks_page import checks_page, rule_page
 from builder.pages.context import Context
 from builder.pages.families_page import families_page
@@ -43,6 +44,7 @@ def site(checked: CheckedCatalog, *, about: str = "", figures: bool = True) -> I
         yield curve_file(record, context)
     for place in context.catalog.positions:
         yield position_page(place, context)
+        yield budget_csv(place, context)
         for alternate in context.alternates(place):
             yield swap_page(place, alternate, context)
             yield swap_csv(place, alternate, context)

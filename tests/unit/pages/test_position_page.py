@@ -68,9 +68,9 @@ def test_a_record_with_every_field_shows_each(tmp_path: Path) -> None:
         "Time constant at most": "10 s",
     }
     assert {name: fact(body, name) for name in shown} == shown
-    assert rows(body, "Thresholds") == [
+    assert [row[:4] for row in rows(body, "Thresholds")] == [
         ["alarm", "−15 °C", "rising", "±1.5 K"],
-        ["stop", "60 °C", "rising", "not stated"],
+        ["stop", "60 °C", "rising", "not stated: limit, ±1 K"],
     ]
     assert "keep clear of the coil" in body
 

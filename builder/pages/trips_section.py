@@ -1,0 +1,35 @@
+"""Where a position's trips act."""
+
+from __future__ import annotations
+
+from builder.circuit import Budget, TripBudget
+from builder.pages.figures.trips import WORDS, trip_rows, trips_line
+from builder.pages.html import Html, joined, table, tag
+from builder.records.position import Trip
+from builder.units import number_text, signed_text, temperature_text
+
+
+def trips_section(budget: Budget, *, figures: bool) -> Html:
+    """A line with every trip, and the table of its figures."""
+    position = budget.position
+    if not position.trips:
+        return tag("p", "The firmware acts on no threshold here.")
+    lead = "True temperatures between which a trip acts, on any board within its limits, as the temperature passes it."
+    drawn = Html(trips_line(trip_rows({"": budget}), position.range_c)) if figures else ""
+    rows = [_row(trip, found, position.limit_k) for trip, found in zip(position.trips, budget.trips, strict=True)]
+    headings = ("trip", "acts at", "when", "may act within", "acts from", "to", "off by", "near enough")
+    return joined([tag("p", lead), drawn, table(headings, rows, caption="Thresholds that the firmware acts on")])
+
+
+def _row(trip: Trip, found: TripBudget, limit_k: float) -> tuple[str, ...]:
+    ends_c = (found.acts_from_c, found.acts_to_c)
+    within = f"±{number_text(trip.within_k)} K" if trip.within_k else f"not stated: limit, ±{number_text(limit_k)} K"
+    return (
+        trip.name,
+        temperature_text(trip.at_c),
+        trip.when,
+        within,
+        *(temperature_text(round(end_c, 2)) for end_c in ends_c),
+        " / ".join(f"{signed_text(end_c - trip.at_c)} K" for end_c in ends_c),
+        WORDS[found.ok],
+    )
