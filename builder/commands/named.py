@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import datetime
 import sys
 from pathlib import Path
 from typing import NoReturn
@@ -38,7 +37,7 @@ def named_parts(catalog: Catalog, names: tuple[str, ...]) -> list[PartRecord]:
     files = {record.source.file for record in found}
     own = [problem for problem in faulty if problem.file in files]
     for record in found:
-        own += errors(findings(Subject(record, part_curve(record), datetime.date.today())))
+        own += errors(findings(Subject(record, part_curve(record))))
     for problem in own:
         click.echo(str(problem), err=True)
     if own:

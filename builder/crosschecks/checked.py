@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import datetime
+from collections import defaultdict
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 from itertools import pairwise
@@ -10,6 +11,7 @@ from pathlib import Path
 
 from builder.crosschecks import coefficients, statements, table_findings
 from builder.crosschecks.acceptance import not_accepted
+from builder.crosschecks.ledger_findings import approvals_of_errors, ledger_findings
 from builder.crosschecks.subject import Check, Subject
 from builder.part_curve import PartCurve, part_curve
 from builder.problems import Problem, in_order
@@ -38,21 +40,37 @@ def checked_catalog(root: Path, *, today: datetime.date) -> CheckedCatalog:
     """The records of a folder with every problem: of reading them, and of every cross-check."""
     catalog = read_catalog(root)
     curves = {record.source.file: part_curve(record) for record in catalog.parts}
-    subjects = [Subject(r, curves.get(r.source.file), today) for r in (*catalog.parts, *catalog.curveless)]
-    found = [problem for problems in shared_out(_findings_of_share, subjects) for problem in problems]
+    subjects = [Subject(r, curves.get(r.source.file)) for r in (*catalog.parts, *catalog.curveless)]
+    of_ledger = _by_file(ledger_findings(catalog, today))
+    found: list[Problem] = []
+    for subject, of_figures in zip(subjects, shared_out(_findings_of_share, subjects), strict=True):
+        found += not_accepted(subject.record, [*of_figures, *of_ledger.pop(subject.record.source.file, ())])
+    found += [problem for problems in of_ledger.values() for problem in problems]
     found += [problem for loose in catalog.loose_tables for problem in table_findings.loose_table_findings(loose)]
     examined = [*(r.table for r in catalog.curveless), *(loose.table for loose in catalog.loose_tables)]
-    left = _unexplained(catalog.problems, [table for table in examined if table is not None], found)
-    return CheckedCatalog(replace(catalog, problems=in_order([*left, *found])), curves, today)
+    found += _unexplained(catalog.problems, [table for table in examined if table is not None], found)
+    found += approvals_of_errors(catalog, found)
+    return CheckedCatalog(replace(catalog, problems=in_order(found)), curves, today)
 
 
 def findings(subject: Subject) -> list[Problem]:
-    """What the cross-checks find in one part and its record does not accept."""
-    return list(not_accepted(subject.record, [problem for check in _CHECKS for problem in check(subject)]))
+    """What the cross-checks find in the figures of one part and its record does not accept."""
+    return list(not_accepted(subject.record, _findings(subject)))
+
+
+def _findings(subject: Subject) -> list[Problem]:
+    return [problem for check in _CHECKS for problem in check(subject)]
 
 
 def _findings_of_share(subjects: Sequence[Subject]) -> list[list[Problem]]:
-    return [findings(subject) for subject in subjects]
+    return [_findings(subject) for subject in subjects]
+
+
+def _by_file(problems: Iterable[Problem]) -> dict[str, list[Problem]]:
+    by_file: dict[str, list[Problem]] = defaultdict(list)
+    for problem in problems:
+        by_file[problem.file].append(problem)
+    return by_file
 
 
 def _unexplained(

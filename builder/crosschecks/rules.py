@@ -134,9 +134,113 @@ RULES = (
     ),
     Rule(
         "review-overdue",
-        "The last entry of the part's standing names a day of review that has passed.",
+        "The entry that holds for a part, or for an alternate at its position, names a day of review that has passed.",
         "review_due: 2026-02-10, and today is later.",
-        "Review the part, then append an entry with the outcome and the next day of review.",
+        "Review the part or the alternate, then append an entry with the outcome and the next day of review.",
+    ),
+    Rule(
+        "review-before-decision",
+        "A day of review that lies before the decision.",
+        "on: 2026-02-10 with review_due: 2026-01-10, where 2027-01-10 was meant.",
+        "Correct the day of review.",
+        acceptable=False,
+    ),
+    Rule(
+        "ledger-order",
+        "An entry with a day before that of the entry above it. Entries are appended as decisions are made, and the last one holds.",
+        "on: 2025-02-10 below an entry of 2026-01-12.",
+        "Correct the date, or move the entry to its place.",
+        acceptable=False,
+    ),
+    Rule(
+        "future-entry",
+        "An entry dated after today. It holds already, since the last entry does whatever its day.",
+        "on: 2062-02-10, where 2026-02-10 was meant.",
+        "Correct the date; append what is decided for later on its day.",
+        acceptable=False,
+    ),
+    Rule(
+        "approval-document",
+        "An approved or restricted entry that names no document with its revision, or any entry that names a revision which the "
+        "part's documents do not have. An approval means the part as one revision describes it. Earlier entries are looked "
+        "at as the last one is.",
+        "state: approved without document, or document: {title: data sheet, revision: D} where documents end with revision C.",
+        "Name the revision that the decision rests on. Revisions that entries name stay in documents, below them the newer ones.",
+        acceptable=False,
+    ),
+    Rule(
+        "revision-replaced",
+        "The entry that holds for a part, or for an alternate at its position, rests on a revision that a newer one in documents has "
+        "replaced. The newest is the one with the latest date; where a revision has no date, the last of that title.",
+        "Approved on revision B of the data sheet; documents have revision C too.",
+        "Compare both revisions, then append an entry that rests on the newer one, or withdraws.",
+    ),
+    Rule(
+        "approval-of-errors",
+        "A part is approved or restricted, and its record has errors, also where they keep the record from being read. The errors "
+        "themselves stop a build; this warning beside them says that people rely on the part meanwhile. Errors in the ledger do "
+        "not count.",
+        "b_k: 34350 in the record of an approved part.",
+        "Correct the errors. Where a figure changes that someone may have relied on, append an entry that says who looked at it.",
+        acceptable=False,
+    ),
+    Rule(
+        "withdrawn-why",
+        "A withdrawal whose reason is a single word or a dash.",
+        'because: "-"',
+        "Write a sentence. Whoever proposes the part again wants to know.",
+        acceptable=False,
+    ),
+    Rule(
+        "approved-though-withdrawn",
+        "An alternate stands approved or restricted at a position, and its part is withdrawn. Only the entries that hold count: "
+        "what was settled by later entries stays as it is.",
+        "NV2-3540 withdrawn on 2026-06-08, and still an approved alternate at charger-dc/RT1.",
+        "Append an entry to the alternate's standing that withdraws it, or to the part's standing that approves it again.",
+        acceptable=False,
+    ),
+    Rule(
+        "not-for-here",
+        "A part is fitted, or an approved alternate, at a position that is not in its only_for: neither the position nor its board. "
+        "Upper and lower case are alike. An alternate's own only_for must name its position too, or be left out.",
+        "only_for: [charger-power/RT1] in the part's standing, and the part fitted at coolbox-main/RT1.",
+        "Fit or approve another part, or append an entry to the part's standing that names the position.",
+        acceptable=False,
+    ),
+    Rule(
+        "only-for-unknown",
+        "only_for of an entry that holds names neither a position nor a board of the catalog. Not looked at while records "
+        "cannot be read, since the position may be in one of them.",
+        "only_for: [charger-pwoer/RT1]",
+        "Correct the name.",
+        acceptable=False,
+    ),
+    Rule(
+        "withdrawn-fitted",
+        "The part that is fitted at a position is withdrawn.",
+        "fitted: NV2-3540 after NV2-3540 was withdrawn.",
+        "Fit another part. Boards in the field keep the old one; the position says what is built from now on.",
+        acceptable=False,
+    ),
+    Rule(
+        "alternate-repeated",
+        "An alternate that is the fitted part, or one that stands twice.",
+        "alternates with NV10-3435 twice, the second by its own number.",
+        "Keep one, and all entries of both in the order of their days.",
+        acceptable=False,
+    ),
+    Rule(
+        "own-number-shared",
+        "One own number in the records of two parts: nobody can tell by it which of them was bought.",
+        "own_number: HS-10473 in two records.",
+        "Give each part its own. Where one number buys either of them on purpose, accept the finding in both records.",
+    ),
+    Rule(
+        "hash-missing",
+        "A document's file beside the record has no SHA-256 in the record, so nobody would notice another file in its place.",
+        "{title: data sheet, revision: C, file: TB3A-103F38-C.pdf}",
+        "Add the sha256 that the message gives, once the file is known to be that revision.",
+        acceptable=False,
     ),
     Rule(
         "file-hash-differs",

@@ -31,15 +31,6 @@ def _document_missing(subject: Subject) -> Iterator[Problem]:
         yield subject.record.source.problem(("documents",), "document-missing", message, "warning")
 
 
-def _review_overdue(subject: Subject) -> Iterator[Problem]:
-    standing = subject.record.part.standing
-    due = standing[-1].review_due if standing else None
-    if due is not None and due < subject.today:
-        message = f"the review was due on {due.isoformat()}. Review the part and append an entry to its standing."
-        path = ("standing", len(standing) - 1, "review_due")
-        yield subject.record.source.problem(path, "review-overdue", message, "warning")
-
-
 def _outside_operating(subject: Subject) -> Iterator[Problem]:
     stated = subject.record.part.limits.operating_c
     if stated is None or subject.curve is None:
@@ -89,7 +80,6 @@ def _texts(path: Path, value: object) -> Iterator[tuple[Path, str]]:
 CHECKS: tuple[Check, ...] = (
     _tolerance_missing,
     _document_missing,
-    _review_overdue,
     _outside_operating,
     _bends_back,
     _to_be_filled_in,

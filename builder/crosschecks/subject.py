@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import datetime
 from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 
@@ -13,11 +12,10 @@ from builder.records import PartRecord
 
 @dataclass(frozen=True, eq=False)
 class Subject:
-    """A part's record, its curve (None where its table makes none), and the day of the check."""
+    """A part's record, and its curve (None where its table makes none)."""
 
     record: PartRecord
     curve: PartCurve | None
-    today: datetime.date
 
 
 Check = Callable[[Subject], Iterator[Problem]]

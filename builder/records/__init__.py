@@ -1,11 +1,21 @@
 """From YAML files to checked, frozen records, and every problem on the way."""
 
-from builder.records.catalog import Catalog, LooseTable, PartRecord, PositionRecord, Source, UnknownPart, read_catalog
+from builder.records.catalog import (
+    Catalog,
+    LooseStanding,
+    LooseTable,
+    PartRecord,
+    PositionRecord,
+    Source,
+    UnknownPart,
+    read_catalog,
+)
 from builder.records.part import Part
 from builder.records.position import Position
 
 __all__ = [
     "Catalog",
+    "LooseStanding",
     "LooseTable",
     "Part",
     "PartRecord",

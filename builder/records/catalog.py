@@ -16,7 +16,7 @@ from pydantic import ValidationError
 from builder.problems import Problem, Severity, clipped, count_text, in_order, nearest, one_line
 from builder.processes import shared_out
 from builder.records import yaml_text
-from builder.records.part import Document, Part, Rated, RTTable
+from builder.records.part import Document, Part, Rated, RTTable, Standing
 from builder.records.position import Position
 from builder.records.quantities import RecordModel
 from builder.records.table import RawTable, TableData, csv_table, table_data
@@ -45,12 +45,13 @@ class Source:
 
 @dataclass(frozen=True, eq=False)
 class PartRecord:
-    """A part, the numbers of its table where it has one, where it was read, and a digest of all that was read for it."""
+    """A part, the numbers of its table where it has one, where it was read, a digest of all that was read for it, and its folder."""
 
     part: Part
     source: Source
     table: TableData | None = None
     digest: str = ""
+    folder: Path = Path()
 
     @property
     def name(self) -> str:
@@ -76,6 +77,15 @@ class LooseTable:
     rated: Rated | None
 
 
+@dataclass(frozen=True, eq=False)
+class LooseStanding:
+    """The standing that holds for a part whose record was refused, and its place in the record's list."""
+
+    source: Source
+    standing: Standing
+    index: int
+
+
 class UnknownPart(LookupError):
     """No part, or more than one, goes by a name; the message says which names are near."""
 
@@ -85,7 +95,8 @@ class Catalog:
     """The records of one folder, parts and positions in the order of their names.
 
     `curveless` are parts whose table does not fall, so that no curve can be made: nothing finds them by name, and the
-    cross-checks say which of their rows is wrong, as they do for `loose_tables`.
+    cross-checks say which of their rows is wrong, as they do for `loose_tables`. `loose_standings` are those of parts whose
+    records were refused.
     """
 
     parts: tuple[PartRecord, ...] = ()
@@ -93,6 +104,7 @@ class Catalog:
     problems: tuple[Problem, ...] = ()
     curveless: tuple[PartRecord, ...] = ()
     loose_tables: tuple[LooseTable, ...] = ()
+    loose_standings: tuple[LooseStanding, ...] = ()
 
     def part(self, name: str) -> PartRecord:
         """The part that goes by a maker's number, `maker number`, or an own number; upper and lower case alike.
@@ -113,6 +125,11 @@ class Catalog:
             )
         advice = nearest(name, self._numbers) or " Check the number."
         raise UnknownPart(f"{shown} is not a part of the catalog.{advice}")
+
+    def known_part(self, name: str) -> PartRecord | None:
+        """The part that goes by a name as `part` finds it; None where none or several do."""
+        found = self._by_name.get(name.strip().casefold(), ())
+        return found[0] if len(found) == 1 else None
 
     @cached_property
     def _numbers(self) -> tuple[str, ...]:
@@ -140,6 +157,7 @@ class _Reading:
     parts: list[PartRecord] = field(default_factory=list)
     curveless: list[PartRecord] = field(default_factory=list)
     loose_tables: list[LooseTable] = field(default_factory=list)
+    loose_standings: list[LooseStanding] = field(default_factory=list)
     positions: list[PositionRecord] = field(default_factory=list)
     problems: list[Problem] = field(default_factory=list)
     # What records that have errors may go by: a position that names one is not told that there is no such part.
@@ -154,7 +172,7 @@ class _Reading:
 
     def add(self, other: _Reading) -> None:
         """Take over what another reading of the same folder collected."""
-        for name in ("parts", "curveless", "loose_tables", "positions", "problems"):
+        for name in ("parts", "curveless", "loose_tables", "loose_standings", "positions", "problems"):
             getattr(self, name).extend(getattr(other, name))
         self.faulty |= other.faulty
 
@@ -194,7 +212,14 @@ def read_catalog(root: Path) -> Catalog:
     positions = tuple(sorted(reading.positions, key=lambda r: (r.position.position.casefold(), r.source.file)))
     catalog = Catalog(parts, positions)
     problems = [*reading.problems, *_duplicates(catalog), *_unknown_parts(catalog, reading.faulty)]
-    return Catalog(parts, positions, in_order(problems), tuple(reading.curveless), tuple(reading.loose_tables))
+    return Catalog(
+        parts,
+        positions,
+        in_order(problems),
+        tuple(reading.curveless),
+        tuple(reading.loose_tables),
+        tuple(reading.loose_standings),
+    )
 
 
 def _record_files(reading: _Reading) -> Iterator[Path]:
@@ -287,6 +312,7 @@ def _added(reading: _Reading, path: Path, document: yaml_text.YamlText) -> bool:
             reading.report(source.problem(where, rule, message))
         if kind == "part":
             _add_loose_table(reading, path.parent, source, document.value)
+            _add_loose_standing(reading, source, document.value)
         return False
     if isinstance(record, Part):
         return _part_added(reading, path.parent, source, record)
@@ -320,7 +346,7 @@ def _part_added(reading: _Reading, folder: Path, source: Source, part: Part) -> 
         if table is None:
             return False
     falls = table is None or table.falls
-    (reading.parts if falls else reading.curveless).append(PartRecord(part, source, table, reading.digest))
+    (reading.parts if falls else reading.curveless).append(PartRecord(part, source, table, reading.digest, folder))
     return falls
 
 
@@ -334,6 +360,14 @@ def _add_loose_table(reading: _Reading, folder: Path, source: Source, value: dic
     table = table_data(raw, rated.resistance_ohm if rated else 1.0, reading.report) if raw else None
     if table is not None:
         reading.loose_tables.append(LooseTable(source, table, rated))
+
+
+def _add_loose_standing(reading: _Reading, source: Source, value: dict[str, object]) -> None:
+    """Keep the standing that holds for a part whose record is refused, so that one learns who relies on it."""
+    entries = value.get("standing")
+    last = _valid(Standing, entries[-1]) if isinstance(entries, list) and entries else None
+    if isinstance(entries, list) and last is not None:
+        reading.loose_standings.append(LooseStanding(source, last, len(entries) - 1))
 
 
 def _valid(model: type[_Model], value: object) -> _Model | None:
@@ -381,14 +415,18 @@ def _file_beside(reading: _Reading, folder: Path, source: Source, where: yaml_te
 
 def _check_document(reading: _Reading, folder: Path, source: Source, where: yaml_text.Path, document: Document) -> None:
     path = _file_beside(reading, folder, source, (*where, "file"), document.file) if document.file else None
-    if path is None or document.sha256 is None:
+    if path is None:
         return
     try:
         found = hashlib.sha256(path.read_bytes()).hexdigest()
     except OSError as error:
         _report_unreadable(reading, error)
         return
-    if found != document.sha256:
+    reading.seen[path.as_posix()] = found
+    if document.sha256 is None:
+        message = f"is missing, so nobody would notice another file in its place. Add sha256: {found}"
+        reading.report(source.problem((*where, "sha256"), "hash-missing", message, "warning"))
+    elif found != document.sha256:
         message = "is not that of the file beside the record. Was the document replaced? Then add its revision as a new entry."
         reading.report(source.problem((*where, "sha256"), "file-hash-differs", message))
 

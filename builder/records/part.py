@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from itertools import combinations
-from typing import Annotated, Literal
+from typing import Annotated, Literal, get_args
 
 from pydantic import Field, model_validator
 
@@ -32,6 +32,8 @@ StandingState = Literal["proposed", "approved", "restricted", "withdrawn"]
 Lifecycle = Literal["active", "not for new designs", "last time buy", "obsolete"]
 Column = Literal["t_c", "r_ohm", "r_min_ohm", "r_max_ohm", "ratio"]
 Form = Literal["chip", "leaded", "bead", "probe", "lug", "disc"]
+Figures = Literal["rated", "b_values", "steinhart_hart", "r_t_table", "accuracy", "limits", "qualification"]
+FIGURES: tuple[Figures, ...] = get_args(Figures)
 
 _SAME_WITHIN_K = 0.01  # closer temperatures are one, typed or converted differently
 
@@ -144,16 +146,24 @@ class Limits(RecordModel):
 
 
 class Document(RecordModel):
-    """What the figures were read from."""
+    """What the figures were read from. Every revision that was used stays in the list; the newest of a title holds."""
 
-    title: Text = Field(description="What it is.", examples=["data sheet"])
+    title: Text = Field(description="What it is; the same for all its revisions.", examples=["data sheet"])
     revision: Text | None = Field(None, description="Its revision, as text.", examples=["C"])
     dated: Day | None = Field(None, description="Its date, year-month-day.", examples=["2025-03-11"])
     link: WebAddress | None = Field(None, description="Its web address.", examples=["https://example.com/tb3a.pdf"])
     sha256: Annotated[str, Field(pattern="^[0-9a-f]{64}$")] | None = Field(
         None, description="SHA-256 of the file, 64 hex digits."
     )
-    file: Text | None = Field(None, description="The document's file beside the record.")
+    file: Text | None = Field(
+        None, description="The document's file beside the record; the site gets a copy.", examples=["TB3A-103F38-C.pdf"]
+    )
+    figures: Several[Figures] = Field(
+        (),
+        description="Fields of the record that were read from it; what no document names was read from the newest "
+        "revision of the first one.",
+        examples=[["r_t_table"]],
+    )
 
 
 class DocumentRevision(RecordModel):

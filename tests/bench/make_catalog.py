@@ -75,6 +75,8 @@ class DrawnPart:
     tolerance_pct: float
     material: int
     law: Law
+    revision: str
+    ledger: tuple[str, ...]
     random: Random
 
     @property
@@ -94,7 +96,18 @@ def drawn_part(seed: int, index: int, curve: str) -> DrawnPart:
     if curve == "steinhart-hart":
         law = steinhart_hart(law)
     number = f"{prefix}{index:05d}-{code.upper()}"
-    return DrawnPart(number, maker, curve, code, random.choice((0.5, 1, 1, 2, 3, 5)), material, law, random)
+    return DrawnPart(
+        number,
+        maker,
+        curve,
+        code,
+        random.choice((0.5, 1, 1, 2, 3, 5)),
+        material,
+        law,
+        random.choice("ABCDEF"),
+        random.choice(LEDGERS),
+        random,
+    )
 
 
 def steinhart_hart(law: Law) -> SteinhartHartLaw:
@@ -158,14 +171,16 @@ def inline_table(columns: str, rows: Iterable[Sequence[str]]) -> list[str]:
     return ["r_t_table:", f"  columns: {columns}", "  rows:", *(f"    - [{', '.join(row)}]" for row in rows)]
 
 
-def standing_lines(random: Random, indent: str) -> list[str]:
-    """A ledger of one to three entries on days that rise."""
+def standing_lines(part: DrawnPart, ledger: Sequence[str], random: Random, indent: str) -> list[str]:
+    """A ledger of one to three entries about a part, on days that rise."""
     lines = [f"{indent}standing:"]
-    for year, state in enumerate(random.choice(LEDGERS), start=2023):
+    for year, state in enumerate(ledger, start=2023):
         on = f"{year}-{random.randint(1, 12):02d}-{random.randint(1, 28):02d}"
         lines.append(f"{indent}  - state: {state}")
         lines += [f"{indent}    on: {on}", f"{indent}    by: component engineering"]
         lines.append(f"{indent}    because: {REASONS[state]}")
+        if state in ("approved", "restricted"):
+            lines.append(f"{indent}    document: {{title: data sheet, revision: {part.revision}}}")
         if state == "approved":
             lines.append(f"{indent}    review_due: {REVIEW_DUE}")
     return lines
@@ -175,7 +190,6 @@ def part_text(part: DrawnPart, index: int) -> str:
     """The part's record."""
     random = part.random
     body, what, dissipation_mw_per_k, time_constant_s = random.choice(BODIES)
-    revision = random.choice("ABCDEF")
     lines = [
         f"part: {part.number}",
         f"maker: {part.maker}",
@@ -194,9 +208,9 @@ def part_text(part: DrawnPart, index: int) -> str:
         f"qualification: {random.choice(QUALIFICATIONS)}",
         f"lifecycle: {random.choice(LIFECYCLES)}",
         "documents:",
-        f"  - title: data sheet\n    revision: {revision}\n    dated: 2022-{random.randint(1, 12):02d}-01",
-        f'    link: "https://example.com/{part.number.lower()}-{revision.lower()}.pdf"',
-        *standing_lines(random, ""),
+        f"  - title: data sheet\n    revision: {part.revision}\n    dated: 2022-{random.randint(1, 12):02d}-01",
+        f'    link: "https://example.com/{part.number.lower()}-{part.revision.lower()}.pdf"',
+        *standing_lines(part, part.ledger, random, ""),
         "notes: Compare lots by their table and not by their B-value.",
     ]
     return "\n".join(lines) + "\n"
@@ -218,8 +232,9 @@ def firmware(part: DrawnPart, index: int) -> str:
 def position_text(seed: int, index: int, parts: Sequence[DrawnPart]) -> str:
     """A position with up to three alternates of the fitted part's rated resistance, its own material first."""
     random = Random(f"{seed}/position/{index}")
-    fitted = random.choice(parts)
-    alike = [part for part in parts if part.rated_code == fitted.rated_code and part is not fitted]
+    usable = [part for part in parts if part.ledger[-1] != "withdrawn"] or parts
+    fitted = random.choice(usable)
+    alike = [part for part in usable if part.rated_code == fitted.rated_code and part is not fitted]
     alike.sort(key=lambda part: part.material != fitted.material)
     board, place = divmod(index, BOARD_POSITIONS)
     lines = [
@@ -245,7 +260,7 @@ def position_text(seed: int, index: int, parts: Sequence[DrawnPart]) -> str:
     if alike:
         lines.append("alternates:")
     for part in alike[:3]:
-        lines += [f"  - part: {part.number}", *standing_lines(random, "    ")]
+        lines += [f"  - part: {part.number}", *standing_lines(part, random.choice(LEDGERS), random, "    ")]
     return "\n".join(lines) + "\n"
 
 

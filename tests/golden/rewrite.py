@@ -12,7 +12,7 @@ from builder.cli import main
 HERE = Path(__file__).parent
 RECORDS = HERE.parents[1] / "parts"
 COMMANDS = {
-    "check.txt": "check --today 2026-09-01",
+    "check.txt": "check --today 2026-12-01",
     "curve-table.txt": "curve TB3A-103F38 --step 25",
     "curve-accuracy.csv": "curve OSP4-103W --step 25 --format csv",
     "curve-steinhart-hart.txt": "curve TB5A-502F36 --step 25",

@@ -24,7 +24,7 @@ b_values:
 limits: {operating_c: [-20, 85]}
 documents: [{title: data sheet}]
 standing:
-  - {state: approved, on: 2026-01-01, by: sensors, because: tested, review_due: 2027-01-01}
+  - {state: proposed, on: 2026-01-01, by: sensors, because: tested, review_due: 2027-01-01}
 """
 COEFFICIENTS = "steinhart_hart: {a: 1.129241e-3, b: 2.341077e-4, c: 8.775468e-8, span_c: [-20, 85]}\n"
 CLEAN = tuple(ROWS_OHM.items())

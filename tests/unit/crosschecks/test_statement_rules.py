@@ -193,7 +193,7 @@ def test_a_review_is_overdue_from_the_day_after_it_was_due(check: Check) -> None
 
 
 def test_a_later_entry_settles_an_overdue_review(check: Check) -> None:
-    later = record("2027-01-01}", "2026-05-31}\n  - {state: approved, on: 2026-05-01, by: sensors, because: reviewed}")
+    later = record("2027-01-01}", "2026-05-31}\n  - {state: proposed, on: 2026-05-01, by: sensors, because: reviewed}")
     assert told(check, later) == []
 
 

@@ -16,6 +16,7 @@ from builder.pages.part_page import part_page
 from builder.pages.position_page import position_page
 
 TODAY = datetime.date(2026, 6, 1)
+SHEET = {"title": "sheet", "revision": "C"}  # what approvals in these records rest on
 LEAST = {
     "part": "PX-1",
     "maker": "Pellworm",

@@ -4,9 +4,10 @@ from __future__ import annotations
 
 import re
 from pathlib import Path
+from typing import Any
 
 import pytest
-from small_site import read, rows, section, text
+from small_site import SHEET, read, rows, section, text
 
 from builder.pages.home_page import home_page
 
@@ -17,13 +18,14 @@ DOCUMENTED = {
 }
 
 
-def entry(state: str, on: str, because: str = "x") -> dict[str, str]:
-    return {"state": state, "on": on, "by": "us", "because": because}
+def entry(state: str, on: str, because: str = "out of stock") -> dict[str, Any]:
+    return {"state": state, "on": on, "by": "us", "because": because, "document": SHEET}
 
 
 def test_parts_are_counted_by_the_standing_that_holds(tmp_path: Path) -> None:
     moved = [entry("approved", "2026-01-01"), entry("withdrawn", "2026-02-01")]
-    parts = ({}, {"part": "PX-2", "standing": moved}, *({"part": f"PX-{i}", "standing": moved[:1]} for i in (3, 4)))
+    ledgers = {"PX-2": moved, "PX-3": moved[:1], "PX-4": moved[:1]}
+    parts = ({}, *({"part": name, "standing": own, "documents": [SHEET]} for name, own in ledgers.items()))
     body = home_page(read(tmp_path, *parts, positions=({},))).body()
     tiles = re.findall(r'<li><a href="([^"]+)"><b>(\d+)</b> (\w+)</a></li>', body)
     assert [(int(n), name) for _, n, name in tiles] == [
@@ -53,11 +55,12 @@ def test_beyond_fifty_warnings_the_rest_is_counted(tmp_path: Path) -> None:
 
 def test_the_ten_newest_standings_of_parts_and_alternates_are_shown_the_newest_first(tmp_path: Path) -> None:
     own = [entry("proposed", f"2026-01-{day:02}") for day in range(1, 12)]
-    at = {"alternates": [{"part": "PX-1", "standing": [entry("approved", "2026-01-08", "fits here")]}]}
-    found = rows(home_page(read(tmp_path, {"standing": own}, positions=(at,))).body(), "The latest decisions")
+    at = {"alternates": [{"part": "PX-2", "standing": [entry("approved", "2026-01-08", "fits here")]}]}
+    parts = ({"standing": own, "documents": [SHEET]}, {"part": "PX-2", "documents": [SHEET]})
+    found = rows(home_page(read(tmp_path, *parts, positions=(at,))).body(), "The latest decisions")
     days = [row[0] for row in found]
     assert len(days) == 10 and days == sorted(days, reverse=True) and days[0] == "2026-01-11"
-    assert ["2026-01-08", "PX-1", "board/RT1", "approved", "us", "fits here"] in found
+    assert ["2026-01-08", "PX-2", "board/RT1", "approved", "us", "fits here"] in found
 
 
 def test_makers_are_counted_and_linked(tmp_path: Path) -> None:

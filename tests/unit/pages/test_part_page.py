@@ -8,7 +8,7 @@ import re
 from pathlib import Path
 
 import pytest
-from small_site import fact, only_page, read, rows, section, text
+from small_site import SHEET, fact, only_page, read, rows, section, text
 
 from builder.pages.context import Context
 from builder.pages.page import DataFile, Page
@@ -27,10 +27,22 @@ TOLERANCES = {
 def test_identity_and_standing_stand_before_everything_else(tmp_path: Path) -> None:
     standing = [
         {"state": "proposed", "on": "2026-01-12", "by": "sensors", "because": "x"},
-        {"state": "restricted", "on": "2026-02-10", "by": "safety", "because": "x", "only_for": ["a/RT1", "b"]},
+        {
+            "state": "restricted",
+            "on": "2026-02-10",
+            "by": "safety",
+            "because": "x",
+            "only_for": ["a/RT1", "b"],
+            "document": SHEET,
+        },
     ]
     body = only_page(
-        tmp_path, own_number="HS-1", description="10 kΩ bead", standing=standing, qualification=["Q1", "Q2"]
+        tmp_path,
+        own_number="HS-1",
+        description="10 kΩ bead",
+        standing=standing,
+        qualification=["Q1", "Q2"],
+        documents=[SHEET],
     )
     head = body.partition("<h2")[0]
     assert head.startswith("<h1>PX-1</h1>")
@@ -72,7 +84,16 @@ def test_a_record_with_every_field_shows_each(tmp_path: Path) -> None:
         qualification=["AEC-Q200 grade 1"],
         lifecycle="last time buy",
         documents=[{"title": "sheet", "revision": "C", "dated": "2025-03-11", "link": "https://example.com/x.pdf"}],
-        standing=[{"state": "approved", "on": "2026-01-01", "by": "us", "because": "good", "review_due": "2027-01-01"}],
+        standing=[
+            {
+                "state": "approved",
+                "on": "2026-01-01",
+                "by": "us",
+                "because": "good",
+                "document": SHEET,
+                "review_due": "2027-01-01",
+            }
+        ],
         accepted=[{"rule": "rated-differs", "because": "the maker confirmed it"}],
         notes="keep dry",
     )

@@ -6,7 +6,7 @@ from pathlib import Path
 from typing import Any
 
 import pytest
-from small_site import LEAST_POSITION, fact, only_position, read, rows, section
+from small_site import LEAST_POSITION, SHEET, fact, only_position, read, rows, section
 
 from builder.pages.position_page import CAUTION, position_page
 
@@ -97,10 +97,11 @@ def test_a_position_with_trips_carries_the_caution(tmp_path: Path) -> None:
 
 
 def test_the_fitted_part_shows_its_own_standing_and_an_alternate_the_one_it_has_here(tmp_path: Path) -> None:
-    def entry(state: str) -> list[dict[str, str]]:
-        return [{"state": state, "on": "2026-01-01", "by": "us", "because": "here"}]
+    def entry(state: str) -> list[dict[str, Any]]:
+        return [{"state": state, "on": "2026-01-01", "by": "us", "because": "good here", "document": SHEET}]
 
-    parts = ({"standing": entry("approved")}, {"part": "PX-2", "standing": entry("approved")}, {"part": "PX-3"})
+    approved = {"standing": entry("approved"), "documents": [SHEET]}
+    parts = (approved, approved | {"part": "PX-2"}, {"part": "PX-3"})
     alternates = [{"part": "PX-2", "standing": [*entry("proposed"), *entry("withdrawn")]}, {"part": "PX-3"}]
     context = read(tmp_path, *parts, positions=({"alternates": alternates},))
     body = position_page(context.catalog.positions[0], context).body()
@@ -110,8 +111,8 @@ def test_the_fitted_part_shows_its_own_standing_and_an_alternate_the_one_it_has_
         ["PX-3", "Pellworm", "10 kΩ", "alternate", "no standing"],
     ]
     assert rows(body, "Standings of PX-2 at this position") == [
-        ["2026-01-01", "withdrawn", "us", "here"],
-        ["2026-01-01", "proposed", "us", "here"],
+        ["2026-01-01", "withdrawn", "us", "good here"],
+        ["2026-01-01", "proposed", "us", "good here"],
     ]
 
 

@@ -34,7 +34,14 @@ HOSTILE = {
         }
     ],
     "standing": [
-        {"state": "restricted", "on": "2026-01-01", "by": f"B{MARK}", "because": f"W{MARK}", "only_for": [MARK]}
+        {
+            "state": "restricted",
+            "on": "2026-01-01",
+            "by": f"B{MARK}",
+            "because": f"W{MARK}",
+            "document": {"title": f"T{MARK}", "revision": f"R{MARK}"},
+            "only_for": [f"P{MARK}"],
+        }
     ],
     "accepted": [{"rule": "tolerance-missing", "because": f"A{MARK}"}],
     "notes": f"N{MARK}</script><script>alert(1)</script>",
@@ -46,7 +53,7 @@ HOSTILE_PLACE = {
     "trips": [{"name": f"T{MARK}", "at_c": 5, "when": "rising"}],
     "requires": {"qualification": [f"Q{MARK}"], "size_code": f"S{MARK}"},
     "fitted": f"P{MARK}",
-    "alternates": [{"part": f"P{MARK}", "standing": HOSTILE["standing"]}],
+    "alternates": [{"part": "P2", "standing": HOSTILE["standing"]}],
     "notes": f"N{MARK}",
 }
 

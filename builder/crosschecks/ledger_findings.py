@@ -1,0 +1,140 @@
+"""Rules about the ledger: each entry by itself, beside the one before it, and beside the record that it stands in."""
+
+from __future__ import annotations
+
+import datetime
+from collections import defaultdict
+from collections.abc import Iterable, Iterator, Sequence
+from itertools import pairwise
+
+from builder.crosschecks.fitting_findings import fitting_findings
+from builder.ledger import APPROVING, Entry, alternate_ledgers, named_document, part_ledger, replaced_since, standing_of
+from builder.problems import Problem, clipped, count_text, errors, nearest
+from builder.records import Catalog, PartRecord, Source
+from builder.records.part import DocumentRevision, Standing
+
+_FEWEST_WORDS = 2
+
+
+def ledger_findings(catalog: Catalog, today: datetime.date) -> Iterator[Problem]:
+    """What is wrong or doubtful in the ledgers of a catalog, and in who is fitted where."""
+    ledgers = [part_ledger(part) for part in (*catalog.parts, *catalog.curveless)]
+    ledgers += [ledger for place in catalog.positions for ledger in alternate_ledgers(place, catalog)]
+    for ledger in ledgers:
+        for entry in ledger:
+            for check in (_document, _replaced, _reason, _review_before):
+                yield from check(entry)
+            yield from _dates(entry, today)
+        yield from _out_of_order(ledger)
+    yield from fitting_findings(catalog, [entry for ledger in ledgers for entry in ledger if entry.holds])
+    yield from _shared_own_numbers(catalog)
+
+
+def _document(entry: Entry) -> Iterator[Problem]:
+    named, state = entry.standing.document, entry.standing.state
+    if named is None:
+        if state in APPROVING:
+            message = (
+                f"is missing: {state} without one. Name the document that the decision rests on, with its revision."
+            )
+            yield entry.problem(("document",), "approval-document", message)
+    elif named.revision is None and state in APPROVING:
+        message = f"is missing: {state} on no revision of the {clipped(named.title)}. Name the one that was looked at."
+        yield entry.problem(("document", "revision"), "approval-document", message)
+    elif named_document(entry.part.part, named) is None:
+        message = f"{clipped(str(named))} is not among the documents of {entry.part.name}.{_near(named, entry)}"
+        yield entry.problem(("document",), "approval-document", message)
+
+
+def _near(named: DocumentRevision, entry: Entry) -> str:
+    known = [str(DocumentRevision(title=d.title, revision=d.revision)) for d in entry.part.part.documents]
+    return nearest(str(named), known) or " Add it there, or name the one that was meant."
+
+
+def _replaced(entry: Entry) -> Iterator[Problem]:
+    newer, named = replaced_since(entry), entry.standing.document
+    if newer is not None and named is not None:
+        since = f" of {newer.dated.isoformat()}" if newer.dated else ""
+        message = (
+            f"{entry.standing.state} rests on {clipped(str(named))}, which revision {newer.revision}{since} has replaced. "
+            "Review what changed, then append an entry."
+        )
+        yield entry.problem(("document",), "revision-replaced", message, "warning")
+
+
+def _reason(entry: Entry) -> Iterator[Problem]:
+    because = entry.standing.because
+    if entry.standing.state == "withdrawn" and sum(any(map(str.isalnum, w)) for w in because.split()) < _FEWEST_WORDS:
+        message = f"{clipped(because)} does not say why. Write a sentence: somebody will want to approve it again."
+        yield entry.problem(("because",), "withdrawn-why", message)
+
+
+def _review_before(entry: Entry) -> Iterator[Problem]:
+    due, on = entry.standing.review_due, entry.standing.on
+    if due is not None and due < on:
+        message = f"{due.isoformat()} lies before the decision, {on.isoformat()}. Correct one of the two."
+        yield entry.problem(("review_due",), "review-before-decision", message)
+
+
+def _dates(entry: Entry, today: datetime.date) -> Iterator[Problem]:
+    due, on = entry.standing.review_due, entry.standing.on
+    if on > today:
+        message = (
+            f"{on.isoformat()} lies after today, {today.isoformat()}. Correct the date, or append the entry on its day."
+        )
+        yield entry.problem(("on",), "future-entry", message, "warning")
+    elif due is not None and due < today and entry.holds:
+        what = "alternate" if entry.position else "part"
+        message = f"the review was due on {due.isoformat()}. Review the {what} and append an entry to its standing."
+        yield entry.problem(("review_due",), "review-overdue", message, "warning")
+
+
+def _out_of_order(ledger: Sequence[Entry]) -> Iterator[Problem]:
+    for before, after in pairwise(ledger):
+        if after.standing.on < before.standing.on:
+            message = (
+                f"{after.standing.on.isoformat()} lies before the entry above, {before.standing.on.isoformat()}. "
+                "Entries are appended as they are made: correct the date, or move the entry."
+            )
+            yield after.problem(("on",), "ledger-order", message)
+
+
+def _shared_own_numbers(catalog: Catalog) -> Iterator[Problem]:
+    by_number: dict[str, list[PartRecord]] = defaultdict(list)
+    for record in catalog.parts:
+        if record.part.own_number:
+            by_number[record.part.own_number.casefold()].append(record)
+    for sharing in by_number.values():
+        for record, other in zip(sharing, [*sharing[1:], sharing[0]], strict=True):
+            if other is not record:
+                message = (
+                    f"{clipped(record.part.own_number or '')} is the own number of {other.name} too. Give each part its "
+                    "own, or accept the finding where one number buys either."
+                )
+                yield record.source.problem(("own_number",), "own-number-shared", message, "warning")
+
+
+def approvals_of_errors(catalog: Catalog, problems: Iterable[Problem]) -> Iterator[Problem]:
+    """Approved parts whose records have errors: people rely on them while they are mended."""
+    faulty: dict[str, int] = defaultdict(int)
+    for problem in errors(problems):
+        # What is wrong with the ledger itself says so.
+        if not problem.field.startswith("standing"):
+            faulty[problem.file] += 1
+    for record in (*catalog.parts, *catalog.curveless):
+        files = {record.source.file, record.table.file if record.table else record.source.file}
+        last = standing_of(record)
+        if last is not None:
+            index = len(record.part.standing) - 1
+            yield from _approval_of_errors(record.source, last, index, sum(faulty[file] for file in files))
+    for loose in catalog.loose_standings:
+        yield from _approval_of_errors(loose.source, loose.standing, loose.index, faulty[loose.source.file])
+
+
+def _approval_of_errors(source: Source, standing: Standing, index: int, count: int) -> Iterator[Problem]:
+    if count and standing.state in APPROVING:
+        message = (
+            f"the part is {standing.state} since {standing.on.isoformat()}, and its record has "
+            f"{count_text(count, 'error')}. Correct what is wrong; where a figure changes, append an entry that says who looked at it."
+        )
+        yield source.problem(("standing", index), "approval-of-errors", message, "warning")
