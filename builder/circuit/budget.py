@@ -20,7 +20,7 @@ from builder.units import Array, range_text, temperature_text
 
 DEFAULT_STEP_K = 5.0
 # The worst case is looked for between the rows too: a firmware's table is exact at its own rows, often the same ones.
-_CLOSE_K = 0.5
+CLOSE_K = 0.5
 
 
 @dataclass(frozen=True, eq=False)
@@ -77,7 +77,7 @@ def budget(position: Position, fitted: Thermistor, firmware_curve: PartCurve, st
     """
     chain = Chain(position, fitted, firmware_curve.curve, position.circuit.fixed.resistance_ohm)
     rows_c = whole_steps_c(position.range_c, step_k)
-    t_c = np.union1d(rows_c, whole_steps_c(position.range_c, _CLOSE_K))
+    t_c = np.union1d(rows_c, whole_steps_c(position.range_c, CLOSE_K))
     lowest, highest = chain.extremes(t_c)
     worst_min_k, worst_max_k = lowest.reading_c - t_c, highest.reading_c - t_c
     at_rows = np.searchsorted(t_c, rows_c)

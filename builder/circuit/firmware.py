@@ -54,9 +54,13 @@ class Tabulated:
 
     def reading_c(self, code: Array) -> Array:
         """What the instrument shows at a code. [°C]"""
-        row = np.clip((code[..., None] >= self.code[..., None, :]).sum(axis=-1) - 1, 0, len(self.t_c) - 2)
-        codes = np.broadcast_to(self.code[..., None, :], (*row.shape, len(self.t_c)))
-        below, above = (np.take_along_axis(codes, row[..., None] + i, axis=-1)[..., 0] for i in (0, 1))
+        # All tables behind one another in one that rises: each begins above the highest code of the one before.
+        tables, rows, highest = self.code.ravel(), len(self.t_c), self.code.max()
+        table = np.arange(tables.size // rows).reshape(*self.code.shape[:-1], 1)
+        rising = (self.code + table * (highest + 1)).ravel()
+        found = np.searchsorted(rising, np.clip(code, -0.5, highest) + table * (highest + 1), side="right") - 1
+        row = np.clip(found - table * rows, 0, rows - 2)
+        below, above = tables[table * rows + row], tables[table * rows + row + 1]
         with np.errstate(divide="ignore", invalid="ignore"):
             share = np.where(above > below, (code - below) / (above - below), np.nan)
         reading_c: Array = self.t_c[row] + share * (self.t_c[row + 1] - self.t_c[row])

@@ -12,6 +12,8 @@ from builder.records import PartRecord
 from builder.units import Array
 
 _ARRIVED_K = 1e-9
+# A slope that is so little old costs a step of Newton's at most, and less than a new one.
+_SLOPE_HOLDS_K = 0.5
 _NEWTON_STEPS = 12
 _BISECTIONS = 40
 
@@ -38,12 +40,12 @@ class Thermistor:
         array, broadcast
             Resistance. [Ω]
         """
-        nominal_ohm = self.made.curve.resistance_ohm(body_c)
-        if not np.any(edge):
-            return nominal_ohm
-        low_ohm, high_ohm = self.made.band.edges_ohm(body_c)
         edge = np.asarray(edge)
-        return np.where(edge < 0, low_ohm, np.where(edge > 0, high_ohm, nominal_ohm))
+        if not edge.any():
+            return self.made.curve.resistance_ohm(body_c)
+        low_ohm, high_ohm = self.made.band.edges_ohm(body_c)
+        edge_ohm = np.where(edge < 0, low_ohm, high_ohm)
+        return edge_ohm if edge.all() else np.where(edge == 0, self.made.curve.resistance_ohm(body_c), edge_ohm)
 
     def body_c(self, t_c: Array, divider: Divider, edge: Figure = 0.0) -> Array:
         """Temperature of the body, warmed by its own power.
@@ -68,21 +70,24 @@ class Thermistor:
         Newton's method from T up, with the nominal curve's slope. What it leaves, such as a balance where the band has a
         step, is bisected between T and T + the largest power that the divider can give over δ.
         """
-        coldest_c = t_c + 0 * divider.thermistor_w(self.resistance_ohm(t_c, edge))
+        r_ohm = self.resistance_ohm(t_c, edge)
+        coldest_c = t_c + 0 * divider.thermistor_w(r_ohm)
         if self.dissipation_mw_per_k is None:
             return coldest_c
         hottest_c = coldest_c + self._warming_k(divider, np.asarray(divider.seen_ohm))
-        body_c = coldest_c
+        body_c, alpha_per_k = coldest_c, self.made.curve.alpha_pct_per_k(t_c) / 100
         for _ in range(_NEWTON_STEPS):
-            r_ohm = self.resistance_ohm(body_c, edge)
             warming_k = self._warming_k(divider, r_ohm)
             power_slope = (divider.seen_ohm - r_ohm) / (divider.seen_ohm + r_ohm)  # d ln P / d ln R
-            slope = 1 - warming_k * power_slope * self.made.curve.alpha_pct_per_k(body_c) / 100
+            slope = 1 - warming_k * power_slope * alpha_per_k
             step_k = (body_c - t_c - warming_k) / slope
             body_c = np.clip(body_c - step_k, coldest_c, hottest_c)
             arrived = ~(np.abs(step_k) > _ARRIVED_K)
             if arrived.all():
                 return body_c
+            r_ohm = self.resistance_ohm(body_c, edge)
+            if np.any(np.abs(step_k) > _SLOPE_HOLDS_K):
+                alpha_per_k = self.made.curve.alpha_pct_per_k(body_c) / 100
         return np.where(arrived, body_c, self._bisected_c(coldest_c, hottest_c, divider, edge))
 
     def _bisected_c(self, coldest_c: Array, hottest_c: Array, divider: Divider, edge: Figure) -> Array:

@@ -6,6 +6,7 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 from typing import Literal
 
+from builder.ledger import is_for
 from builder.records import Part, Position
 from builder.records.part import Standing
 from builder.units import number_text, temperature_text
@@ -98,22 +99,19 @@ def _time_constant(position: Position, part: Part) -> Iterator[Reason]:
 
 
 def _standing(position: Position, part: Part) -> Iterator[Reason]:
-    yield from ledger_reasons("the part", part.standing)
-    only_for = part.standing[-1].only_for if part.standing else ()
-    here = {position.position.casefold(), position.board.casefold()}
-    if only_for and here.isdisjoint(name.casefold() for name in only_for):
-        yield Reason("standing", f"the part may be fitted only at {', '.join(only_for)}", True)
+    yield from ledger_reasons("the part", part.standing[-1] if part.standing else None, position)
 
 
-def ledger_reasons(whose: str, standing: tuple[Standing, ...]) -> Iterator[Reason]:
-    """What the last entry of a ledger means; an approval needs no word."""
-    if not standing:
+def ledger_reasons(whose: str, holds: Standing | None, position: Position) -> Iterator[Reason]:
+    """What the entry that holds in a ledger means at a position; an approval needs no word."""
+    if holds is None:
         yield Reason("standing", f"{whose} has no entry in its ledger", False)
         return
-    last = standing[-1]
-    if last.state in ("withdrawn", "proposed"):
-        message = f"{whose} is {last.state} since {last.on.isoformat()} ({last.by}: {last.because})"
-        yield Reason("standing", message, last.state == "withdrawn")
+    if holds.state in ("withdrawn", "proposed"):
+        message = f"{whose} is {holds.state} since {holds.on.isoformat()} ({holds.by}: {holds.because})"
+        yield Reason("standing", message, holds.state == "withdrawn")
+    if not is_for(holds, position):
+        yield Reason("standing", f"{whose} may be fitted only at {', '.join(holds.only_for)}", True)
 
 
 def _lifecycle(part: Part) -> Iterator[Reason]:

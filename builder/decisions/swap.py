@@ -10,6 +10,8 @@ from typing import Literal
 from builder.circuit import DEFAULT_STEP_K, Budget, Thermistor, TripBudget, budget, firmware_part, thermistor
 from builder.decisions.new_firmware import with_new_firmware
 from builder.decisions.requirements import About, Reason, body_text, ledger_reasons, requirement_reasons
+from builder.ledger import standing_at
+from builder.ledger.standings import goes_by
 from builder.part_curve import part_curve
 from builder.records import Catalog, PartRecord, Position, PositionRecord
 from builder.units import number_text, range_text, temperature_text
@@ -71,7 +73,7 @@ def swap(position: PositionRecord, alternate: PartRecord, catalog: Catalog, step
         *_reading_reasons(before, after, new_firmware),
         *_body_reasons(place, fitted, alternate),
         *requirement_reasons(place, alternate.part),
-        *_alternate_reasons(place, alternate),
+        *_alternate_reasons(position, alternate),
     )
     verdict = _verdict(reasons, after, new_firmware)
     return Swap(position, fitted, alternate, before, after, new_firmware or after, verdict, reasons)
@@ -165,10 +167,9 @@ def _body_reasons(place: Position, fitted: PartRecord, alternate: PartRecord) ->
         yield Reason("body", message, True)
 
 
-def _alternate_reasons(place: Position, alternate: PartRecord) -> Iterator[Reason]:
-    number = alternate.part.part.casefold()
-    named = [entry for entry in place.alternates if entry.part.casefold() == number]
-    if named:
-        yield from ledger_reasons(f"the alternate at {place.position}", named[-1].standing)
+def _alternate_reasons(position: PositionRecord, alternate: PartRecord) -> Iterator[Reason]:
+    place = position.position
+    if any(goes_by(alternate, entry.part) for entry in place.alternates):
+        yield from ledger_reasons(f"the alternate at {place.position}", standing_at(alternate, position), place)
     else:
         yield Reason("standing", f"{place.position} does not name it as an alternate", False)
