@@ -3,13 +3,19 @@
 The functions behind the commands, for Python callers.
 """
 
-from builder.comparisons import compared, families, sentence
-from builder.crosschecks import checked_catalog
-from builder.decisions import swap
-from builder.intake import record_text
-from builder.part_curve import part_curve
-from builder.part_fit import fitted
-from builder.records import read_catalog
+from __future__ import annotations
+
+from importlib import import_module
+from typing import TYPE_CHECKING
+
+if TYPE_CHECKING:
+    from builder.comparisons import compared, families, sentence
+    from builder.crosschecks import checked_catalog
+    from builder.decisions import swap
+    from builder.intake import record_text
+    from builder.part_curve import part_curve
+    from builder.part_fit import fitted
+    from builder.records import read_catalog
 
 __all__ = [
     "checked_catalog",
@@ -22,3 +28,22 @@ __all__ = [
     "sentence",
     "swap",
 ]
+
+# Imported when first asked for: a command starts without what the others need.
+_MODULES = {
+    "checked_catalog": "crosschecks",
+    "compared": "comparisons",
+    "families": "comparisons",
+    "fitted": "part_fit",
+    "part_curve": "part_curve",
+    "read_catalog": "records",
+    "record_text": "intake",
+    "sentence": "comparisons",
+    "swap": "decisions",
+}
+
+
+def __getattr__(name: str) -> object:
+    if name in _MODULES:
+        return getattr(import_module(f"builder.{_MODULES[name]}"), name)
+    raise AttributeError(f"module {__name__!r} has no attribute {name!r}")

@@ -2,12 +2,10 @@
 
 from __future__ import annotations
 
-import multiprocessing
 import os
 import sys
 import threading
 from collections.abc import Callable, Sequence
-from concurrent.futures import ProcessPoolExecutor
 from typing import Any, TypeVar
 
 T = TypeVar("T")
@@ -31,6 +29,10 @@ def shared_out(work: Callable[[Sequence[T]], list[R]], items: Sequence[T]) -> li
     count = min(_cores(), len(items) // _FEWEST_ITEMS + 1)
     if count < 2 or sys.platform != "linux" or threading.active_count() > 1:
         return work(items)
+    # Imported here: that takes as long as many a command, which shares nothing out.
+    import multiprocessing
+    from concurrent.futures import ProcessPoolExecutor
+
     global _work, _items
     _work, _items = work, items
     ends = [len(items) * share // (count * _SHARES_EACH) for share in range(count * _SHARES_EACH + 1)]

@@ -9,8 +9,8 @@ from pathlib import Path
 
 import click
 
+from builder.commands import reading
 from builder.commands.options import TODAY, common
-from builder.crosschecks import checked_catalog
 from builder.exports import rows
 from builder.problems import Problem, count_text, errors, warnings
 from builder.records import Catalog, LooseTable, PartRecord
@@ -26,7 +26,7 @@ def check_command(paths: tuple[Path, ...], records: Path, form: str, today: date
     Every problem of every record in one run. Exit 0 if there is no error, 1 if there is one.
     """
     wanted = [_inside(path, records) for path in paths]
-    catalog = checked_catalog(records, today=today.date() if today else datetime.date.today()).catalog
+    catalog = reading.checked(records, today.date() if today else datetime.date.today()).catalog
     # A record's own CSV belongs to it.
     with_tables: list[PartRecord | LooseTable] = [*catalog.parts, *catalog.curveless, *catalog.loose_tables]
     for record in with_tables:

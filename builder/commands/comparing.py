@@ -6,6 +6,7 @@ from pathlib import Path
 
 import click
 
+from builder.commands import reading
 from builder.commands.answer import print_rows
 from builder.commands.named import named_parts
 from builder.commands.options import FROM, STEP, TO, Degrees, Step, common, refuse_falling, temperatures_c
@@ -13,7 +14,7 @@ from builder.comparisons import Comparison, NoCommonRange, common_range_c, compa
 from builder.comparisons.families import DEFAULT_RANGE_C, DEFAULT_WITHIN_K
 from builder.exports import comparison_rows, rows
 from builder.part_curve import part_curve
-from builder.records import PartRecord, read_catalog
+from builder.records import PartRecord
 from builder.units import range_text
 
 
@@ -38,7 +39,7 @@ def compare_command(
     Positive where it shows too much; low and high for parts at the limits of their tolerance. Without --from and --to
     over the range that A and B are both made for.
     """
-    own, *named = named_parts(read_catalog(records), (reference, *others))
+    own, *named = named_parts(reading.catalog(records), (reference, *others))
     found = [(other, _comparison(own, other, from_c, to_c, step_k)) for other in named]
     if form == "json":
         answer = comparison_rows.comparison_answer(own.part.part, [(other.part.part, c) for other, c in found])
@@ -84,7 +85,7 @@ def families_command(within_k: float, from_c: float, to_c: float, records: Path,
     Parts whose curve does not hold over the whole range are left out and named.
     """
     refuse_falling(from_c, to_c)
-    parts = read_catalog(records).parts
+    parts = reading.catalog(records).parts
     found = families([part_curve(record) for record in parts], within_k, (from_c, to_c))
     numbers = [[parts[i].part.part for i in group] for group in found.groups]
     left_out = [parts[i] for i in found.left_out]

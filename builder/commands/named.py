@@ -8,11 +8,12 @@ from typing import NoReturn
 
 import click
 
+from builder.commands import reading
 from builder.crosschecks.checked import findings
 from builder.crosschecks.subject import Subject
 from builder.part_curve import part_curve
 from builder.problems import Problem, count_text, errors, nearest
-from builder.records import Catalog, PartRecord, Position, UnknownPart, read_catalog
+from builder.records import Catalog, PartRecord, Position, UnknownPart
 
 
 def named_position(catalog: Catalog, name: str) -> Position:
@@ -26,7 +27,7 @@ def named_position(catalog: Catalog, name: str) -> Position:
 
 def named_part(records: Path, name: str) -> PartRecord:
     """The part a command names; its problems, or that it is unknown, end the command."""
-    (record,) = named_parts(read_catalog(records), (name,))
+    (record,) = named_parts(reading.catalog(records), (name,))
     return record
 
 

@@ -39,9 +39,25 @@ TODAY = click.option(
 )
 
 
+REFUSES_CACHE = "builder.commands.refuses_cache"
+
+
+def _refuse_cache(context: click.Context, _: click.Parameter, refused: bool) -> None:
+    context.meta[REFUSES_CACHE] = refused
+
+
+NO_CACHE = click.option(
+    "--no-cache",
+    is_flag=True,
+    expose_value=False,
+    callback=_refuse_cache,
+    help="Read and check every record anew, and keep nothing for the next run.",
+)
+
+
 def common(command: _Command) -> _Command:
-    """The options that every command takes."""
-    return RECORDS(FORMAT(command))
+    """The options that every command about the records takes."""
+    return RECORDS(FORMAT(NO_CACHE(command)))
 
 
 class Degrees(click.ParamType):  # type: ignore[type-arg]  # generic from click 8.3 on

@@ -7,11 +7,11 @@ from pathlib import Path
 import click
 
 from builder.circuit import budget, firmware_part, thermistor
+from builder.commands import reading
 from builder.commands.named import named_parts, named_position
 from builder.commands.options import MOST_ROWS, STEP, common
 from builder.exports import budget_rows, rows
 from builder.part_curve import part_curve
-from builder.records import read_catalog
 
 
 @click.command("budget")
@@ -23,7 +23,7 @@ def budget_command(position: str, step_k: float, records: Path, form: str) -> No
 
     POSITION is its name, such as coolbox-main/RT1. The worst case is looked for between the rows too.
     """
-    catalog = read_catalog(records)
+    catalog = reading.catalog(records)
     place = named_position(catalog, position)
     fitted, made_for = named_parts(catalog, (place.fitted, firmware_part(place)))
     low_c, high_c = place.range_c

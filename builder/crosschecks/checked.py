@@ -13,12 +13,14 @@ from builder.crosschecks import coefficients, statements, table_findings
 from builder.crosschecks.acceptance import not_accepted
 from builder.crosschecks.ledger_findings import approvals_of_errors, ledger_findings
 from builder.crosschecks.subject import Check, Subject
+from builder.kept import Kept, Shelf
 from builder.part_curve import PartCurve, part_curve
 from builder.problems import Problem, in_order
 from builder.processes import shared_out
-from builder.records import Catalog, read_catalog
+from builder.records import Catalog, PartRecord, read_catalog
 from builder.records.table import TableData
 
+_SHELF = "findings"
 _CHECKS: tuple[Check, ...] = (*table_findings.CHECKS, *coefficients.CHECKS, *statements.CHECKS)
 
 
@@ -36,21 +38,67 @@ class CheckedCatalog:
         return self.catalog.problems
 
 
-def checked_catalog(root: Path, *, today: datetime.date) -> CheckedCatalog:
-    """The records of a folder with every problem: of reading them, and of every cross-check."""
-    catalog = read_catalog(root)
-    curves = {record.source.file: part_curve(record) for record in catalog.parts}
-    subjects = [Subject(r, curves.get(r.source.file)) for r in (*catalog.parts, *catalog.curveless)]
+class _Curves(Mapping[str, PartCurve]):
+    """Each part's curve by the file of its record, made when it is first asked for."""
+
+    def __init__(self, parts: Iterable[PartRecord]) -> None:
+        self._records = {record.source.file: record for record in parts}
+        self._made: dict[str, PartCurve] = {}
+
+    def __getitem__(self, file: str) -> PartCurve:
+        if file not in self._made:
+            self._made[file] = part_curve(self._records[file])
+        return self._made[file]
+
+    def __iter__(self) -> Iterator[str]:
+        return iter(self._records)
+
+    def __len__(self) -> int:
+        return len(self._records)
+
+
+def checked_catalog(root: Path, *, today: datetime.date, kept: Kept | None = None) -> CheckedCatalog:
+    """The records of a folder with every problem: of reading them, and of every cross-check.
+
+    What `kept` has of a record that is as it was is not read and checked again.
+    """
+    kept = kept or Kept()
+    catalog = read_catalog(root, kept)
+    curves, shelf = _Curves(catalog.parts), kept.shelf(_SHELF)
+    key = f"{catalog.digest} {today}"
+    problems: tuple[Problem, ...] | None = shelf.get(key)
+    if problems is None:
+        problems = _problems(catalog, curves, today, shelf)
+        shelf.put(key, problems)
+        kept.save(_SHELF)
+    return CheckedCatalog(replace(catalog, problems=problems), curves, today)
+
+
+def _problems(
+    catalog: Catalog, curves: Mapping[str, PartCurve], today: datetime.date, shelf: Shelf
+) -> tuple[Problem, ...]:
     of_ledger = _by_file(ledger_findings(catalog, today))
     found: list[Problem] = []
-    for subject, of_figures in zip(subjects, shared_out(_findings_of_share, subjects), strict=True):
-        found += not_accepted(subject.record, [*of_figures, *of_ledger.pop(subject.record.source.file, ())])
+    records = [*catalog.parts, *catalog.curveless]
+    for record, of_figures in zip(records, _findings_of_figures(records, curves, shelf), strict=True):
+        found += not_accepted(record, [*of_figures, *of_ledger.pop(record.source.file, ())])
     found += [problem for problems in of_ledger.values() for problem in problems]
     found += [problem for loose in catalog.loose_tables for problem in table_findings.loose_table_findings(loose)]
     examined = [*(r.table for r in catalog.curveless), *(loose.table for loose in catalog.loose_tables)]
     found += _unexplained(catalog.problems, [table for table in examined if table is not None], found)
     found += approvals_of_errors(catalog, found)
-    return CheckedCatalog(replace(catalog, problems=in_order(found)), curves, today)
+    return in_order(found)
+
+
+def _findings_of_figures(
+    records: Sequence[PartRecord], curves: Mapping[str, PartCurve], shelf: Shelf
+) -> list[list[Problem]]:
+    """What the cross-checks find in the figures of each record, or have found in them."""
+    missing = [record for record in records if shelf.get(record.digest) is None]
+    subjects = [Subject(record, curves.get(record.source.file)) for record in missing]
+    for record, found in zip(missing, shared_out(_findings_of_share, subjects), strict=True):
+        shelf.put(record.digest, found)
+    return [shelf.get(record.digest) for record in records]
 
 
 def findings(subject: Subject) -> list[Problem]:

@@ -1,17 +1,9 @@
 """From YAML files to checked, frozen records, and every problem on the way."""
 
-from builder.records.catalog import (
-    Catalog,
-    LooseStanding,
-    LooseTable,
-    PartRecord,
-    PositionRecord,
-    Source,
-    UnknownPart,
-    read_catalog,
-)
+from builder.records.catalog import Catalog, LooseStanding, LooseTable, UnknownPart, read_catalog
 from builder.records.part import Part
 from builder.records.position import Position
+from builder.records.record import PartRecord, PositionRecord, Source
 
 __all__ = [
     "Catalog",

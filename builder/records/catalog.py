@@ -7,65 +7,31 @@ import hashlib
 import os
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, field
-from functools import cached_property, partial
+from functools import cache, cached_property, partial
 from pathlib import Path
 from typing import TypeVar
 
 from pydantic import ValidationError
 
+from builder.kept import Kept, Shelf
 from builder.problems import Problem, Severity, clipped, count_text, in_order, nearest, one_line
 from builder.processes import shared_out
 from builder.records import yaml_text
 from builder.records.part import Document, Part, Rated, RTTable, Standing
 from builder.records.position import Position
 from builder.records.quantities import RecordModel
+from builder.records.record import KeptPartRecord, PartRecord, PositionRecord, Source, known_of
 from builder.records.table import RawTable, TableData, csv_table, table_data
 from builder.records.wording import worded
 
 # A record of a thousand rows has 50 kB; more than this is not a record.
 LARGEST_FILE_BYTES = 1_000_000
 _LEADS_OUT = "leads out of the records folder."
+# What stands for a file that was looked at: a digest of its content, or one of these.
+_OUTSIDE, _MISSING, _THERE, _UNREAD = "outside", "missing", "there", "unread"
+_SHELF = "records"
 _Model = TypeVar("_Model", bound=RecordModel)
 _MODELS: Mapping[str, type[RecordModel]] = {"part": Part, "position": Position}
-
-
-@dataclass(frozen=True)
-class Source:
-    """Where a record was read: its file as messages name it, its file below the records folder, its lines."""
-
-    file: str
-    below: str
-    lines: Mapping[yaml_text.Path, int]
-
-    def problem(self, path: yaml_text.Path, rule: str, message: str, severity: Severity = "error") -> Problem:
-        """A problem of the field at a path."""
-        line = yaml_text.line_of(self.lines, path)
-        return Problem(self.file, line, yaml_text.field_name(path), rule, message, severity)
-
-
-@dataclass(frozen=True, eq=False)
-class PartRecord:
-    """A part, the numbers of its table where it has one, where it was read, a digest of all that was read for it, and its folder."""
-
-    part: Part
-    source: Source
-    table: TableData | None = None
-    digest: str = ""
-    folder: Path = Path()
-
-    @property
-    def name(self) -> str:
-        """Maker and number: no two parts share it."""
-        return f"{self.part.maker} {self.part.part}"
-
-
-@dataclass(frozen=True, eq=False)
-class PositionRecord:
-    """A position, where it was read, and a digest of that."""
-
-    position: Position
-    source: Source
-    digest: str = ""
 
 
 @dataclass(frozen=True, eq=False)
@@ -96,7 +62,7 @@ class Catalog:
 
     `curveless` are parts whose table does not fall, so that no curve can be made: nothing finds them by name, and the
     cross-checks say which of their rows is wrong, as they do for `loose_tables`. `loose_standings` are those of parts whose
-    records were refused.
+    records were refused. `digest` is of every file that was looked at and of what was found in reading them.
     """
 
     parts: tuple[PartRecord, ...] = ()
@@ -105,6 +71,7 @@ class Catalog:
     curveless: tuple[PartRecord, ...] = ()
     loose_tables: tuple[LooseTable, ...] = ()
     loose_standings: tuple[LooseStanding, ...] = ()
+    digest: str = ""
 
     def part(self, name: str) -> PartRecord:
         """The part that goes by a maker's number, `maker number`, or an own number; upper and lower case alike.
@@ -133,13 +100,13 @@ class Catalog:
 
     @cached_property
     def _numbers(self) -> tuple[str, ...]:
-        return tuple(record.part.part for record in self.parts)
+        return tuple(record.number for record in self.parts)
 
     @cached_property
     def _by_name(self) -> Mapping[str, tuple[PartRecord, ...]]:
         by_name: dict[str, list[PartRecord]] = {}
         full_names = tuple(record.name for record in self.parts)
-        own_numbers = tuple(record.part.own_number or "" for record in self.parts)
+        own_numbers = tuple(record.own_number or "" for record in self.parts)
         # Own numbers come last: a maker's number is never hidden by somebody's internal one.
         for names in (self._numbers, full_names, own_numbers):
             taken = set(by_name)
@@ -162,7 +129,7 @@ class _Reading:
     problems: list[Problem] = field(default_factory=list)
     # What records that have errors may go by: a position that names one is not told that there is no such part.
     faulty: set[str] = field(default_factory=set)
-    # Every file that was looked at, with a digest of what stood there.
+    # Every file that was looked at, with what was found there.
     seen: dict[str, str] = field(default_factory=dict)
 
     @property
@@ -175,6 +142,27 @@ class _Reading:
         for name in ("parts", "curveless", "loose_tables", "loose_standings", "positions", "problems"):
             getattr(self, name).extend(getattr(other, name))
         self.faulty |= other.faulty
+        self.seen |= other.seen
+
+    @property
+    def is_one_part(self) -> bool:
+        """Whether there is a part and nothing else."""
+        others = (self.curveless, self.loose_tables, self.loose_standings, self.positions, self.problems, self.faulty)
+        return len(self.parts) == 1 and not any(others)
+
+    def still_finds(self, seen: Mapping[str, str]) -> bool:
+        """Whether everything that another reading looked at is as it was."""
+        return all(self._found(Path(path), was) == was for path, was in seen.items())
+
+    def _found(self, path: Path, was: str) -> str:
+        if not self.holds(path):
+            return _OUTSIDE
+        if not os.path.isfile(path):  # noqa: PTH113 -- Path.is_file raises for a name that is too long
+            return _MISSING
+        try:
+            return _THERE if was == _THERE else hashlib.sha256(path.read_bytes()).hexdigest()
+        except OSError:
+            return _UNREAD
 
     def report(self, problem: Problem) -> None:
         self.problems.append(problem)
@@ -185,11 +173,14 @@ class _Reading:
 
     def holds(self, path: Path) -> bool:
         """Whether a path lies in the records folder once its links are followed; a loop of links ends where it is."""
-        return Path(os.path.realpath(path)).is_relative_to(self._inside)
+        # Following every part of every path would take longer than reading the files.
+        is_plain = path.name != ".." and not os.path.islink(path)  # noqa: PTH114 -- raises for a name that is too long
+        return (is_plain and _leads_into(path.parent, self.root)) or _leads_into.__wrapped__(path, self.root)
 
-    @cached_property
-    def _inside(self) -> str:
-        return os.path.realpath(self.root)
+
+@cache
+def _leads_into(path: Path, root: Path) -> bool:
+    return Path(os.path.realpath(path)).is_relative_to(os.path.realpath(root))
 
 
 def _read_share(root: Path, paths: Sequence[Path]) -> list[_Reading]:
@@ -200,14 +191,20 @@ def _read_share(root: Path, paths: Sequence[Path]) -> list[_Reading]:
     return readings
 
 
-def read_catalog(root: Path) -> Catalog:
-    """Every record below a folder; nothing is raised for anything that stands in a file."""
+def read_catalog(root: Path, kept: Kept | None = None) -> Catalog:
+    """Every record below a folder; nothing is raised for anything that stands in a file.
+
+    A record of which every file is as it was when `kept` was saved is taken from there.
+    """
+    kept = kept or Kept()
     reading = _Reading(root)
     if not root.is_dir():
         message = "there is no such folder. Name the folder of the records with --records."
         return Catalog(problems=(Problem(one_line(root.as_posix()), 1, "", "missing-file", message),))
-    for read in shared_out(partial(_read_share, root), list(_record_files(reading))):
+    _leads_into.cache_clear()
+    for read in _readings(reading, list(_record_files(reading)), kept.shelf(_SHELF)):
         reading.add(read)
+    kept.save(_SHELF)
     parts = tuple(sorted(reading.parts, key=lambda r: (r.name.casefold(), r.source.file)))
     positions = tuple(sorted(reading.positions, key=lambda r: (r.position.position.casefold(), r.source.file)))
     catalog = Catalog(parts, positions)
@@ -219,7 +216,44 @@ def read_catalog(root: Path) -> Catalog:
         tuple(reading.curveless),
         tuple(reading.loose_tables),
         tuple(reading.loose_standings),
+        hashlib.sha256(repr((reading.digest, problems)).encode()).hexdigest(),
     )
+
+
+def _readings(reading: _Reading, paths: Sequence[Path], shelf: Shelf) -> Iterator[_Reading]:
+    """A reading for each file, in their order."""
+    known = {path: read for path in paths if (read := _kept_reading(reading, path, shelf))}
+    missing = [path for path in paths if path not in known]
+    for path, read in zip(missing, shared_out(partial(_read_share, reading.root), missing), strict=True):
+        _keep(read, path, shelf)
+        known[path] = read
+    return (known[path] for path in paths)
+
+
+def _keep(read: _Reading, path: Path, shelf: Shelf) -> None:
+    head = {"seen": read.seen, "part": known_of(read.parts[0]) if read.is_one_part else None}
+    shelf.put(path.as_posix(), read, head)
+
+
+def _kept_reading(reading: _Reading, path: Path, shelf: Shelf) -> _Reading | None:
+    """What the reading of a file gave before, if all that it looked at is as it was."""
+    head = shelf.head(path.as_posix())
+    if head is None or not reading.still_finds(head["seen"]):
+        return None
+    if head["part"] is None:
+        read: _Reading | None = shelf.get(path.as_posix())
+        return read
+    part = KeptPartRecord(head["part"], partial(_fetched, reading.root, path, shelf))
+    return _Reading(reading.root, parts=[part], seen=head["seen"])
+
+
+def _fetched(root: Path, path: Path, shelf: Shelf) -> PartRecord:
+    """A kept part; one whose value is damaged is read again."""
+    read: _Reading | None = shelf.get(path.as_posix())
+    if read is None:
+        (read,) = _read_share(root, [path])
+        _keep(read, path, shelf)
+    return read.parts[0]
 
 
 def _record_files(reading: _Reading) -> Iterator[Path]:
@@ -256,6 +290,7 @@ def _report_unreadable(reading: _Reading, error: OSError) -> None:
 
 def _text(reading: _Reading, path: Path) -> str | None:
     """A file's text, or None with a problem of the file reported."""
+    reading.seen[path.as_posix()] = _UNREAD
     try:
         data = path.read_bytes() if path.stat().st_size <= LARGEST_FILE_BYTES else None
     except OSError as error:
@@ -403,13 +438,16 @@ def _file_beside(reading: _Reading, folder: Path, source: Source, where: yaml_te
     """A file named in a record, or None with the reason reported."""
     path = folder / name
     if not reading.holds(path):
+        reading.seen[path.as_posix()] = _OUTSIDE
         message = f"{clipped(name)} {_LEADS_OUT} Put the file beside the record."
         reading.report(source.problem(where, "link-out-of-records", message))
         return None
     if not os.path.isfile(path):  # noqa: PTH113 -- Path.is_file raises for a name that is too long
+        reading.seen[path.as_posix()] = _MISSING
         message = f"there is no file {clipped(name)} beside the record. Check the name, or remove the field."
         reading.report(source.problem(where, "missing-file", message))
         return None
+    reading.seen[path.as_posix()] = _THERE
     return path
 
 
@@ -417,16 +455,14 @@ def _check_document(reading: _Reading, folder: Path, source: Source, where: yaml
     path = _file_beside(reading, folder, source, (*where, "file"), document.file) if document.file else None
     if path is None:
         return
+    reading.seen[path.as_posix()] = _UNREAD
     try:
         found = hashlib.sha256(path.read_bytes()).hexdigest()
     except OSError as error:
         _report_unreadable(reading, error)
         return
     reading.seen[path.as_posix()] = found
-    if document.sha256 is None:
-        message = f"is missing, so nobody would notice another file in its place. Add sha256: {found}"
-        reading.report(source.problem((*where, "sha256"), "hash-missing", message, "warning"))
-    elif found != document.sha256:
+    if found != document.sha256:
         message = "is not that of the file beside the record. Was the document replaced? Then add its revision as a new entry."
         reading.report(source.problem((*where, "sha256"), "file-hash-differs", message))
 

@@ -14,7 +14,7 @@ PAGE = (Path(__file__).parents[2] / "docs" / "commands.md").read_text("utf-8")
 INTRODUCTION, *SECTIONS = re.split(r"^## ", PAGE, flags=re.MULTILINE)
 DOCUMENTED = {section.partition("\n")[0].strip(): section for section in SECTIONS}
 # What the introduction says of every command stands there once.
-COMMON = ("--records", "--format")
+COMMON = ("--records", "--format", "--no-cache")
 
 
 def commands() -> list[tuple[str, click.Command]]:

@@ -1,0 +1,6 @@
+"""What was made before and need not be made again: values by what they were made from, in files beside the records."""
+
+from builder.kept.folder import Kept
+from builder.kept.shelf import Shelf
+
+__all__ = ["Kept", "Shelf"]

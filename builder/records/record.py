@@ -1,0 +1,115 @@
+"""One record: what it says, its table's numbers, and where it was read."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterator, Mapping
+from dataclasses import dataclass
+from functools import cached_property
+from pathlib import Path
+
+from builder.problems import Problem, Severity
+from builder.records import yaml_text
+from builder.records.part import Part
+from builder.records.position import Position
+from builder.records.table import TableData
+
+
+@dataclass(frozen=True)
+class Source:
+    """Where a record was read: its file as messages name it, its file below the records folder, its lines."""
+
+    file: str
+    below: str
+    lines: Mapping[yaml_text.Path, int]
+
+    def problem(self, path: yaml_text.Path, rule: str, message: str, severity: Severity = "error") -> Problem:
+        """A problem of the field at a path."""
+        line = yaml_text.line_of(self.lines, path)
+        return Problem(self.file, line, yaml_text.field_name(path), rule, message, severity)
+
+
+@dataclass(frozen=True, eq=False)
+class PartRecord:
+    """A part, the numbers of its table where it has one, where it was read, a digest of all that was read for it, and its folder."""
+
+    part: Part
+    source: Source
+    table: TableData | None = None
+    digest: str = ""
+    folder: Path = Path()
+
+    @cached_property
+    def number(self) -> str:
+        """The maker's part number."""
+        return self.part.part
+
+    @cached_property
+    def maker(self) -> str:
+        """Who makes it."""
+        return self.part.maker
+
+    @cached_property
+    def own_number(self) -> str | None:
+        """The team's internal number."""
+        return self.part.own_number
+
+    @cached_property
+    def name(self) -> str:
+        """Maker and number: no two parts share it."""
+        return f"{self.maker} {self.number}"
+
+
+@dataclass(frozen=True, eq=False)
+class PositionRecord:
+    """A position, where it was read, and a digest of that."""
+
+    position: Position
+    source: Source
+    digest: str = ""
+
+
+class KeptPartRecord(PartRecord):
+    """A part's record that was read before: what it goes by is known, all else is fetched when it is asked for."""
+
+    def __init__(self, known: Mapping[str, str | None], fetch: Callable[[], PartRecord]) -> None:
+        names = {name: known[name] for name in ("number", "maker", "own_number", "digest")}
+        source = Source(str(known["file"]), str(known["below"]), _KeptLines(fetch))
+        self.__dict__.update(names, source=source, folder=Path(str(known["folder"])), _fetch=fetch)
+
+    @cached_property
+    def part(self) -> Part:
+        """What the record says."""
+        return self._fetched.part
+
+    @cached_property
+    def table(self) -> TableData | None:
+        """The numbers of its table."""
+        return self._fetched.table
+
+    @cached_property
+    def _fetched(self) -> PartRecord:
+        fetched: PartRecord = self.__dict__["_fetch"]()
+        return fetched
+
+
+class _KeptLines(Mapping[yaml_text.Path, int]):
+    """The lines of a record that was read before."""
+
+    def __init__(self, fetch: Callable[[], PartRecord]) -> None:
+        self._fetch = fetch
+
+    def __getitem__(self, path: yaml_text.Path) -> int:
+        return self._fetch().source.lines[path]
+
+    def __iter__(self) -> Iterator[yaml_text.Path]:
+        return iter(self._fetch().source.lines)
+
+    def __len__(self) -> int:
+        return len(self._fetch().source.lines)
+
+
+def known_of(record: PartRecord) -> dict[str, str | None]:
+    """What a record that is kept is known by before it is fetched."""
+    names = {"number": record.number, "maker": record.maker, "own_number": record.own_number}
+    places = {"file": record.source.file, "below": record.source.below, "folder": record.folder.as_posix()}
+    return names | places | {"digest": record.digest}
