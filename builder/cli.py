@@ -18,6 +18,8 @@ _MODULES = {
     "compare": "comparing",
     "families": "comparing",
     "budget": "positions",
+    "swap": "positions",
+    "shortlist": "positions",
 }
 
 

@@ -13,15 +13,16 @@ from builder.crosschecks.checked import findings
 from builder.crosschecks.subject import Subject
 from builder.part_curve import part_curve
 from builder.problems import Problem, count_text, errors, nearest
-from builder.records import Catalog, PartRecord, Position, UnknownPart
+from builder.records import Catalog, PartRecord, PositionRecord, UnknownPart
 
 
-def named_position(catalog: Catalog, name: str) -> Position:
+def named_position(catalog: Catalog, name: str) -> PositionRecord:
     """The position a command names; that it is unknown ends the command."""
-    places = {record.position.position: record.position for record in catalog.positions}
-    known = {number.casefold(): place for number, place in places.items()}
+    numbers = [record.position.position for record in catalog.positions]
+    known = {number.casefold(): record for number, record in zip(numbers, catalog.positions, strict=True)}
     if name.strip().casefold() not in known:
-        raise click.UsageError(f"{name} is not a position of the catalog.{nearest(name, places) or ' Check its name.'}")
+        near = nearest(name, numbers) or " Check its name."
+        raise click.UsageError(f"{name} is not a position of the catalog.{near}")
     return known[name.strip().casefold()]
 
 
@@ -43,9 +44,15 @@ def named_parts(catalog: Catalog, names: tuple[str, ...]) -> list[PartRecord]:
         click.echo(str(problem), err=True)
     if own:
         sys.exit(1)
-    if faulty:
-        click.echo(f"Other records have {count_text(len(faulty), 'error')}; beadroll check shows them.", err=True)
+    tell_of_faults(catalog, "Other records")
     return found
+
+
+def tell_of_faults(catalog: Catalog, whose: str) -> None:
+    """Say on standard error that records have errors, where they have."""
+    faulty = errors(catalog.problems)
+    if faulty:
+        click.echo(f"{whose} have {count_text(len(faulty), 'error')}; beadroll check shows them.", err=True)
 
 
 def _named(catalog: Catalog, name: str, faulty: tuple[Problem, ...]) -> PartRecord:

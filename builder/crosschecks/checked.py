@@ -12,6 +12,7 @@ from pathlib import Path
 from builder.crosschecks import coefficients, statements, table_findings
 from builder.crosschecks.acceptance import not_accepted
 from builder.crosschecks.ledger_findings import approvals_of_errors, ledger_findings
+from builder.crosschecks.position_findings import position_findings
 from builder.crosschecks.subject import Check, Subject
 from builder.kept import Kept, Shelf
 from builder.part_curve import PartCurve, part_curve
@@ -83,6 +84,7 @@ def _problems(
     for record, of_figures in zip(records, _findings_of_figures(records, curves, shelf), strict=True):
         found += not_accepted(record, [*of_figures, *of_ledger.pop(record.source.file, ())])
     found += [problem for problems in of_ledger.values() for problem in problems]
+    found += position_findings(catalog)
     found += [problem for loose in catalog.loose_tables for problem in table_findings.loose_table_findings(loose)]
     examined = [*(r.table for r in catalog.curveless), *(loose.table for loose in catalog.loose_tables)]
     found += _unexplained(catalog.problems, [table for table in examined if table is not None], found)

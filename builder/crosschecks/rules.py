@@ -250,6 +250,20 @@ RULES = (
         acceptable=False,
     ),
     Rule(
+        "position-outside-part",
+        "The range of a position reaches outside the operating range that the fitted part's record states.",
+        "range_c: [-40, 70] at a position whose fitted part operates from −20 to 85 °C.",
+        "Fit a part that is made for the range, or narrow the range to what matters there.",
+        acceptable=False,
+    ),
+    Rule(
+        "trip-outside-range",
+        "A trip at a temperature outside the range of its position: the error limit says nothing about it.",
+        "A trip at 85 °C in a position whose range_c is [-30, 60].",
+        "Widen the range so that it holds the trip, or correct the trip's temperature.",
+        acceptable=False,
+    ),
+    Rule(
         "duplicate-part",
         "Two records of one maker with one part number; upper and lower case are alike.",
         "parts/tarnbrook/TB3A-103F38.yaml and parts/old/TB3A-103F38.yaml",

@@ -108,7 +108,7 @@ def ledger_reasons(whose: str, holds: Standing | None, position: Position) -> It
         yield Reason("standing", f"{whose} has no entry in its ledger", False)
         return
     if holds.state in ("withdrawn", "proposed"):
-        message = f"{whose} is {holds.state} since {holds.on.isoformat()} ({holds.by}: {holds.because})"
+        message = f"{whose} is {holds.state} since {holds.on.isoformat()} ({holds.by}: {holds.because.rstrip('.')})"
         yield Reason("standing", message, holds.state == "withdrawn")
     if not is_for(holds, position):
         yield Reason("standing", f"{whose} may be fitted only at {', '.join(holds.only_for)}", True)

@@ -141,8 +141,8 @@ def _trip_reason(found: Budget, trip: TripBudget) -> Reason:
     limit_k = next(t.within_k for t in found.position.trips if t.name == trip.name) or found.position.limit_k
     limit = f"±{number_text(limit_k)} K of {temperature_text(trip.at_c)}"
     if trip.ok is None:
-        return _open("trips", f"{acts}, {limit}", found)
-    return Reason("trips", f"{acts}, {'within' if trip.ok else 'more than'} {limit}", not trip.ok)
+        return _open("trips", f"{acts} against {limit}", found)
+    return Reason("trips", f"{acts}, {'within' if trip.ok else 'not within'} {limit}", not trip.ok)
 
 
 def _open(about: About, message: str, found: Budget) -> Reason:
