@@ -20,6 +20,7 @@ _MODULES = {
     "budget": "positions",
     "swap": "positions",
     "shortlist": "positions",
+    "changes": "changing",
 }
 
 

@@ -10,9 +10,11 @@ from pathlib import Path
 import click
 
 from builder.commands import reading
+from builder.commands.named import stop
 from builder.commands.options import TODAY, common
 from builder.exports import rows
-from builder.problems import Problem, count_text, errors, warnings
+from builder.history import HistoryUnread, Repository, ledger_slips, present_state, states_since
+from builder.problems import Problem, count_text, errors, in_order, warnings
 from builder.records import Catalog, LooseTable, PartRecord
 
 
@@ -20,7 +22,12 @@ from builder.records import Catalog, LooseTable, PartRecord
 @click.argument("paths", nargs=-1, type=click.Path(path_type=Path), metavar="[PATH]...")
 @common
 @TODAY
-def check_command(paths: tuple[Path, ...], records: Path, form: str, today: datetime.datetime | None) -> None:
+@click.option(
+    "--since", metavar="REVISION", help="Check too that the ledger was kept since this revision of the git repository."
+)
+def check_command(
+    paths: tuple[Path, ...], records: Path, form: str, today: datetime.datetime | None, since: str | None
+) -> None:
     """Check the records, all of them or those at PATH.
 
     Every problem of every record in one run. Exit 0 if there is no error, 1 if there is one.
@@ -32,9 +39,28 @@ def check_command(paths: tuple[Path, ...], records: Path, form: str, today: date
     for record in with_tables:
         if record.table is not None and wanted and _below(record.source.file, wanted):
             wanted.append(Path(record.table.file).resolve())
-    found = [problem for problem in catalog.problems if not wanted or _below(problem.file, wanted)]
+    problems = catalog.problems if since is None else (*catalog.problems, *_not_kept(records, since, catalog))
+    found = [problem for problem in in_order(problems) if not wanted or _below(problem.file, wanted)]
     {"table": _print_problems, "json": _print_json_problems, "csv": _print_csv_problems}[form](found, catalog)
     sys.exit(1 if errors(found) else 0)
+
+
+def _not_kept(records: Path, since: str, catalog: Catalog) -> tuple[Problem, ...]:
+    """What of the ledger is not as it was since a revision; that git cannot say ends the command."""
+    repository = Repository(records)
+    try:
+        commit, now = repository.commit(since), present_state(records, catalog)
+        if not repository.leads_to_head(commit):
+            click.echo(_APART.format(revision=commit.short), err=True)
+        return ledger_slips(states_since(repository, commit, now), now)
+    except HistoryUnread as unread:
+        stop(str(unread), 2)
+
+
+_APART = (
+    "Revision {revision} is not among the commits that lead to this one, as far as this clone knows: what was entered there "
+    "counts as removed here. Where a branch is behind, give git merge-base of the two."
+)
 
 
 def _inside(path: Path, records: Path) -> Path:

@@ -278,6 +278,31 @@ RULES = (
         acceptable=False,
     ),
     Rule(
+        "ledger-edited",
+        "An entry of a ledger, of a part or of an alternate at a position, that is not what it was in an earlier revision, or "
+        "entries that stand in another order. Only beadroll check --since REVISION looks for it.",
+        "The entry of 2026-02-10 says approved, where it said restricted two commits ago.",
+        "Restore the entry as it was, and append one that says what holds now.",
+        acceptable=False,
+    ),
+    Rule(
+        "ledger-removed",
+        "An entry of a ledger that stood in an earlier revision and is gone, or a whole ledger with an approval in it, its part "
+        "or alternate with it. An entry that came and went between two revisions is found too. Only beadroll check --since "
+        "REVISION looks for it.",
+        "An alternate was approved last week; today its ledger ends before that entry.",
+        "Put the entry back, and append one that says what holds now, such as withdrawn with the reason.",
+        acceptable=False,
+    ),
+    Rule(
+        "curve-moved-unsigned",
+        "An approved or restricted part whose curve or tolerance band is more than 1 mK from what it was when the last entry of "
+        "its ledger was made. Only beadroll check --since REVISION looks for it.",
+        "The B-value is edited from 3435 to 3380 K in a part that was approved with 3435 K.",
+        "Append an entry that approves the part as it is now, naming the revision of the document, or restore the figures.",
+        acceptable=False,
+    ),
+    Rule(
         "to-be-filled-in",
         "A field still has the text that beadroll intake puts where it cannot know.",
         "maker: FILL-IN",

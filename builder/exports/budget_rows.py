@@ -106,7 +106,7 @@ def budget_answer(budget: Budget, part: str) -> dict[str, Any]:
         "rows": budget_rows(budget),
         "worst_k": rounded(budget.worst_k),
         "meets_limit": budget.meets_limit,
-        "trips": [_trip(trip) for trip in budget.trips],
+        "trips": [trip_answer(trip) for trip in budget.trips],
         "open_margin_codes": _codes(budget.open_margin_codes),
         "short_margin_codes": _codes(budget.short_margin_codes),
         "missing": list(budget.missing),
@@ -117,7 +117,8 @@ def _codes(margin_codes: float) -> int | None:
     return int(margin_codes) if math.isfinite(margin_codes) else None
 
 
-def _trip(trip: TripBudget) -> Row:
+def trip_answer(trip: TripBudget) -> Row:
+    """A trip as JSON answers it."""
     return {
         "name": trip.name,
         "acts_from_c": rounded(trip.acts_from_c),

@@ -59,4 +59,4 @@ def test_every_choice_of_an_option_is_named(name: str, command: click.Command) -
             for choice in parameter.type.choices:
                 assert re.search(rf"[`|\s\\]{re.escape(choice)}[`|\s,.\\]", DOCUMENTED[name]), choice
     formats = next((p.type.choices for p in command.params if "--format" in p.opts), ())
-    assert set(formats) <= {"table", "json", "csv"}
+    assert set(formats) <= {"table", "json", "csv", "markdown"}

@@ -1,0 +1,191 @@
+"""Whether the ledger was kept: nothing of it edited or removed, and no approved curve moved without a new entry."""
+
+from __future__ import annotations
+
+from collections import Counter
+from collections.abc import Iterable, Iterator, Sequence
+from dataclasses import dataclass
+from difflib import SequenceMatcher
+from itertools import count
+
+from builder.history.fields import differing_values
+from builder.history.matching import Pair, R, part_pairs, position_pairs
+from builder.history.repository import Commit, Repository
+from builder.history.revision import State, state_at
+from builder.history.shift import Shift, shift
+from builder.ledger import APPROVING
+from builder.problems import Problem, clipped, in_order, quoted
+from builder.records import PartRecord, PositionRecord, Source
+from builder.records.part import Standing
+from builder.records.position import Alternate
+from builder.records.yaml_text import Path
+from builder.units import signed_text, temperature_text
+
+_APPEND = "Restore it, and append what holds now as a new entry."
+Standings = tuple[Standing, ...]
+
+
+@dataclass(frozen=True, eq=False)
+class _Ledger:
+    """A list of entries as a state had it and as it is now (None: gone), and where what is wrong with it is told."""
+
+    what: str
+    source: Source
+    path: Path
+    before: Standings
+    now: Standings | None
+    revision: str
+
+    @property
+    def key(self) -> tuple[str, str]:
+        """The same for one ledger in every state."""
+        return self.source.file, self.what.casefold()
+
+    def problem(self, path: Path, rule: str, message: str) -> Problem:
+        """A problem of one of its fields."""
+        return self.source.problem((*self.path, *path), rule, message)
+
+
+def states_since(repository: Repository, since: Commit, now: State) -> tuple[State, ...]:
+    """The records at a commit and at all later ones up to HEAD that touched them, the oldest first.
+
+    Raises
+    ------
+    HistoryUnread
+        Git cannot read one of them.
+    """
+    states = [now]
+    for commit in (*repository.commits_since(since), since):
+        states.append(state_at(repository, commit, near=states[-1]))
+    return tuple(reversed(states[1:]))
+
+
+def ledger_slips(states: Sequence[State], now: State) -> tuple[Problem, ...]:
+    """What of the ledger is not as earlier states had it, and approved curves that moved since they were approved.
+
+    The states are taken one after the other, the oldest first: whatever one of them appends belongs to the ledger from
+    then on, so an entry that came and went is missed; what one of them breaks and a later one restores is kept.
+    """
+    kept: dict[tuple[str, str], _Ledger] = {}
+    unsigned: list[Problem] = []
+    settled: set[str] = set()
+    for state in states:
+        parts = list(_matched(part_pairs(state, now), now.catalog.parts))
+        for ledger in (*_of_parts(state, parts), *_of_alternates(state, now)):
+            known = kept.get(ledger.key)
+            if known is None or ledger.before[: len(known.before)] == known.before:
+                kept[ledger.key] = ledger
+        unsigned += _unsigned(state, parts, settled)
+    return in_order([*(problem for ledger in kept.values() for problem in _slips(ledger)), *unsigned])
+
+
+def _matched(pairs: Iterable[Pair[R]], now: Iterable[R]) -> Iterator[tuple[R, R | None]]:
+    """Every record of a state with what it is now, None where it is gone; what cannot be read now is left out."""
+    paired = {pair.now.source.file for pair in pairs if pair.now is not None}
+    for pair in pairs:
+        if pair.before is not None and pair.change != "not readable now":
+            yield pair.before, pair.now
+    yield from ((record, record) for record in now if record.source.file not in paired)
+
+
+def _of_parts(state: State, matched: Iterable[tuple[PartRecord, PartRecord | None]]) -> Iterator[_Ledger]:
+    for before, now in matched:
+        record = now or before
+        what = f"the record of {record.name}"
+        entries = now.part.standing if now else None
+        yield _Ledger(what, record.source, ("standing",), before.part.standing, entries, state.name)
+
+
+def _of_alternates(state: State, now: State) -> Iterator[_Ledger]:
+    for before, place in _matched(position_pairs(state, now), now.catalog.positions):
+        record, found = place or before, _alternates(place)
+        for number, (_, alternate) in _alternates(before).items():
+            i, same = found.get(number, (None, None))
+            path: Path = ("alternates",) if i is None else ("alternates", i, "standing")
+            what = f"the alternate {alternate.part} at {record.position.position}"
+            entries = same.standing if same else None
+            yield _Ledger(what, record.source, path, alternate.standing, entries, state.name)
+
+
+def _alternates(place: PositionRecord | None) -> dict[str, tuple[int, Alternate]]:
+    return {a.part.casefold(): (i, a) for i, a in enumerate(place.position.alternates)} if place else {}
+
+
+def _slips(ledger: _Ledger) -> Iterator[Problem]:
+    before, now = ledger.before, ledger.now
+    if now is None:
+        yield from _gone(ledger)
+    elif now[: len(before)] == before:
+        return
+    elif not Counter(before) - Counter(now):
+        message = f"the entries do not stand in the order that they had in revision {ledger.revision}. Restore it; a new entry goes to the end."
+        yield ledger.problem((), "ledger-edited", message)
+    else:
+        yield from _edited_or_removed(ledger, now)
+
+
+def _gone(ledger: _Ledger) -> Iterator[Problem]:
+    """A whole ledger that is no longer there; one that never approved anything may go."""
+    if any(entry.state in APPROVING for entry in ledger.before):
+        entries = ", ".join(_entry(entry) for entry in ledger.before)
+        message = (
+            f"{clipped(ledger.what, 100)} is gone, whose ledger stood in revision {ledger.revision}: {entries}. "
+            "Put it back, and append an entry that withdraws it."
+        )
+        yield ledger.problem((), "ledger-removed", message)
+
+
+def _edited_or_removed(ledger: _Ledger, now: Standings) -> Iterator[Problem]:
+    before = ledger.before
+    for _, first, end, first_now, end_now in SequenceMatcher(None, before, now, autojunk=False).get_opcodes():
+        for i, at in zip(range(first, end), count(first_now)):
+            if before[i] in now:
+                continue
+            if at < end_now:
+                message = f"the entry {_entry(before[i])} stood otherwise in revision {ledger.revision}: {_edits(before[i], now[at])}. {_APPEND}"
+                yield ledger.problem((at,), "ledger-edited", message)
+            else:
+                message = f"the entry {_entry(before[i])} stood in revision {ledger.revision} and is gone. {_APPEND}"
+                yield ledger.problem((), "ledger-removed", message)
+
+
+def _edits(before: Standing, now: Standing) -> str:
+    edits = differing_values((), before.model_dump(mode="json"), now.model_dump(mode="json"))
+    return ", ".join(f"{edit.field} was {quoted(edit.before)}" for edit in edits)
+
+
+def _entry(entry: Standing) -> str:
+    return f"{entry.state} on {entry.on.isoformat()} by {clipped(entry.by)}"
+
+
+def _unsigned(
+    state: State, matched: Iterable[tuple[PartRecord, PartRecord | None]], settled: set[str]
+) -> Iterator[Problem]:
+    """Parts whose last entry stood in a state already, and whose curve is not the one that it had there.
+
+    The first state that has the last entry settles a part: what it shows is what was approved.
+    """
+    for before, now in matched:
+        if now is None or now.source.file in settled or now.part.state() not in APPROVING:
+            continue
+        if len(before.part.standing) >= len(now.part.standing):
+            settled.add(now.source.file)
+            moved = shift(before, now) if before is not now else None
+            if moved is not None and moved.moved:
+                path = ("standing", len(now.part.standing) - 1)
+                yield now.source.problem(path, "curve-moved-unsigned", _moved_text(moved, now, state))
+
+
+def _moved_text(moved: Shift, record: PartRecord, state: State) -> str:
+    cure = "Append an entry that approves it as it is, or restore the figures."
+    return f"{_shift_text(moved)} since revision {state.name}, where the part stood as {record.part.state()} already. {cure}"
+
+
+def _shift_text(moved: Shift) -> str:
+    if moved.worst_k and moved.at_c is not None:
+        return f"the curve moved by {signed_text(moved.worst_k, 3)} K at {temperature_text(moved.at_c)}"
+    if moved.band_at_c is not None:
+        return (
+            f"the tolerance band moved by {signed_text(moved.band_worst_k, 3)} K at {temperature_text(moved.band_at_c)}"
+        )
+    return "the curve shares no range with the one it was"
