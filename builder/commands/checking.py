@@ -10,10 +10,8 @@ from pathlib import Path
 import click
 
 from builder.commands import reading
-from builder.commands.named import stop
 from builder.commands.options import TODAY, common
 from builder.exports import rows
-from builder.history import HistoryUnread, Repository, ledger_slips, present_state, states_since
 from builder.problems import Problem, count_text, errors, in_order, warnings
 from builder.records import Catalog, LooseTable, PartRecord
 
@@ -46,21 +44,10 @@ def check_command(
 
 
 def _not_kept(records: Path, since: str, catalog: Catalog) -> tuple[Problem, ...]:
-    """What of the ledger is not as it was since a revision; that git cannot say ends the command."""
-    repository = Repository(records)
-    try:
-        commit, now = repository.commit(since), present_state(records, catalog)
-        if not repository.leads_to_head(commit):
-            click.echo(_APART.format(revision=commit.short), err=True)
-        return ledger_slips(states_since(repository, commit, now), now)
-    except HistoryUnread as unread:
-        stop(str(unread), 2)
+    # Read only when it is asked for: it needs circuits and swaps, which the rest of check does not.
+    from builder.commands.since import slips_since
 
-
-_APART = (
-    "Revision {revision} is not among the commits that lead to this one, as far as this clone knows: what was entered there "
-    "counts as removed here. Where a branch is behind, give git merge-base of the two."
-)
+    return slips_since(records, since, catalog)
 
 
 def _inside(path: Path, records: Path) -> Path:
