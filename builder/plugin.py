@@ -31,7 +31,7 @@ from mkdocs.structure.pages import Page as SitePage
 from mkdocs.structure.toc import AnchorLink, TableOfContents
 
 from builder.crosschecks import CheckedCatalog, checked_catalog
-from builder.pages.page import DataFile, Heading, Page
+from builder.pages.page import CopiedFile, DataFile, Heading, Page
 from builder.pages.site import site
 from builder.problems import count_text, errors, warnings
 from builder.processes import shared_out
@@ -185,7 +185,9 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         self._pages_in_nav = {page.path: page for page in self._pages if page.in_nav}
         return files
 
-    def _file(self, item: Page | DataFile, config: MkDocsConfig) -> File:
+    def _file(self, item: Page | DataFile | CopiedFile, config: MkDocsConfig) -> File:
+        if isinstance(item, CopiedFile):
+            return File.generated(config, item.path, abs_src_path=str(item.source))
         if isinstance(item, DataFile):
             return WrittenFile(item.path, config, item.content)
         if item.in_nav:

@@ -102,13 +102,13 @@ def _out_of_order(ledger: Sequence[Entry]) -> Iterator[Problem]:
 def _shared_own_numbers(catalog: Catalog) -> Iterator[Problem]:
     by_number: dict[str, list[PartRecord]] = defaultdict(list)
     for record in catalog.parts:
-        if record.part.own_number:
-            by_number[record.part.own_number.casefold()].append(record)
+        if record.own_number:
+            by_number[record.own_number.casefold()].append(record)
     for sharing in by_number.values():
         for record, other in zip(sharing, [*sharing[1:], sharing[0]], strict=True):
             if other is not record:
                 message = (
-                    f"{clipped(record.part.own_number or '')} is the own number of {other.name} too. Give each part its "
+                    f"{clipped(record.own_number or '')} is the own number of {other.name} too. Give each part its "
                     "own, or accept the finding where one number buys either."
                 )
                 yield record.source.problem(("own_number",), "own-number-shared", message, "warning")

@@ -67,7 +67,7 @@ def is_for(standing: Standing, position: Position) -> bool:
 
 def goes_by(part: PartRecord, name: str) -> bool:
     """Whether a name in a position's record is this part's: its number, maker and number, or own number."""
-    return name.casefold() in (n.casefold() for n in (part.part.part, part.name, part.part.own_number or ""))
+    return name.casefold() in (n.casefold() for n in (part.number, part.name, part.own_number or ""))
 
 
 def _last(standings: tuple[Standing, ...]) -> Standing | None:

@@ -14,6 +14,7 @@ from builder.circuit import Budget, Thermistor, budget, firmware_part
 from builder.comparisons.nearest import NearestParts, Neighbour
 from builder.crosschecks import CheckedCatalog
 from builder.decisions import Swap, swap
+from builder.ledger import Entry, entries, replaced_since
 from builder.pages.paths import Paths
 from builder.part_curve import PartCurve, Sample, whole_steps_c
 from builder.problems import Problem
@@ -105,6 +106,23 @@ class Context:
     @cached_property
     def _places(self) -> Mapping[str, int]:
         return {record.source.file: place for place, record in enumerate(self.catalog.parts)}
+
+    @cached_property
+    def entries(self) -> tuple[Entry, ...]:
+        """Every entry of the ledger, the oldest first."""
+        return entries(self.catalog)
+
+    def outdated(self, record: PartRecord) -> list[Entry]:
+        """The decisions about a part that rest on a revision which has been replaced."""
+        return self._outdated_by_part.get(record.source.file, [])
+
+    @cached_property
+    def _outdated_by_part(self) -> Mapping[str, list[Entry]]:
+        by_part: dict[str, list[Entry]] = defaultdict(list)
+        for entry in self.entries:
+            if replaced_since(entry):
+                by_part[entry.part.source.file].append(entry)
+        return by_part
 
     def positions_of(self, record: PartRecord) -> list[tuple[PositionRecord, str]]:
         """Where a part is fitted or an alternate, and which of the two."""

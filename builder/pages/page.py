@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass
+from pathlib import Path
 
 
 @dataclass(frozen=True)
@@ -49,3 +50,11 @@ class DataFile:
     path: str
     content: Callable[[], str]
     made_from: tuple[str, ...] | None = None
+
+
+@dataclass(frozen=True)
+class CopiedFile:
+    """A file of the site that is the copy of one beside a record: a document."""
+
+    path: str
+    source: Path

@@ -10,6 +10,7 @@ import numpy as np
 from builder.curves.curve import Mask
 from builder.exports.curve_rows import COLUMNS, curve_csv, curve_rows
 from builder.pages.context import SAMPLE_STEP_K, Context
+from builder.pages.documents_section import documents_section, outdated_sources
 from builder.pages.doubts import problem_notice
 from builder.pages.figures import Dots, resistance_figure, tolerance_figure
 from builder.pages.fits_section import fits_section
@@ -59,6 +60,7 @@ def part_page(record: PartRecord, context: Context) -> Page:
             context.paths.maker(part.maker),
             repr(shown_neighbours(record, context)),
             repr(_uses(record, context)),
+            outdated_sources(record, context),
         ),
     )
 
@@ -96,7 +98,7 @@ def _body(record: PartRecord, context: Context) -> Html:
             nearest_section(record, context),
             _limits_section(part),
             _use_section(record, context),
-            joined([_documents_section(part), _accepted_table(part)]),
+            joined([documents_section(record, context), _accepted_table(part)]),
             ledger_table(part.standing, "Standings of this part, the newest first")
             if part.standing
             else tag("p", "No entry yet."),
@@ -335,18 +337,3 @@ def _use_section(record: PartRecord, context: Context) -> Html:
     if not rows:
         return tag("p", "No position of the catalog names it.")
     return table(("position", "board", "purpose", "as"), rows, caption="Positions that name this part")
-
-
-def _documents_section(part: Part) -> Html:
-    if not part.documents:
-        return tag("p", "The record names none.")
-    rows = [
-        (
-            link(d.title, d.link) if d.link else d.title,
-            d.revision,
-            d.dated.isoformat() if d.dated else None,
-            d.file,
-        )
-        for d in part.documents
-    ]
-    return table(("document", "revision", "dated", "file"), rows, caption="What the figures were read from")

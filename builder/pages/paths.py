@@ -11,10 +11,12 @@ from functools import cached_property
 from types import MappingProxyType
 
 from builder.pages.html import slug
-from builder.records import Catalog, PartRecord, PositionRecord
+from builder.records import Catalog, DocumentFile, PartRecord, PositionRecord
 
 _LONGEST = 80
 _HASH_DIGITS = 6
+_DOCUMENT_DIGITS = 16
+_MARKDOWN = (".md", ".mkd", ".mkdn", ".mdown", ".markdown")
 # Windows keeps the names of its devices, whatever follows after a point.
 _DEVICES = ("con", "prn", "aux", "nul", *(f"{port}{number}" for port in ("com", "lpt") for number in range(10)))
 _TAKEN = frozenset(("index", *_DEVICES))
@@ -53,6 +55,13 @@ class Paths:
     def maker(self, maker: str) -> str:
         """`parts/<maker>/index.html`."""
         return f"parts/{self._makers[maker]}/index.html"
+
+    def document(self, file: DocumentFile) -> str:
+        """`documents/<digits of its SHA-256>/<file>`: a file that several records name is there once."""
+        kind = f".{slug(file.path.suffix)}" if file.path.suffix else ""
+        # As a Markdown file it would become a page.
+        shown = ".txt" if kind in _MARKDOWN else kind
+        return f"documents/{file.sha256[:_DOCUMENT_DIGITS]}/{_file_slug(file.path.stem)}{shown}"
 
     @cached_property
     def _makers(self) -> Mapping[str, str]:

@@ -4,8 +4,10 @@ from __future__ import annotations
 
 from typing import Any
 
+from builder.ledger import standing_of
 from builder.pages.budget_section import budget_section, codes_section, position_sources, verdict_line
 from builder.pages.context import Context
+from builder.pages.documents_section import rests_on
 from builder.pages.doubts import problem_notice
 from builder.pages.figures.schematic import schematic_figure
 from builder.pages.html import Html, facts, joined, link, notice, table, tag
@@ -188,18 +190,20 @@ def _parts(record: PositionRecord, context: Context) -> Html:
             rated_text(fitted.part),
             "fitted",
             standing_badge(fitted.part.state()),
+            rests_on(fitted.part, standing_of(fitted)),
         )
     ]
     for alternate in position.alternates:
         part = context.catalog.part(alternate.part).part
-        here_state = alternate.standing[-1].state if alternate.standing else None
+        here_standing = alternate.standing[-1] if alternate.standing else None
         rows.append(
             (
                 _part_link(alternate.part, here, context),
                 part.maker,
                 rated_text(part),
                 "alternate",
-                standing_badge(here_state),
+                standing_badge(here_standing.state if here_standing else None),
+                rests_on(part, here_standing),
             )
         )
     ledgers = [
@@ -207,9 +211,8 @@ def _parts(record: PositionRecord, context: Context) -> Html:
         for alternate in position.alternates
         if alternate.standing
     ]
-    return joined(
-        [table(("part", "maker", "rated", "as", "standing here"), rows, caption="Parts of this position"), *ledgers]
-    )
+    headings = ("part", "maker", "rated", "as", "standing here", "rests on")
+    return joined([table(headings, rows, caption="Parts of this position"), *ledgers])
 
 
 def _requirements(position: Position) -> Html:

@@ -8,10 +8,11 @@ from builder.crosschecks import RULES, CheckedCatalog
 from builder.pages.budget_section import budget_csv
 from builder.pages.checks_page import checks_page, rule_page
 from builder.pages.context import Context
+from builder.pages.documents_section import document_files
 from builder.pages.families_page import families_page
 from builder.pages.home_page import home_page
 from builder.pages.maker_page import maker_pages
-from builder.pages.page import DataFile, Page
+from builder.pages.page import CopiedFile, DataFile, Page
 from builder.pages.part_page import part_csv, part_page
 from builder.pages.parts_page import parts_data, parts_page
 from builder.pages.position_page import position_page
@@ -21,7 +22,7 @@ from builder.pages.side_by_side_page import curve_file, side_by_side_page
 from builder.pages.swap_page import swap_csv, swap_page
 
 
-def site(checked: CheckedCatalog, *, about: str = "", figures: bool = True) -> Iterator[Page | DataFile]:
+def site(checked: CheckedCatalog, *, about: str = "", figures: bool = True) -> Iterator[Page | DataFile | CopiedFile]:
     """Every generated page and file.
 
     `about` is what the home page says of the catalog; pages without figures cost less, for measuring what figures cost.
@@ -38,6 +39,7 @@ def site(checked: CheckedCatalog, *, about: str = "", figures: bool = True) -> I
     yield from (rule_page(rule, context) for rule in RULES)
     yield record_format_page()
     yield from schema_files()
+    yield from document_files(context)
     for record in context.catalog.parts:
         yield part_page(record, context)
         yield part_csv(record, context)

@@ -3,10 +3,11 @@
 from builder.records.catalog import Catalog, LooseStanding, LooseTable, UnknownPart, read_catalog
 from builder.records.part import Part
 from builder.records.position import Position
-from builder.records.record import PartRecord, PositionRecord, Source
+from builder.records.record import DocumentFile, PartRecord, PositionRecord, Source
 
 __all__ = [
     "Catalog",
+    "DocumentFile",
     "LooseStanding",
     "LooseTable",
     "Part",

@@ -20,7 +20,7 @@ from builder.records import yaml_text
 from builder.records.part import Document, Part, Rated, RTTable, Standing
 from builder.records.position import Position
 from builder.records.quantities import RecordModel
-from builder.records.record import KeptPartRecord, PartRecord, PositionRecord, Source, known_of
+from builder.records.record import DocumentFile, KeptPartRecord, PartRecord, PositionRecord, Source, known_of
 from builder.records.table import RawTable, TableData, csv_table, table_data
 from builder.records.wording import worded
 
@@ -373,15 +373,18 @@ def _kind(value: object) -> tuple[str, str]:
 
 def _part_added(reading: _Reading, folder: Path, source: Source, part: Part) -> bool:
     """Whether the part could be added: its documents and its table's rows are looked at first."""
-    for i, document in enumerate(part.documents):
-        _check_document(reading, folder, source, ("documents", i), document)
+    files = {
+        document.file: found
+        for i, document in enumerate(part.documents)
+        if document.file and (found := _document_file(reading, folder, source, ("documents", i), document))
+    }
     table = None
     if part.r_t_table is not None:
         table = _table(reading, folder, source, part.r_t_table, part.rated)
         if table is None:
             return False
     falls = table is None or table.falls
-    (reading.parts if falls else reading.curveless).append(PartRecord(part, source, table, reading.digest, folder))
+    (reading.parts if falls else reading.curveless).append(PartRecord(part, source, table, reading.digest, files))
     return falls
 
 
@@ -451,20 +454,27 @@ def _file_beside(reading: _Reading, folder: Path, source: Source, where: yaml_te
     return path
 
 
-def _check_document(reading: _Reading, folder: Path, source: Source, where: yaml_text.Path, document: Document) -> None:
-    path = _file_beside(reading, folder, source, (*where, "file"), document.file) if document.file else None
+def _document_file(
+    reading: _Reading, folder: Path, source: Source, where: yaml_text.Path, document: Document
+) -> DocumentFile | None:
+    """A document's file, or None with the reason reported; one that is not as the record says is reported too."""
+    path = _file_beside(reading, folder, source, (*where, "file"), document.file or "")
     if path is None:
-        return
+        return None
     reading.seen[path.as_posix()] = _UNREAD
     try:
         found = hashlib.sha256(path.read_bytes()).hexdigest()
     except OSError as error:
         _report_unreadable(reading, error)
-        return
+        return None
     reading.seen[path.as_posix()] = found
-    if found != document.sha256:
+    if document.sha256 is None:
+        message = f"is missing, so nobody would notice another file in its place. Add sha256: {found}"
+        reading.report(source.problem((*where, "sha256"), "hash-missing", message, "warning"))
+    elif found != document.sha256:
         message = "is not that of the file beside the record. Was the document replaced? Then add its revision as a new entry."
         reading.report(source.problem((*where, "sha256"), "file-hash-differs", message))
+    return DocumentFile(path, found)
 
 
 def _duplicates(catalog: Catalog) -> Iterator[Problem]:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Iterator, Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from functools import cached_property
 from pathlib import Path
 
@@ -28,15 +28,23 @@ class Source:
         return Problem(self.file, line, yaml_text.field_name(path), rule, message, severity)
 
 
+@dataclass(frozen=True)
+class DocumentFile:
+    """A document's file that lies beside a record, and the SHA-256 that was found for it."""
+
+    path: Path
+    sha256: str
+
+
 @dataclass(frozen=True, eq=False)
 class PartRecord:
-    """A part, the numbers of its table where it has one, where it was read, a digest of all that was read for it, and its folder."""
+    """A part, the numbers of its table where it has one, where it was read, a digest of all that was read for it, its documents' files."""
 
     part: Part
     source: Source
     table: TableData | None = None
     digest: str = ""
-    folder: Path = Path()
+    files: Mapping[str, DocumentFile] = field(default_factory=dict)
 
     @cached_property
     def number(self) -> str:
@@ -74,7 +82,7 @@ class KeptPartRecord(PartRecord):
     def __init__(self, known: Mapping[str, str | None], fetch: Callable[[], PartRecord]) -> None:
         names = {name: known[name] for name in ("number", "maker", "own_number", "digest")}
         source = Source(str(known["file"]), str(known["below"]), _KeptLines(fetch))
-        self.__dict__.update(names, source=source, folder=Path(str(known["folder"])), _fetch=fetch)
+        self.__dict__.update(names, source=source, _fetch=fetch)
 
     @cached_property
     def part(self) -> Part:
@@ -85,6 +93,11 @@ class KeptPartRecord(PartRecord):
     def table(self) -> TableData | None:
         """The numbers of its table."""
         return self._fetched.table
+
+    @cached_property
+    def files(self) -> Mapping[str, DocumentFile]:
+        """The files of its documents."""
+        return self._fetched.files
 
     @cached_property
     def _fetched(self) -> PartRecord:
@@ -111,5 +124,5 @@ class _KeptLines(Mapping[yaml_text.Path, int]):
 def known_of(record: PartRecord) -> dict[str, str | None]:
     """What a record that is kept is known by before it is fetched."""
     names = {"number": record.number, "maker": record.maker, "own_number": record.own_number}
-    places = {"file": record.source.file, "below": record.source.below, "folder": record.folder.as_posix()}
+    places = {"file": record.source.file, "below": record.source.below}
     return names | places | {"digest": record.digest}

@@ -83,6 +83,7 @@ def test_the_demo_s_findings_are_those_it_is_made_to_show(monkeypatch: pytest.Mo
     monkeypatch.chdir(ROOT)
     problems = checked_catalog(Path("parts"), today=datetime.date(2026, 12, 1)).problems
     assert [(Path(p.file).stem, p.rule) for p in problems] == [
+        ("RT1", "revision-replaced"),
         ("FD5-502J", "review-overdue"),
         ("FD9-223M", "tolerance-missing"),
         ("YC3-103H0", "document-missing"),
