@@ -43,7 +43,8 @@ def _aligned(column: Column, cells: list[str]) -> list[str]:
     """A column's heading and cells, all of one width."""
     if not column.left:
         decimals = [len(cell) - len(cell.partition(".")[0]) for cell in cells]
-        cells = [cell + " " * (max(decimals) - own) for cell, own in zip(cells, decimals, strict=True)]
+        most = max(decimals, default=0)
+        cells = [cell + " " * (most - own) for cell, own in zip(cells, decimals, strict=True)]
     lines = [column.heading, *cells]
     width = max(map(len, lines))
     return [line.ljust(width) if column.left else line.rjust(width) for line in lines]
