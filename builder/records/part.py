@@ -211,6 +211,11 @@ class Part(RecordModel):
     part: Text = Field(description="The maker's part number, as text.", examples=["TB3A-103F38"])
     maker: Text = Field(description="Who makes it.", examples=["Tarnbrook Ceramics"])
     own_number: Text | None = Field(None, description="The team's internal number for the part.", examples=["HS-10473"])
+    packaging_suffixes: Several[Text] = Field(
+        (),
+        description="What the maker adds to the number for the packaging alone: with it a bill of materials means this part.",
+        examples=[["-TR", "/500"]],
+    )
     description: Text | None = Field(None, description="What it is, in a line.")
     body: Body = Field(description="How it is built.")
     rated: Rated = Field(description="Rated resistance and temperature.")
