@@ -21,6 +21,7 @@ _MODULES = {
     "swap": "positions",
     "shortlist": "positions",
     "changes": "changing",
+    "bom": "bom",
 }
 
 

@@ -2,12 +2,12 @@
 
 from __future__ import annotations
 
-from pathlib import Path
 from typing import BinaryIO
 
 import click
 
 from builder.commands.named import stop
+from builder.commands.options import file_name
 from builder.intake import Unreadable, record_text
 
 
@@ -30,7 +30,7 @@ def intake_command(file: BinaryIO, **options: str | None) -> None:
 
     Prints a whole record to be filled in. What was recognised and what was assumed stands in it as comments.
     """
-    name = "standard input" if file.name in ("-", "<stdin>") else Path(file.name).name
+    name = file_name(file)
     try:
         click.echo(record_text(file.read(), name=name, **options), nl=False)
     except Unreadable as refused:

@@ -5,7 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable
 from pathlib import Path
-from typing import Any, TypeVar
+from typing import Any, BinaryIO, TypeVar
 
 import click
 
@@ -58,6 +58,11 @@ NO_CACHE = click.option(
 def common(command: _Command) -> _Command:
     """The options that every command about the records takes."""
     return RECORDS(FORMAT(NO_CACHE(command)))
+
+
+def file_name(file: BinaryIO) -> str:
+    """What messages call a file argument."""
+    return "standard input" if file.name in ("-", "<stdin>") else Path(file.name).name
 
 
 class Degrees(click.ParamType):  # type: ignore[type-arg]  # generic from click 8.3 on

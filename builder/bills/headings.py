@@ -1,0 +1,152 @@
+"""What people write above the columns of a bill, in four languages, and which column is what."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping, Sequence
+from dataclasses import dataclass
+from typing import Literal, get_args
+
+from builder.bills.spelling import heading_key
+from builder.problems import clipped
+
+Role = Literal["reference", "number", "maker", "own-number", "quantity"]
+ROLES: tuple[Role, ...] = get_args(Role)
+
+
+def _pairs(first: str, second: str) -> frozenset[str]:
+    """Every word of the first with every word of the second behind it."""
+    return frozenset(one + other for one in first.split() for other in second.split())
+
+
+def words(text: str) -> frozenset[str]:
+    """The words of a text."""
+    return frozenset(text.split())
+
+
+_MAKER = "maker makers manufacturer manufacturers mfr mfg mfgr manuf manf producer"
+_OWN = "own our internal inhouse house company"
+_NUMBER = "number no nr num pn partnumber partno partnr partnum part articlenumber articleno itemnumber itemno"
+_PLAIN_NUMBER = words(
+    "part partnumber partno partnr partnum partcode pn number ordercode ordernumber orderingcode"
+    " teilenummer teilenr bestellnummer bestellnr numerodepiece nodepiece numerodepieza nodepieza"
+)
+_TYPE = words("typenumber type typ typbezeichnung bauteil piece pieza")
+# In French and Spanish the reference may be the part's; a column of its own then says where it stands.
+_REFERENCE = words("reference references ref refs referenz referenzen referencia referencias")
+_PLACE = words("position positions location locations place places posicion posiciones")
+
+# Of each role the first kind of word that a column has decides: the later ones mean it only where nothing else does.
+_HEADINGS: Mapping[Role, tuple[frozenset[str], ...]] = {
+    "reference": (
+        words(
+            "refdes refdesignator refdesignators designator designators referencedesignator referencedesignators"
+            " referencedesignation refdesignation partreference partreferences componentreference"
+            " referenzbezeichner bauteilreferenz bezeichner kennzeichen einbauplatz bestuckungsplatz"
+            " repere reperes reperetopo reperetopologique designador designadores"
+        ),
+        _REFERENCE,
+        _PLACE,
+    ),
+    "number": (
+        _pairs(_MAKER, _NUMBER)
+        | words(
+            "mpn mpns herstellernummer herstellernr herstellerteilenummer herstellerteilenr herstellerartikelnummer"
+            " herstellerartikelnr herstellerbestellnummer herstellertyp herstellerbezeichnung"
+            " referencefabricant reffabricant numerofabricant nofabricant codefabricant numerodufabricant"
+            " numerodepiecefabricant referencedufabricant"
+            " referenciafabricante referenciadelfabricante reffabricante numerofabricante numerodelfabricante"
+            " numerodefabricante numerodepiezadelfabricante codigofabricante codigodelfabricante"
+        ),
+        _PLAIN_NUMBER,
+        _TYPE,
+        _REFERENCE,
+    ),
+    "maker": (
+        words(
+            "maker manufacturer mfr mfg mfgr manuf manf makername producer hersteller fabricant fabricante marque marca"
+        )
+        | _pairs("manufacturer mfr mfg maker", "name"),
+    ),
+    "own-number": (
+        _pairs(_OWN, f"{_NUMBER} code")
+        | words(
+            "ipn itemnumber itemno materialnumber materialno stocknumber stockno stockcode articlenumber articleno"
+            " internenummer internenr interneteilenummer eigenenummer sachnummer sachnr materialnummer materialnr"
+            " artikelnummer artikelnr hausnummer"
+            " referenceinterne refinterne numerointerne codeinterne codearticle numerodarticle nodarticle"
+            " referenciainterna refinterna numerointerno codigointerno codigodearticulo numerodearticulo"
+        ),
+        _PLAIN_NUMBER,
+        _REFERENCE,
+    ),
+    "quantity": (
+        words(
+            "quantity quantities qty qnty quant count amount pieces pcs menge anzahl stuckzahl stuck stk"
+            " quantite qte nombre cantidad cant unidades"
+        )
+        | _pairs("quantity qty", "perboard perunit perassembly perpcb"),
+    ),
+}
+_DESCRIPTION = words(
+    "description desc descr partdescription value comment comments remark remarks note notes category"
+    " beschreibung bezeichnung benennung wert kommentar bemerkung"
+    " designation valeur commentaire remarque descripcion denominacion valor comentario"
+)
+_FITTED = words(
+    "fitted fit populate populated mount mounted placed assemble assembled stuffed"
+    " bestuckt bestucken bestuckung monte montes equipe montado montar"
+)
+NOT_FITTED = words(
+    "dnp dnf dni dnm dns notfitted notpopulated notmounted unfitted nofit nopop noplace nomount"
+    " nichtbestuckt nichtbestucken nb nonmonte nonequipe nemontepas nopasmonter nomontar nomontado"
+) | _pairs("donot", "fit populate place mount install stuff assemble")
+
+
+@dataclass(frozen=True)
+class Columns:
+    """The columns of a bill by what they hold, counted from 0."""
+
+    of: Mapping[Role, int]
+    descriptions: tuple[int, ...]
+    fitted: tuple[int, ...]
+    not_fitted: tuple[int, ...]
+    doubt: str = ""
+
+    @property
+    def are_usable(self) -> bool:
+        """Whether some column holds a part's number."""
+        return "number" in self.of or "own-number" in self.of
+
+    @property
+    def count(self) -> int:
+        """How many columns were recognised."""
+        return len(self.of) + len(self.descriptions) + len(self.fitted) + len(self.not_fitted)
+
+
+def columns(headings: Sequence[str], chosen: Mapping[Role, str]) -> Columns | None:
+    """What a row says as headings; None where it lacks one that was chosen."""
+    keys = [heading_key(heading) for heading in headings]
+    of: dict[Role, int] = {}
+    doubts: list[str] = []
+    for role in sorted(ROLES, key=lambda role: role not in chosen):
+        kinds = (frozenset([heading_key(chosen[role])]),) if role in chosen else _HEADINGS[role]
+        found = next(filter(None, (_places(keys, kind, of.values()) for kind in kinds)), [])
+        if role in chosen and not found:
+            return None
+        if len(found) > 1:
+            doubts.append(_doubt(role, [headings[i] for i in found]))
+        if found:
+            of[role] = found[0]
+    others = (_places(keys, kind, of.values()) for kind in (_DESCRIPTION, _FITTED, NOT_FITTED))
+    descriptions, fitted, not_fitted = map(tuple, others)
+    return Columns(of, descriptions, fitted, not_fitted, " ".join(doubts))
+
+
+def _places(keys: Sequence[str], meant: frozenset[str], taken: Iterable[int]) -> list[int]:
+    # The first of several makers: "Manufacturer part number 1".
+    return [i for i, key in enumerate(keys) if {key, key.replace("1", "")} & meant and i not in taken]
+
+
+def _doubt(role: Role, headings: Sequence[str]) -> str:
+    shown = " and ".join(clipped(" ".join(heading.split())) for heading in headings)
+    return f"the headings {shown} both say {role.replace('-', ' ')}. Choose one with --{role}, or rename one."

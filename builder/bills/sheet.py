@@ -1,0 +1,28 @@
+"""A file's cells as text, whatever kind of file it is."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+# A bill of this many lines is none; a file that claims more is not read to its end.
+MOST_LINES = 200_000
+
+
+@dataclass(frozen=True)
+class Row:
+    """One row's cells, and the line of the file or the row of the sheet that it begins on."""
+
+    line: int
+    cells: tuple[str, ...]
+
+    def cell(self, column: int | None) -> str:
+        """A cell's text on one line; empty where the row has no such cell."""
+        return " ".join(self.cells[column].split()) if column is not None and column < len(self.cells) else ""
+
+
+@dataclass(frozen=True)
+class Sheet:
+    """The rows that are not empty; a text file is a sheet without a name."""
+
+    name: str
+    rows: tuple[Row, ...]
