@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterator
 from dataclasses import dataclass
 from typing import Literal
@@ -22,6 +23,9 @@ About = Literal[
     "standing",
     "lifecycle",
 ]
+
+# Every grade of AEC-Q200 is for a range of temperatures that holds the next one's: 0 is the widest.
+_GRADE = re.compile("aec-q200 grade [0-4]")
 
 
 @dataclass(frozen=True)
@@ -80,11 +84,15 @@ def _range(position: Position, part: Part) -> Iterator[Reason]:
 
 
 def _qualification(position: Position, part: Part) -> Iterator[Reason]:
-    stated = {text.casefold() for text in part.qualification}
     for asked in position.requires.qualification:
-        if asked.casefold() not in stated:
-            has = f"it has {', '.join(part.qualification)}" if stated else "it has none"
+        if not any(_covers(stated.casefold(), asked.casefold()) for stated in part.qualification):
+            has = f"it has {', '.join(part.qualification)}" if part.qualification else "it has none"
             yield Reason("qualification", f"{asked} is required, {has}", True)
+
+
+def _covers(stated: str, asked: str) -> bool:
+    grades = [_GRADE.fullmatch(text) for text in (stated, asked)]
+    return stated == asked or (all(grades) and stated < asked)
 
 
 def _time_constant(position: Position, part: Part) -> Iterator[Reason]:

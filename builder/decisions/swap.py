@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterator
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Literal
 
 from builder.circuit import DEFAULT_STEP_K, Budget, Thermistor, TripBudget, budget, firmware_part, thermistor
@@ -105,11 +105,12 @@ def _is_met(found: Budget) -> bool | None:
 
 def _reading_reasons(before: Budget, after: Budget, new_firmware: Budget | None) -> Iterator[Reason]:
     yield _error_reason(after)
-    yield from (_trip_reason(after, trip) for trip in after.trips)
+    yield from _trip_reasons(after)
     if _is_met(after) is False:
         yield from _new_firmware_reasons(after, new_firmware)
-    if _is_met(before) is False:
-        yield Reason("error", f"the fitted part does not do either: {_error_reason(before).message}", False)
+    for reason in (_error_reason(before), *_trip_reasons(before)):
+        if reason.against:
+            yield Reason(reason.about, f"the fitted part itself: {reason.message}", False)
     yield from _fault_reasons(after)
 
 
@@ -119,8 +120,8 @@ def _new_firmware_reasons(after: Budget, new_firmware: Budget | None) -> Iterato
         message = f"no {after.position.firmware.method} equation fits its curve over {over}, so no firmware can be made"
         yield Reason("error", message, True)
         return
-    for reason in (_error_reason(new_firmware), *(_trip_reason(new_firmware, trip) for trip in new_firmware.trips)):
-        yield Reason(reason.about, f"with new firmware: {reason.message}", reason.against, reason.missing)
+    for reason in (_error_reason(new_firmware), *_trip_reasons(new_firmware)):
+        yield replace(reason, message=f"with new firmware: {reason.message}")
 
 
 def _error_reason(found: Budget) -> Reason:
@@ -136,13 +137,19 @@ def _error_reason(found: Budget) -> Reason:
     return Reason("error", f"{worst} {compared} {limit}", not found.meets_limit)
 
 
-def _trip_reason(found: Budget, trip: TripBudget) -> Reason:
-    acts = f"{trip.name} acts between {_degrees(trip.acts_from_c)} and {_degrees(trip.acts_to_c)}"
-    limit_k = next(t.within_k for t in found.position.trips if t.name == trip.name) or found.position.limit_k
-    limit = f"±{number_text(limit_k)} K of {temperature_text(trip.at_c)}"
-    if trip.ok is None:
-        return _open("trips", f"{acts} against {limit}", found)
-    return Reason("trips", f"{acts}, {'within' if trip.ok else 'not within'} {limit}", not trip.ok)
+def _trip_reasons(found: Budget) -> Iterator[Reason]:
+    for trip, acts in zip(found.position.trips, found.trips, strict=True):
+        limit = f"±{number_text(trip.within_k or found.position.limit_k)} K of {temperature_text(trip.at_c)}"
+        if acts.ok is None:
+            yield _open("trips", f"{_acts_text(acts)} against {limit}", found)
+        else:
+            yield Reason("trips", f"{_acts_text(acts)}, {'within' if acts.ok else 'not within'} {limit}", not acts.ok)
+
+
+def _acts_text(trip: TripBudget) -> str:
+    if math.isnan(trip.acts_from_c + trip.acts_to_c):
+        return f"{trip.name} does not act on every board"
+    return f"{trip.name} acts between {_degrees(trip.acts_from_c)} and {_degrees(trip.acts_to_c)}"
 
 
 def _open(about: About, message: str, found: Budget) -> Reason:
