@@ -16,8 +16,11 @@ from builder.pages.page import Heading, Page
 from builder.pages.part_texts import rated_text
 from builder.pages.paths import relative
 from builder.pages.trips_section import trips_section
-from builder.records import Position, PositionRecord
+from builder.pages.verdicts import verdict_badge
+from builder.records import PartRecord, Position, PositionRecord
+from builder.records.part import Standing
 from builder.records.position import (
+    Alternate,
     BValueFirmware,
     CurveFirmware,
     Firmware,
@@ -180,39 +183,39 @@ def _method(firmware: Firmware, position: Position, record: PositionRecord, cont
 
 
 def _parts(record: PositionRecord, context: Context) -> Html:
-    position = record.position
-    here = context.paths.position(record)
-    fitted = context.catalog.part(position.fitted)
-    rows: list[tuple[Any, ...]] = [
-        (
-            _part_link(position.fitted, here, context),
-            fitted.part.maker,
-            rated_text(fitted.part),
-            "fitted",
-            standing_badge(fitted.part.state()),
-            rests_on(fitted.part, standing_of(fitted)),
-        )
+    fitted = context.catalog.part(record.position.fitted)
+    rows = [
+        _part_row(fitted, "fitted", standing_of(fitted), None, record, context),
+        *(_alternate_row(alternate, record, context) for alternate in record.position.alternates),
     ]
-    for alternate in position.alternates:
-        part = context.catalog.part(alternate.part).part
-        here_standing = alternate.standing[-1] if alternate.standing else None
-        rows.append(
-            (
-                _part_link(alternate.part, here, context),
-                part.maker,
-                rated_text(part),
-                "alternate",
-                standing_badge(here_standing.state if here_standing else None),
-                rests_on(part, here_standing),
-            )
-        )
+    headings = ("part", "maker", "rated", "as", "standing here", "in its place", "rests on")
     ledgers = [
         ledger_table(alternate.standing, f"Standings of {alternate.part} at this position, the newest first")
-        for alternate in position.alternates
+        for alternate in record.position.alternates
         if alternate.standing
     ]
-    headings = ("part", "maker", "rated", "as", "standing here", "rests on")
     return joined([table(headings, rows, caption="Parts of this position"), *ledgers])
+
+
+def _alternate_row(alternate: Alternate, record: PositionRecord, context: Context) -> tuple[Any, ...]:
+    part = context.catalog.part(alternate.part)
+    review = relative(context.paths.swap(record, part), context.paths.position(record))
+    verdict = link(verdict_badge(context.swap(record, part).verdict), review)
+    standing = alternate.standing[-1] if alternate.standing else None
+    return _part_row(part, "alternate", standing, verdict, record, context)
+
+
+def _part_row(
+    part: PartRecord,
+    role: str,
+    standing: Standing | None,
+    verdict: Html | None,
+    record: PositionRecord,
+    context: Context,
+) -> tuple[Any, ...]:
+    name = link(part.part.part, relative(context.paths.part(part), context.paths.position(record)))
+    state = standing_badge(standing.state if standing else None)
+    return name, part.part.maker, rated_text(part.part), role, state, verdict, rests_on(part.part, standing)
 
 
 def _requirements(position: Position) -> Html:

@@ -9,7 +9,7 @@ from builder.pages.context import Context
 from builder.pages.html import Html, joined, link, slug, table, tag
 from builder.pages.page import Heading, Page
 from builder.pages.paths import relative
-from builder.pages.swap_page import verdict_badge
+from builder.pages.verdicts import MEANINGS, verdict_badge
 from builder.problems import count_text
 from builder.records import PartRecord, PositionRecord
 from builder.units import number_text, range_text
@@ -18,12 +18,6 @@ HERE = "positions/index.html"
 _LEAD = (
     "A position is one place on one board where a thermistor is fitted. For each alternate there stands what fitting it "
     "does with the firmware unchanged; the verdict leads to its review."
-)
-_VERDICTS = (
-    ("fits", "every board stays within the limit, nothing else speaks against it"),
-    ("fits with new firmware", "it would meet the limit with firmware made for it, not with the one in the field"),
-    ("does not fit", "something speaks against it that firmware does not cure"),
-    ("undecided", "a figure that decides is not stated"),
 )
 
 
@@ -44,7 +38,9 @@ def _body(context: Context) -> Html:
     boards = _boards(context)
     if not boards:
         return joined([tag("h1", "Positions"), tag("p", _LEAD), tag("p", "The catalog has none yet.")])
-    meanings = [joined([tag("dt", verdict_badge(verdict)), tag("dd", meaning)]) for verdict, meaning in _VERDICTS]
+    meanings = [
+        joined([tag("dt", verdict_badge(verdict)), tag("dd", meaning)]) for verdict, meaning in MEANINGS.items()
+    ]
     return joined(
         [
             tag("h1", "Positions"),

@@ -13,12 +13,14 @@ from builder.exports.rows import Column, Row, csv_text, rounded
 from builder.ledger.standings import goes_by
 from builder.pages.context import Context
 from builder.pages.figures import Band, Limit, Line, Mark, reads_figure
+from builder.pages.figures.trips import trip_rows, trips_line
 from builder.pages.html import Html, facts, joined, link, notice, rows_table, table, tag
 from builder.pages.ledger import ledger_table, standing_badge
 from builder.pages.page import DataFile, Heading, Page
 from builder.pages.part_facts import FACT_NAMES, part_facts
 from builder.pages.paths import relative
 from builder.pages.position_page import CAUTION
+from builder.pages.verdicts import MEANINGS, verdict_badge
 from builder.records import PartRecord, PositionRecord
 from builder.units import number_text, range_text, signed_text, temperature_text
 
@@ -34,23 +36,6 @@ _HEADINGS = (
     ("sign", "Decision"),
 )
 _SIGNED_BY = ("Prepared", "Checked", "Approved")
-_VERDICT_CLASS = {
-    "fits": "good",
-    "fits with new firmware": "warn",
-    "does not fit": "bad",
-    "undecided": "open",
-}
-_MEANING = {
-    "fits": "With the firmware in the field unchanged, every board stays within the limit and nothing else speaks against it.",
-    "fits with new firmware": "With the firmware in the field it does not meet the limit; with firmware made for it, it would.",
-    "does not fit": "Something speaks against it that new firmware does not cure.",
-    "undecided": "A figure that decides is not stated; it is named below. Nothing is taken for zero.",
-}
-
-
-def verdict_badge(verdict: str) -> Html:
-    """A verdict in words and colour."""
-    return tag("span", verdict, class_=f"bd-verdict bd-verdict-{_VERDICT_CLASS[verdict]}")
 
 
 def swap_page(record: PositionRecord, alternate: PartRecord, context: Context) -> Page:
@@ -87,7 +72,7 @@ def _body(swap: Swap, context: Context) -> Html:
     sections = (
         _reasons(swap),
         _reads(swap, context),
-        _trips(swap),
+        _trips(swap, context),
         _differences(swap, context),
         _documents(swap),
         _cautions(),
@@ -118,7 +103,7 @@ def _head(swap: Swap, context: Context, here: str) -> Html:
     return joined(
         [
             tag("h1", f"{swap.alternate.part.part} in place of {swap.fitted.part.part}"),
-            tag("p", verdict_badge(swap.verdict), " ", _MEANING[swap.verdict], class_="bd-review-verdict"),
+            tag("p", verdict_badge(swap.verdict), " ", MEANINGS[swap.verdict], class_="bd-review-verdict"),
             known,
         ]
     )
@@ -217,7 +202,7 @@ def _rows(swap: Swap) -> list[Row]:
     ]
 
 
-def _trips(swap: Swap) -> Html:
+def _trips(swap: Swap, context: Context) -> Html:
     if not swap.after.trips:
         return tag("p", "The firmware acts on no threshold here.")
     rows = [
@@ -225,7 +210,9 @@ def _trips(swap: Swap) -> Html:
         for before, after in zip(swap.before.trips, swap.after.trips, strict=True)
     ]
     headings = ("trip", "set to", "acts before", "acts after", "after")
-    return table(headings, rows, caption="True temperatures between which each trip acts, on any board")
+    figures = trips_line(trip_rows({"before": swap.before, "after": swap.after}), swap.position.position.range_c)
+    shown = table(headings, rows, caption="True temperatures between which each trip acts, on any board")
+    return joined([Html(figures) if context.figures else "", shown])
 
 
 _NEAR = {True: "near enough", False: "too far off", None: "undecided: a figure is missing"}

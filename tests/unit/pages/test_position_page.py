@@ -106,9 +106,9 @@ def test_the_fitted_part_shows_its_own_standing_and_an_alternate_the_one_it_has_
     context = read(tmp_path, *parts, positions=({"alternates": alternates},))
     body = position_page(context.catalog.positions[0], context).body()
     assert rows(body, "Parts of this position") == [
-        ["PX-1", "Pellworm", "10 kΩ", "fitted", "approved", "sheet, revision C"],
-        ["PX-2", "Pellworm", "10 kΩ", "alternate", "withdrawn", "sheet, revision C"],
-        ["PX-3", "Pellworm", "10 kΩ", "alternate", "no standing", ""],
+        ["PX-1", "Pellworm", "10 kΩ", "fitted", "approved", "", "sheet, revision C"],
+        ["PX-2", "Pellworm", "10 kΩ", "alternate", "withdrawn", "does not fit", "sheet, revision C"],
+        ["PX-3", "Pellworm", "10 kΩ", "alternate", "no standing", "undecided", ""],
     ]
     assert rows(body, "Standings of PX-2 at this position") == [
         ["2026-01-01", "withdrawn", "us", "good here"],

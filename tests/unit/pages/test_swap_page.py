@@ -83,6 +83,7 @@ def test_trips_are_shown_before_and_after(tmp_path: Path) -> None:
     assert row[:2] == ["alarm", "50 °C"]
     assert row[2].startswith(f"{before.acts_from_c:.2f} to ") and row[3].startswith(f"{after.acts_from_c:.2f} to ")
     assert row[4] == "too far off"
+    assert "before acts between" in section(swap_page(place, part, context).body(), "trips")
 
 
 def test_facts_that_differ_are_said_to(tmp_path: Path) -> None:
