@@ -38,8 +38,11 @@ def position_sources(record: PositionRecord, context: Context) -> tuple[str, ...
 
 
 def verdict_line(budget: Budget) -> Html:
-    """Whether the limit is met, how far off the worst case is and where, and what is missing to tell."""
+    """Whether limit and trips are met, how far off the worst case is and where, and what is missing to tell."""
     kind, words = _VERDICTS[budget.meets_limit]
+    far = [trip.name for trip in budget.trips if trip.ok is False]
+    if far:
+        kind, words = "bad", f"{words}, but too far off: {', '.join(far)}"
     said = joined([tag("strong", words), *_reasons(budget)], " ")
     return tag("p", said, class_=f"bd-outcome bd-outcome-{kind}")
 
@@ -67,17 +70,21 @@ def budget_section(record: PositionRecord, context: Context) -> Html:
     here = context.paths.position(record)
     address = relative(context.paths.position_csv(record), here)
     file = link(f"The budget as CSV, every {number_text(SAMPLE_STEP_K)} K", address, download=True)
-    return joined([tag("p", _LEAD), *notes, drawn, tag("p", file), _table(budget)])
+    tables = tag("div", _tables(budget), class_="bd-dense")
+    return joined([tag("p", _LEAD), *notes, drawn, tables, tag("p", file)])
 
 
-def _table(budget: Budget) -> Html:
+def _tables(budget: Budget) -> Html:
+    """The sums, and what each source adds to them: in one table they would be too wide for paper."""
     shown_c = set(whole_steps_c(budget.position.range_c, DEFAULT_STEP_K).tolist())
     rows = [row for row in shown_rows(budget) if row["t_c"] in shown_c]
-    caption = (
-        f"Every {number_text(DEFAULT_STEP_K)} K. Of a source's two ends the larger is shown, with its sign; U is the expanded "
-        "uncertainty about bias and shift."
-    )
-    return rows_table(columns(budget), rows, caption=caption)
+    every = f"every {number_text(DEFAULT_STEP_K)} K"
+    sums = f"The reading's error {every}; U is the expanded uncertainty about bias and shift"
+    sources = f"What each source adds {every}: of its two ends the larger, with its sign"
+    all_columns = columns(budget)
+    of_sums = [column for column in all_columns if column.name not in budget.rows.sources_k]
+    of_sources = [c for c in all_columns if c not in of_sums or c.name in ("t_c", "extrapolated")]
+    return joined([rows_table(of_sums, rows, caption=sums), rows_table(of_sources, rows, caption=sources)])
 
 
 def budget_csv(record: PositionRecord, context: Context) -> DataFile:

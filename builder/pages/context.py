@@ -70,15 +70,15 @@ class Context:
     def budget(self, record: PositionRecord) -> Budget:
         """What is fitted at a position, every 1 K over its range; kept until another position is asked for."""
         if self._budgeted[0] is not record:
-            self._budgeted[:] = [record, self._budget(record)]
+            self._budgeted[:] = [record, budget(record.position, *self.fitted(record), SAMPLE_STEP_K)]
         made: Budget = self._budgeted[1]
         return made
 
-    def _budget(self, record: PositionRecord) -> Budget:
+    def fitted(self, record: PositionRecord) -> tuple[Thermistor, PartCurve]:
+        """The thermistor that is fitted at a position, and the curve of the part that its firmware was made for."""
         position = record.position
         fitted, made_for = (self.catalog.part(name) for name in (position.fitted, firmware_part(position)))
-        thermistor = Thermistor(self.curve(fitted), fitted.part.limits.dissipation_mw_per_k)
-        return budget(position, thermistor, self.curve(made_for), SAMPLE_STEP_K)
+        return Thermistor(self.curve(fitted), fitted.part.limits.dissipation_mw_per_k), self.curve(made_for)
 
     @cached_property
     def _budgeted(self) -> list[Any]:

@@ -15,6 +15,7 @@ from builder.pages.ledger import ledger_table, standing_badge
 from builder.pages.page import Heading, Page
 from builder.pages.part_texts import rated_text
 from builder.pages.paths import relative
+from builder.pages.resistor_section import resistor_section
 from builder.pages.trips_section import trips_section
 from builder.pages.verdicts import verdict_badge
 from builder.records import PartRecord, Position, PositionRecord
@@ -36,6 +37,7 @@ _HEADINGS = (
     ("budget", "Error budget"),
     ("trips", "Trips"),
     ("codes", "Codes and resolution"),
+    ("resistor", "Best fixed resistor"),
     ("parts", "Fitted part and alternates"),
     ("requirements", "Requirements"),
 )
@@ -69,6 +71,7 @@ def _body(record: PositionRecord, context: Context) -> Html:
         budget_section(record, context),
         trips_section(context.budget(record), figures=context.figures),
         codes_section(context.budget(record)),
+        resistor_section(record, context),
         _parts(record, context),
         _requirements(position),
     )
