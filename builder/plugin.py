@@ -14,6 +14,7 @@ from functools import lru_cache
 from html import escape
 from os.path import relpath
 from pathlib import Path
+from string import ascii_lowercase
 from urllib.parse import quote, urljoin
 
 import jinja2
@@ -31,6 +32,7 @@ from mkdocs.structure.pages import Page as SitePage
 from mkdocs.structure.toc import AnchorLink, TableOfContents
 
 from builder.crosschecks import CheckedCatalog, checked_catalog
+from builder.kept import Kept, Shelf, SiteFolder, digest
 from builder.pages.page import CopiedFile, DataFile, Heading, Page
 from builder.pages.site import site
 from builder.problems import count_text, errors, warnings
@@ -59,6 +61,11 @@ def filled(pieces: list[str], values: dict[str, str]) -> str:
     return "".join(values[piece] if index % 2 else piece for index, piece in enumerate(pieces))
 
 
+def folder_slot(depth: int) -> str:
+    """The name of the slot for a folder of a page's path, counted from the second."""
+    return f"folder{ascii_lowercase[depth]}"
+
+
 class Shell:
     """The frame that Material gives a page, rendered once and filled in for many."""
 
@@ -67,6 +74,7 @@ class Shell:
         self._entry = SLOT.split(entry[0]) if entry else []
         html = CONTENTS_ENTRY.sub(slot("contents"), html).replace(BODY, slot("body"))
         self._pieces = SLOT.split(html)
+        self.digest = digest(html.encode())
 
     def page(self, page: Page) -> str:
         """The page's HTML: everything but its body is text and is escaped."""
@@ -75,6 +83,7 @@ class Shell:
             {
                 "title": escape(page.title),
                 "description": escape(page.description),
+                **{folder_slot(depth): quote(name) for depth, name in enumerate(page.path.split("/")[1:-1])},
                 "name": quote(posixpath.basename(page.path).removesuffix(".html")),
                 "record": quote(page.record or ""),
                 "contents": "".join(map(self._contents_entry, page.headings)),
@@ -87,26 +96,50 @@ class Shell:
 
 
 class WrittenFile(File):
-    """A file of the site whose text is made while it is written, so that it is never held."""
+    """A file of the site whose content is made while it is written, so that it is never held.
 
-    def __init__(self, path: str, config: MkDocsConfig, text: Callable[[], str]) -> None:
+    `key` tells what it is made from: a file of an earlier build that has the same need not be made again.
+    """
+
+    def __init__(
+        self, path: str, config: MkDocsConfig, content: Callable[[], str | bytes], key: Callable[[], str | None]
+    ) -> None:
         super().__init__(path, None, config.site_dir, config.use_directory_urls)
         self.generated_by = "beadroll"
-        self._text = text
+        self._made = content
+        self.key = key
 
-    def write(self) -> None:
-        """Make the text and write it."""
-        utils.write_file(self._text().encode(), self.abs_dest_path)
+    def write(self) -> str:
+        """Make the content and write it; gives its digest."""
+        content = self._made()
+        data = content if isinstance(content, bytes) else content.encode()
+        utils.write_file(data, self.abs_dest_path)
+        return digest(data)
 
     def copy_file(self, dirty: bool = False) -> None:
         """Nothing: the plugin has written all such files before MkDocs copies its own."""
 
 
 def write(files: Sequence[WrittenFile]) -> list[str]:
-    """Write a share of the files; gives their paths."""
-    for file in files:
-        file.write()
-    return [file.dest_uri for file in files]
+    """Write a share of the files; gives their digests."""
+    return [file.write() for file in files]
+
+
+class KeptTemplates(jinja2.BytecodeCache):
+    """Material's templates as compiled before: compiling them takes longer than filling them in."""
+
+    def __init__(self, shelf: Shelf) -> None:
+        self._shelf = shelf
+
+    def load_bytecode(self, bucket: jinja2.bccache.Bucket) -> None:
+        """Take a template from the shelf; jinja compares its source."""
+        code = self._shelf.get(bucket.key)
+        if code is not None:
+            bucket.bytecode_from_string(code)
+
+    def dump_bytecode(self, bucket: jinja2.bccache.Bucket) -> None:
+        """Put a template on the shelf."""
+        self._shelf.put(bucket.key, bucket.bytecode_to_string())
 
 
 def meta(title: str, description: str, wide: bool) -> dict[str, object]:
@@ -138,6 +171,7 @@ class Options(Config):  # type: ignore[no-untyped-call]
     records = config_options.Dir(default="parts", exists=True)
     about = config_options.Type(str, default="")  # what the home page says of this catalog
     figures = config_options.Type(bool, default=True)  # without them a build shows what figures cost
+    cache = config_options.Type(bool, default=True)  # whether what was made is kept for the next build
 
 
 class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
@@ -145,6 +179,9 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
 
     def __init__(self) -> None:
         self._checked: CheckedCatalog
+        self._kept: Kept  # what was read and checked
+        self._made: Kept  # what the site was made of
+        self._site_folder: SiteFolder | None = None
         self._serving = False
         self._pages: list[Page] = []
         self._pages_in_nav: dict[str, Page] = {}
@@ -152,7 +189,11 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         self._shell: Callable[[str, bool, bool, bool], Shell]
 
     def on_config(self, config: MkDocsConfig) -> MkDocsConfig:
+        if not hasattr(self, "_kept"):  # while serving, what is in memory goes on to the next build
+            self._kept = Kept.beside(Path(self.config.records)) if self.config.cache else Kept()
+            self._made = self._kept.below("site")
         self._read_records()
+        self._begin_site(config)
         names = sorted(asset.name for asset in ASSETS.iterdir())
         config.extra.setdefault("polyfills", []).append(f"assets/{SEARCH}")
         config.extra_css[:0] = [f"assets/{name}" for name in names if name.endswith(".css")]
@@ -162,7 +203,9 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
     def _read_records(self) -> None:
         """Take the records; refuse bad ones, or while serving go on with those read before."""
         log.info(f"Reading the records in {self.config.records}")
-        checked = checked_catalog(Path(relpath(self.config.records)), today=utils.get_build_datetime().date())
+        checked = checked_catalog(
+            Path(relpath(self.config.records)), today=utils.get_build_datetime().date(), kept=self._kept
+        )
         bad = errors(checked.problems)
         for problem in bad:
             log.error(str(problem))
@@ -174,11 +217,22 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         else:
             raise PluginError(f"Records refused: {count_text(len(bad), 'error')}. The site is left as it was.")
 
+    def _begin_site(self, config: MkDocsConfig) -> None:
+        """Have MkDocs build beside the site; where that cannot be, it builds in its place."""
+        folder = SiteFolder(Path(config.site_dir))
+        try:
+            folder.begin()
+        except OSError as error:
+            log.info(f"The site is built in its place, not beside it: {error.filename}: {error.strerror}.")
+            return
+        self._site_folder = folder
+        config.site_dir = str(folder.building)
+
     def on_files(self, files: Files, *, config: MkDocsConfig) -> Files:
         for asset in sorted(ASSETS.iterdir()):
             files.append(File.generated(config, f"assets/{asset.name}", abs_src_path=str(asset)))
         self._pages = []
-        for item in site(self._checked, about=self.config.about, figures=self.config.figures):
+        for item in site(self._checked, about=self.config.about, figures=self.config.figures, kept=self._made):
             files.append(self._file(item, config))
             if isinstance(item, Page):
                 self._pages.append(item)
@@ -189,14 +243,29 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         if isinstance(item, CopiedFile):
             return File.generated(config, item.path, abs_src_path=str(item.source))
         if isinstance(item, DataFile):
-            return WrittenFile(item.path, config, item.content)
+            return WrittenFile(item.path, config, item.content, lambda: self._key(item, ""))
         if item.in_nav:
             return File.generated(config, item.path.removesuffix(".html") + ".md", content="")
-        return WrittenFile(item.path, config, lambda: self._html(item))
+        return WrittenFile(
+            item.path,
+            config,
+            lambda: self._shell_of(item).page(item),
+            lambda: self._key(item, self._shell_of(item).digest),
+        )
 
-    def _html(self, page: Page) -> str:
+    def _shell_of(self, page: Page) -> Shell:
         folder = posixpath.dirname(page.path)
-        return self._shell(folder, page.record is not None, bool(page.headings), page.wide).page(page)
+        top, *below = folder.split("/")
+        folder = "/".join([top, *(slot(folder_slot(depth)) for depth in range(len(below)))])
+        return self._shell(folder, page.record is not None, bool(page.headings), page.wide)
+
+    def _key(self, item: Page | DataFile, shell: str) -> str | None:
+        """What a file is made from, the code apart; None where the item does not say."""
+        if item.made_from is None:
+            return None
+        fields = (item.title, item.description, item.headings, item.record, item.wide) if isinstance(item, Page) else ()
+        options = self.config.about, self.config.figures
+        return digest(repr((item.path, item.made_from, fields, options, shell)).encode())
 
     def on_page_content(self, html: str, *, page: SitePage, **_: object) -> str:
         ours = self._pages_in_nav.get(page.file.dest_uri)
@@ -204,7 +273,19 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
             return html
         page.meta = meta(escape(ours.title), escape(ours.description), ours.wide)
         page.toc = contents(escape(ours.title), ours.headings)
-        return framed(ours.body())
+        return framed(self._body(ours))
+
+    def _body(self, page: Page) -> str:
+        """The body of a page in the nav, as it was made before if it may be."""
+        key = self._key(page, "")
+        if key is None:
+            return page.body()
+        shelf = self._made.shelf("bodies")
+        body: str | None = shelf.get(key)
+        if body is None:
+            body = page.body()
+            shelf.put(key, body)
+        return body
 
     def on_nav(self, nav: Navigation, **_: object) -> Navigation:
         self._nav = nav
@@ -222,9 +303,25 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
             return Shell(config.plugins.on_post_page(html, page=page, config=config) or "")
 
         self._shell = lru_cache(maxsize=16)(shell)
-        log.info(f"Writing {count_text(len(self._pages), 'page')}")
-        shared_out(write, [file for file in files if isinstance(file, WrittenFile)])
+        env.bytecode_cache = KeptTemplates(self._made.shelf("templates"))
+        self._write_files([file for file in files if isinstance(file, WrittenFile)])
         return env
+
+    def _write_files(self, files: Sequence[WrittenFile]) -> None:
+        """Take over what the site has already, and write the rest."""
+        shelf = self._made.shelf("files")
+        keys = {file.dest_uri: file.key() for file in files}
+        missing = [file for file in files if not self._taken_over(file.dest_uri, keys[file.dest_uri], shelf)]
+        log.info(f"Writing {count_text(len(missing), 'file')}, keeping {len(files) - len(missing)}")
+        for file, written in zip(missing, shared_out(write, missing), strict=True):
+            if keys[file.dest_uri] is not None:
+                shelf.put(file.dest_uri, None, [keys[file.dest_uri], written])
+
+    def _taken_over(self, path: str, key: str | None, shelf: Shelf) -> bool:
+        head = shelf.head(path) if key is not None else None
+        if self._site_folder is None or head is None or head[0] != key:
+            return False
+        return self._site_folder.take(path, head[1])
 
     @contextmanager
     def _section_active(self, folder: str) -> Iterator[None]:
@@ -270,7 +367,16 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
 
     @event_priority(-100)  # after the search has written its index
     def on_post_build(self, *, config: MkDocsConfig) -> None:
-        index_file = Path(config.site_dir, "search", "search_index.json")
+        self._complete_search(Path(config.site_dir, "search", "search_index.json"))
+        if self._site_folder is not None:
+            self._site_folder.finish()
+            config.site_dir = str(self._site_folder.place)
+            self._site_folder = None
+        self._made.save()
+        if trouble := self._kept.trouble or self._made.trouble:
+            log.info(trouble)
+
+    def _complete_search(self, index_file: Path) -> None:
         if not index_file.exists():
             return
         index = json.loads(index_file.read_text("utf-8"))
@@ -280,6 +386,11 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         # A page from file:// cannot fetch JSON, so Material looks there for a script that sets this name.
         index_file.with_suffix(".js").write_text(f"var __index = {text}", "utf-8")
         log.info(f"Pages written; the search has {len(index['docs'])} entries")
+
+    def on_build_error(self, **_: object) -> None:
+        if self._site_folder is not None:
+            self._site_folder.give_up()
+            self._site_folder = None
 
     def on_serve(self, server: LiveReloadServer, **_: object) -> LiveReloadServer:
         self._serving = True

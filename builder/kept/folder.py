@@ -39,19 +39,25 @@ class Kept:
             self._shelves[name] = Shelf(path, code_digest())
         return self._shelves[name]
 
-    def save(self, name: str) -> None:
-        """Save a shelf; that it cannot be written is told, and harms nothing."""
+    def below(self, name: str) -> Kept:
+        """Shelves in a folder of their own below this one."""
+        return Kept(self._folder / name if self._folder else None)
+
+    def save(self, *names: str) -> None:
+        """Save shelves, without names all that were opened; that they cannot be written is told, and harms nothing."""
         try:
             self._ignore()
-            self.shelf(name).save()
+            for name in names or self._shelves:
+                self.shelf(name).save()
         except OSError as error:
             self.trouble = f"Nothing is kept for the next run: {error.filename or self._folder}: {error.strerror}."
 
     def _ignore(self) -> None:
         """Have git ignore the folder."""
-        if self._folder and not (ignored := self._folder.parent / ".gitignore").exists():
-            ignored.parent.mkdir(parents=True, exist_ok=True)
-            ignored.write_text("*\n", "utf-8")
+        for folder in (self._folder, *self._folder.parents) if self._folder else ():
+            if folder.name == FOLDER and not (ignored := folder / ".gitignore").exists():
+                folder.mkdir(parents=True, exist_ok=True)
+                ignored.write_text("*\n", "utf-8")
 
 
 @cache

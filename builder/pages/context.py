@@ -3,24 +3,27 @@
 from __future__ import annotations
 
 import datetime
-import hashlib
+import pickle
 from collections import defaultdict
-from collections.abc import Mapping
-from dataclasses import dataclass
+from collections.abc import Callable, Mapping, Sequence
+from dataclasses import dataclass, field
 from functools import cached_property
-from typing import Any
+from typing import Any, TypeVar
 
 from builder.circuit import Budget, Thermistor, budget, firmware_part
 from builder.comparisons.nearest import NearestParts, Neighbour
 from builder.crosschecks import CheckedCatalog
 from builder.decisions import Swap, swap
+from builder.kept import Kept, digest
 from builder.ledger import Entry, entries, replaced_since
 from builder.pages.paths import Paths
 from builder.part_curve import PartCurve, Sample, whole_steps_c
 from builder.problems import Problem
+from builder.processes import shared_out
 from builder.records import Catalog, PartRecord, PositionRecord
 
 SAMPLE_STEP_K = 1.0
+T = TypeVar("T")
 
 
 @dataclass(frozen=True, eq=False)
@@ -30,6 +33,7 @@ class Context:
     checked: CheckedCatalog
     about: str = ""
     figures: bool = True
+    kept: Kept = field(default_factory=Kept)
 
     @property
     def catalog(self) -> Catalog:
@@ -86,22 +90,47 @@ class Context:
 
     def problems(self, record: PartRecord | PositionRecord) -> tuple[Problem, ...]:
         """What is doubtful about a record, its table's file included."""
-        table = getattr(record, "table", None)
-        files = {record.source.file, table.file if table is not None else record.source.file}
+        files = {record.source.file, getattr(record, "table_file", None) or record.source.file}
         return tuple(p for file in sorted(files) for p in self._problems_by_file.get(file, ()))
 
     def digest(self, record: PartRecord | PositionRecord) -> str:
         """What a page takes of a record, in short, for its `made_from`: its file and its table's, its page's path, its problems."""
         path = self.paths.part(record) if isinstance(record, PartRecord) else self.paths.position(record)
-        return hashlib.sha256(repr((record.digest, path, self.problems(record))).encode()).hexdigest()
+        return digest(repr((record.digest, path, self.problems(record))).encode())
 
     def nearest(self, record: PartRecord) -> tuple[Neighbour, ...]:
         """The parts that this part's firmware would read best, nearest first."""
-        return self._nearest.of(self._places[record.source.file])
+        return self._nearest[self._places[record.source.file]]
 
     @cached_property
-    def _nearest(self) -> NearestParts:
-        return NearestParts([self.curve(record) for record in self.catalog.parts])
+    def _nearest(self) -> Sequence[tuple[Neighbour, ...]]:
+        """Of every part; as found before, if no curve is another."""
+        shelf = self.kept.shelf("nearest")
+        key = digest(repr([(record.name, self._curve_digest(record)) for record in self.catalog.parts]).encode())
+        found: list[tuple[Neighbour, ...]] | None = shelf.get(key)
+        if found is None:
+            nearest = NearestParts([self.curve(record) for record in self.catalog.parts])
+            found = shared_out(lambda places: [nearest.of(place) for place in places], range(len(self.catalog.parts)))
+            shelf.put(key, found)
+        return found
+
+    def _curve_digest(self, record: PartRecord) -> str:
+        """Of a part's nominal curve and operating range."""
+
+        def made() -> str:
+            curve = self.curve(record)
+            return digest(pickle.dumps((curve.curve, curve.operating_c)))
+
+        return self.of_record("curve-digest", record, made)
+
+    def of_record(self, name: str, record: PartRecord | PositionRecord, make: Callable[[], T]) -> T:
+        """What one record alone gives, as it was made before if the record is as it was: what JSON can say, no tuples."""
+        shelf = self.kept.shelf(name)
+        made: T | None = shelf.head(record.digest)
+        if made is None:
+            made = make()
+            shelf.put(record.digest, None, made)
+        return made
 
     @cached_property
     def _places(self) -> Mapping[str, int]:

@@ -34,7 +34,7 @@ def maker_pages(catalog: Catalog, curves: Mapping[str, PartCurve], paths: Paths)
     """A page for each maker, in the order of the catalog."""
     by_maker: dict[str, list[PartRecord]] = defaultdict(list)
     for record in catalog.parts:
-        by_maker[record.part.maker].append(record)
+        by_maker[record.maker].append(record)
     for maker, records in by_maker.items():
         yield _maker_page(maker, records, curves, paths)
 

@@ -41,9 +41,9 @@ def shown_neighbours(
     return [
         (
             context.paths.part(other),
-            other.part.part,
-            other.part.maker,
-            other.part.state(),
+            other.number,
+            other.maker,
+            other.state,
             neighbour.worst_k,
             neighbour.at_c,
             neighbour.whole_range,

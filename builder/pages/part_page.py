@@ -46,18 +46,20 @@ _HEADINGS = (
 
 def part_page(record: PartRecord, context: Context) -> Page:
     """The page of one part."""
-    part = record.part
+    description, search_text = context.of_record(
+        "part-texts", record, lambda: [summary(record.part), _search_text(record.part)]
+    )
     return Page(
         path=context.paths.part(record),
-        title=f"{part.part} · {part.maker}",
-        description=summary(part),
+        title=f"{record.number} · {record.maker}",
+        description=description,
         body=lambda: str(_body(record, context)),
         headings=tuple(Heading(anchor, text) for anchor, text in _HEADINGS),
-        search_text=_search_text(part),
+        search_text=search_text,
         record=record.source.below,
         made_from=(
             context.digest(record),
-            context.paths.maker(part.maker),
+            context.paths.maker(record.maker),
             repr(shown_neighbours(record, context)),
             repr(_uses(record, context)),
             outdated_sources(record, context),

@@ -66,7 +66,7 @@ class Paths:
     @cached_property
     def _makers(self) -> Mapping[str, str]:
         # A point would let a folder take the place of a file such as `index.html`.
-        makers = dict.fromkeys(record.part.maker for record in self.catalog.parts)
+        makers = dict.fromkeys(record.maker for record in self.catalog.parts)
         return _distinct((maker, _file_slug(maker.replace(".", "-")), maker) for maker in makers)
 
     @cached_property
@@ -74,7 +74,7 @@ class Paths:
         wanted = (
             (
                 record.source.file,
-                f"parts/{self._makers[record.part.maker]}/{_file_slug(record.part.part)}",
+                f"parts/{self._makers[record.maker]}/{_file_slug(record.number)}",
                 record.name,
             )
             for record in self.catalog.parts

@@ -29,10 +29,13 @@ def side_by_side_page() -> Page:
 def curve_file(record: PartRecord, context: Context) -> DataFile:
     """A part's curve for the browser, beside the part's page."""
     path = context.paths.part(record).removesuffix(".html")
-    key, curve = path.removeprefix("parts/"), context.curve(record)
-    return DataFile(
-        f"{path}.js", lambda: curve_script(key, curve, part_facts(record.part, curve)), made_from=(record.digest,)
-    )
+    key = path.removeprefix("parts/")
+
+    def content() -> str:
+        curve = context.curve(record)
+        return curve_script(key, curve, part_facts(record.part, curve))
+
+    return DataFile(f"{path}.js", content, made_from=(record.digest,))
 
 
 def side_by_side_address(reference: PartRecord, others: tuple[PartRecord, ...], context: Context) -> str:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from builder.crosschecks import RULES, CheckedCatalog
+from builder.kept import Kept
 from builder.pages.budget_section import budget_csv
 from builder.pages.checks_page import checks_page, rule_page
 from builder.pages.context import Context
@@ -22,12 +23,15 @@ from builder.pages.side_by_side_page import curve_file, side_by_side_page
 from builder.pages.swap_page import swap_csv, swap_page
 
 
-def site(checked: CheckedCatalog, *, about: str = "", figures: bool = True) -> Iterator[Page | DataFile | CopiedFile]:
+def site(
+    checked: CheckedCatalog, *, about: str = "", figures: bool = True, kept: Kept | None = None
+) -> Iterator[Page | DataFile | CopiedFile]:
     """Every generated page and file.
 
-    `about` is what the home page says of the catalog; pages without figures cost less, for measuring what figures cost.
+    `about` is what the home page says of the catalog; pages without figures cost less, for measuring what figures cost;
+    `kept` has what was computed for an earlier site.
     """
-    context = Context(checked, about, figures)
+    context = Context(checked, about, figures, kept or Kept())
     yield home_page(context)
     yield parts_page(context.catalog, checked.curves, context.paths)
     yield parts_data(context.catalog, checked.curves, context.paths)

@@ -9,7 +9,7 @@ from pathlib import Path
 
 from builder.problems import Problem, Severity
 from builder.records import yaml_text
-from builder.records.part import Part
+from builder.records.part import Part, StandingState
 from builder.records.position import Position
 from builder.records.table import TableData
 
@@ -62,6 +62,16 @@ class PartRecord:
         return self.part.own_number
 
     @cached_property
+    def state(self) -> StandingState | None:
+        """The standing that holds."""
+        return self.part.state()
+
+    @cached_property
+    def table_file(self) -> str | None:
+        """The file that its table stands in."""
+        return self.table.file if self.table else None
+
+    @cached_property
     def name(self) -> str:
         """Maker and number: no two parts share it."""
         return f"{self.maker} {self.number}"
@@ -80,7 +90,7 @@ class KeptPartRecord(PartRecord):
     """A part's record that was read before: what it goes by is known, all else is fetched when it is asked for."""
 
     def __init__(self, known: Mapping[str, str | None], fetch: Callable[[], PartRecord]) -> None:
-        names = {name: known[name] for name in ("number", "maker", "own_number", "digest")}
+        names = {name: known[name] for name in ("number", "maker", "own_number", "state", "table_file", "digest")}
         source = Source(str(known["file"]), str(known["below"]), _KeptLines(fetch))
         self.__dict__.update(names, source=source, _fetch=fetch)
 
@@ -123,6 +133,6 @@ class _KeptLines(Mapping[yaml_text.Path, int]):
 
 def known_of(record: PartRecord) -> dict[str, str | None]:
     """What a record that is kept is known by before it is fetched."""
-    names = {"number": record.number, "maker": record.maker, "own_number": record.own_number}
-    places = {"file": record.source.file, "below": record.source.below}
+    names = {"number": record.number, "maker": record.maker, "own_number": record.own_number, "state": record.state}
+    places = {"file": record.source.file, "below": record.source.below, "table_file": record.table_file}
     return names | places | {"digest": record.digest}
