@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import datetime
-from collections.abc import Iterable
+from collections.abc import Callable, Iterable
 from pathlib import Path
 
 import pytest
@@ -30,3 +30,18 @@ def check(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> Check:
         return checked_catalog(Path("parts"), today=TODAY).problems
 
     return problems
+
+
+@pytest.fixture
+def told(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> Callable[..., list[str]]:
+    """Every problem of the records given by their names, as `check` says it."""
+    monkeypatch.chdir(tmp_path)
+
+    def said(today: datetime.date = TODAY, **files: str) -> list[str]:
+        Path("parts").mkdir(exist_ok=True)
+        for name, text in files.items():
+            Path("parts", f"{name}.yaml").write_text(text, "utf-8")
+        problems = checked_catalog(Path("parts"), today=today).problems
+        return [f"{p} [{p.severity}: {p.rule}]" for p in problems]
+
+    return said
