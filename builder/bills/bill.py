@@ -156,7 +156,8 @@ def _lines(rows: Sequence[Row], read: Columns) -> Iterator[BillLine]:
             raise Unreadable(
                 f"more than {_MOST_REFERENCES} references are no bill. Export the bill of one board.", row.line
             )
-        if line.references or line.number or line.own_number:
+        # A description without so much as a quantity is a title.
+        if line.references or line.number or line.own_number or (line.quantity and line.description):
             yield line
 
 

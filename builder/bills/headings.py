@@ -81,10 +81,10 @@ _HEADINGS: Mapping[Role, tuple[frozenset[str], ...]] = {
     ),
     "quantity": (
         words(
-            "quantity quantities qty qnty quant count amount pieces pcs menge anzahl stuckzahl stuck stk"
-            " quantite qte nombre cantidad cant unidades"
+            "quantity quantities qty qnty quant menge anzahl stuckzahl stuck stk quantite qte nb nbre nombre cantidad cant"
         )
         | _pairs("quantity qty", "perboard perunit perassembly perpcb"),
+        words("amount count pieces pcs unidades"),
     ),
 }
 _DESCRIPTION = words(
@@ -98,7 +98,7 @@ _FITTED = words(
 )
 NOT_FITTED = words(
     "dnp dnf dni dnm dns notfitted notpopulated notmounted unfitted nofit nopop noplace nomount"
-    " nichtbestuckt nichtbestucken nb nonmonte nonequipe nemontepas nopasmonter nomontar nomontado"
+    " nichtbestuckt nichtbestucken nonmonte nonequipe nemontepas nopasmonter nomontar nomontado"
 ) | _pairs("donot", "fit populate place mount install stuff assemble")
 
 

@@ -13,6 +13,7 @@ from builder.bills.numbers import Numbers, is_maker
 from builder.bills.placement import placement
 from builder.bills.recognition import Recognised, recognised
 from builder.bills.spelling import word_key
+from builder.ledger import standing_of
 from builder.problems import clipped, count_text, one_line
 from builder.records import Catalog, PartRecord
 
@@ -38,8 +39,8 @@ def restricted_parts(bill: Bill, catalog: Catalog) -> tuple[PartRecord, ...]:
     """The parts on a bill that are approved for some places only: without its board nobody can say whether for this."""
     numbers = Numbers(catalog.parts)
     parts = (recognised(line, numbers, None).part for line in bill.lines if line.is_fitted)
-    held = {part: part.part.standing[-1] for part in parts if part is not None and part.part.standing}
-    return tuple(part for part, standing in held.items() if standing.only_for)
+    held = {part: standing_of(part) for part in parts if part is not None}
+    return tuple(part for part, standing in held.items() if standing is not None and standing.only_for)
 
 
 def judgement(bill: Bill, catalog: Catalog, board: Board | None) -> Judgement:
@@ -86,7 +87,7 @@ def _found(item: Recognised, kind: Kind, severity: Severity, message: str, where
 
 
 def _not_fitted(item: Recognised, board: Board | None, holders: Mapping[str, list[Recognised]]) -> Iterator[Finding]:
-    for name in item.line.references:
+    for name in item.line.references or ("",):
         place = board.at.get(name.casefold()) if board else None
         if place is not None and name.casefold() not in holders:
             fitted = f"{place.position.position} is made for {place.position.fitted}"

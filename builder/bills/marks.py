@@ -9,6 +9,7 @@ from builder.bills.sheet import Row
 from builder.bills.spelling import word_key
 
 _YES = words("yes y true 1 x ja j wahr oui o vrai si s verdadero fitted populated mounted bestuckt monte montado ✓ ✔")
+_NOT_FITTED = NOT_FITTED | words("nb")  # as a heading, "Nb" is French for how many
 _NO = words("no n false 0 nein falsch non faux falso - – — ✗ ✘")
 
 
@@ -26,7 +27,7 @@ class Marks:
         return not (
             any(_mark(row, column) not in _NO | {""} for column in read.not_fitted)
             or any(self._says_no(row, column) for column in read.fitted)
-            or any(_mark(row, column) in NOT_FITTED for column in told)
+            or any(_mark(row, column) in _NOT_FITTED for column in told)
         )
 
     def _says_no(self, row: Row, column: int) -> bool:

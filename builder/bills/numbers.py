@@ -73,9 +73,13 @@ def _shortened(key: str) -> Iterator[str]:
 
 
 def is_maker(name: str, part: PartRecord) -> bool:
-    """Whether a maker's name on a bill has a word of the record's, such as its short form."""
-    return bool(_name_words(name) & _name_words(part.part.maker))
+    """Whether a maker's name on a bill may be the record's: one of the two has the first word of the other.
+
+    A later word, such as what kind of company it is, is shared by many.
+    """
+    typed, known = _name_words(name), _name_words(part.part.maker)
+    return bool(typed and known) and (typed[0] in known or known[0] in typed)
 
 
-def _name_words(name: str) -> set[str]:
-    return {word_key(word) for word in name.split()} - {""}
+def _name_words(name: str) -> list[str]:
+    return [key for word in name.split() if (key := word_key(word))]

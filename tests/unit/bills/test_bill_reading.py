@@ -61,6 +61,15 @@ def test_a_quoted_cell_may_hold_line_ends_and_quotation_marks():
     ]
 
 
+def test_a_cell_that_was_kept_from_being_a_number_is_its_text():
+    assert lines('Part number;Description\n="0603";=1+1\n')[0].number == "0603"
+
+
+def test_a_line_that_has_a_quantity_is_a_line_and_a_title_is_none():
+    content = "Part number;Description;Qty\n;NTC thermistors;\n;NTC 10 k;2\n"
+    assert lines(content) == (BillLine(3, quantity="2", description="NTC 10 k"),)
+
+
 def test_spaces_before_a_quotation_mark_do_not_matter():
     assert lines('Reference, Part number\n"RT1, RT2", "A1"\n')[0].number == "A1"
 
@@ -79,7 +88,7 @@ SPOKEN = {
     "own_number": "Internal number, Internal part number, Own number, Item number, Item No., Our P/N, IPN, Stock code, Article number, "
     "Interne Nummer, Artikelnummer, Sachnummer, Materialnummer, Référence interne, Code article, Référence interne, "
     "Número interno, Código de artículo",
-    "quantity": "Quantity, QTY, Qty., Quantity [pcs], Qty per board, Count, Menge, Anzahl, Stückzahl, Stk., Quantité, Qté, Cantidad, Cant.",
+    "quantity": "Quantity, QTY, Qty., Quantity [pcs], Qty per board, Count, Menge, Anzahl, Stückzahl, Stk., Quantité, Qté, Nb, Nbre, Cantidad, Cant.",
     "description": "Description, Desc., Value, Comment, Beschreibung, Bezeichnung, Désignation, Descripción",
 }  # fmt: skip
 
