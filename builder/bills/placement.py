@@ -18,18 +18,20 @@ def placement(part: PartRecord, reference: str, board: Board | None) -> Judged:
     place = board.at.get(reference.casefold()) if board else None
     permission = may_stand(part, place)
     if place is None:
-        return _anywhere(part, permission, board)
+        return _anywhere(part, permission, board, reference)
     return _at(part, permission, place)
 
 
-def _anywhere(part: PartRecord, permission: Permission, board: Board | None) -> Judged:
+def _anywhere(part: PartRecord, permission: Permission, board: Board | None, reference: str) -> Judged:
     """Without a position on record only the part's own entry counts, and whether it names the board."""
     standing = permission.standing
     if not permission.given or standing is None:
         return _not_given(part, permission)
     on_board = {place.position.board.casefold() for place in board.places} if board else set()
     if standing.only_for and not on_board & {name.casefold() for name in standing.only_for}:
-        return _restricted(part, standing, f"the whole of {board.short_name}" if board else "this board")
+        return _restricted(
+            part, standing, "/".join(filter(None, (board.short_name, reference))) if board else "this board"
+        )
     return "approved", "ok", f"{part.part.part} is approved since {standing.on}."
 
 

@@ -17,7 +17,9 @@ class Row:
 
     def cell(self, column: int | None) -> str:
         """A cell's text on one line; empty where the row has no such cell."""
-        return " ".join(self.cells[column].split()) if column is not None and column < len(self.cells) else ""
+        text = " ".join(self.cells[column].split()) if column is not None and column < len(self.cells) else ""
+        # What keeps a spreadsheet from taking a text for a number: ="0603".
+        return text[2:-1] if text.startswith('="') and text.endswith('"') else text
 
 
 @dataclass(frozen=True)

@@ -14,16 +14,13 @@ from builder.bills.unreadable import Unreadable
 _DELIMITERS = (",", ";", "\t", "|")
 _UTF_16 = (codecs.BOM_UTF16_LE, codecs.BOM_UTF16_BE)
 _CONTROL = re.compile("[\x00-\x08\x0e-\x1f\x7f]")
-_LINE_END = re.compile("\r\n?")
-# What keeps a spreadsheet from taking a text for a number: ="0603".
-_AS_TEXT = re.compile('^="([^"]*)"$')
 # A row of its own behind the last: where it is not found again, a quotation mark was left open.
 _LAST_ROW = "\x00last row"
 
 
 def text_sheets(data: bytes) -> Iterator[Sheet | Unreadable]:
     """The file divided by each delimiter, or why it cannot be."""
-    text = _LINE_END.sub("\n", _text(data))
+    text = _text(data)
     for delimiter in _DELIMITERS:
         try:
             yield Sheet("", tuple(_rows(text, delimiter)))
@@ -71,7 +68,7 @@ def _rows(text: str, delimiter: str) -> Iterator[Row]:
             if any(cell.endswith(_LAST_ROW) for cell in cells):
                 raise Unreadable("a quotation mark that opens here is not closed. Close it, or remove it.", line)
             if any(cell.strip() for cell in cells):
-                yield Row(line, tuple(_AS_TEXT.sub(r"\1", cell) for cell in cells))
+                yield Row(line, tuple(cells))
             line = reader.line_num + 1
     except csv.Error:
         limit = csv.field_size_limit()

@@ -17,7 +17,7 @@ def _text(value: str | None) -> str:
 
 COLUMNS = (
     Column("line", "line", lambda line: "–" if line is None else str(line)),
-    Column("severity", "", left=True),
+    Column("severity", "severity", left=True),
     Column("finding", "finding", left=True),
     Column("reference", "reference", _text, left=True),
     Column("number", "number", _text, left=True),

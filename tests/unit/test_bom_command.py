@@ -37,9 +37,9 @@ def run(tmp_path, monkeypatch):
 def test_a_bill_where_nothing_blocks_exits_0(run):
     assert run(HEADINGS + GOOD, "--board", "coolbox-main") == (
         0,
-        "line      finding   reference  number\n"
-        "   2  ok  approved  RT1        TB3A-103F38-TR  TB3A-103F38 is what coolbox-main/RT1 is made for, approved since 2025-05-19.\n"
-        "   3  ok  differs   RT2        YC2-103H        YC2-103H is an approved alternate for TB2A-103F38 at coolbox-main/RT2, since 2026-05-12.\n"
+        "line  severity  finding   reference  number\n"
+        "   2  ok        approved  RT1        TB3A-103F38-TR  TB3A-103F38 is what coolbox-main/RT1 is made for, approved since 2025-05-19.\n"
+        "   3  ok        differs   RT2        YC2-103H        YC2-103H is an approved alternate for TB2A-103F38 at coolbox-main/RT2, since 2026-05-12.\n"
         "coolbox-main: 2 lines of thermistors, 1 other line; nothing blocks, 0 warnings.\n",
         "",
     )
@@ -124,8 +124,8 @@ def test_a_part_for_some_places_only_needs_the_board(run):
 def test_without_positions_the_parts_alone_are_looked_at(run):
     assert run(HEADINGS + "TH1,YC2-103H,,,1\n")[:2] == (
         0,
-        "line      finding   reference  number\n"
-        "   2  ok  approved  TH1        YC2-103H  YC2-103H is approved since 2026-04-07.\n"
+        "line  severity  finding   reference  number\n"
+        "   2  ok        approved  TH1        YC2-103H  YC2-103H is approved since 2026-04-07.\n"
         "No board named: 1 line of thermistors, 0 other lines; nothing blocks, 0 warnings.\n",
     )
 

@@ -168,7 +168,7 @@ def test_a_part_at_a_position_is_judged_by_the_ledger(found, line, part, finding
             "TB3A-103J38",
             "charger",
             "restricted",
-            "TB3A-103J38 is approved for charger/RT1, Dock battery only, not for the whole of charger. Fit another part, or have it approved here.",
+            "TB3A-103J38 is approved for charger/RT1, Dock battery only, not for charger/X5. Fit another part, or have it approved here.",
         ),
         ("TB3A-103J38", "dock", "approved", "TB3A-103J38 is approved since 2026-02-10."),
         ("TB3A-103F38", None, "approved", "TB3A-103F38 is approved since 2026-02-10."),
