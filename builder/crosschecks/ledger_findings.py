@@ -3,15 +3,15 @@
 from __future__ import annotations
 
 import datetime
-from collections import defaultdict
+from collections import Counter, defaultdict
 from collections.abc import Iterable, Iterator, Sequence
 from itertools import pairwise
 
 from builder.crosschecks.fitting_findings import fitting_findings
-from builder.ledger import APPROVING, Entry, alternate_ledgers, named_document, part_ledger, replaced_since, standing_of
+from builder.ledger import APPROVING, Entry, alternate_ledgers, named_document, part_ledger, replaced_since
 from builder.problems import Problem, clipped, count_text, errors, nearest
-from builder.records import Catalog, PartRecord, Source
-from builder.records.part import DocumentRevision, Standing
+from builder.records import Catalog, LooseTable, PartRecord
+from builder.records.part import DocumentRevision
 
 _FEWEST_WORDS = 2
 
@@ -116,25 +116,18 @@ def _shared_own_numbers(catalog: Catalog) -> Iterator[Problem]:
 
 def approvals_of_errors(catalog: Catalog, problems: Iterable[Problem]) -> Iterator[Problem]:
     """Approved parts whose records have errors: people rely on them while they are mended."""
-    faulty: dict[str, int] = defaultdict(int)
-    for problem in errors(problems):
-        # What is wrong with the ledger itself says so.
-        if not problem.field.startswith("standing"):
-            faulty[problem.file] += 1
-    for record in (*catalog.parts, *catalog.curveless):
-        files = {record.source.file, record.table.file if record.table else record.source.file}
-        last = standing_of(record)
-        if last is not None:
-            index = len(record.part.standing) - 1
-            yield from _approval_of_errors(record.source, last, index, sum(faulty[file] for file in files))
-    for loose in catalog.loose_standings:
-        yield from _approval_of_errors(loose.source, loose.standing, loose.index, faulty[loose.source.file])
-
-
-def _approval_of_errors(source: Source, standing: Standing, index: int, count: int) -> Iterator[Problem]:
-    if count and standing.state in APPROVING:
-        message = (
-            f"the part is {standing.state} since {standing.on.isoformat()}, and its record has "
-            f"{count_text(count, 'error')}. Correct what is wrong; where a figure changes, append an entry that says who looked at it."
-        )
-        yield source.problem(("standing", index), "approval-of-errors", message, "warning")
+    # What is wrong with the ledger itself says so.
+    faulty = Counter(p.file for p in errors(problems) if not p.field.startswith("standing"))
+    parts = (*catalog.parts, *catalog.curveless)
+    with_tables: list[PartRecord | LooseTable] = [*parts, *catalog.loose_tables]
+    tables = {r.source.file: r.table.file for r in with_tables if r.table}
+    holding = [(r.source, len(r.part.standing) - 1, r.part.standing[-1]) for r in parts if r.part.standing]
+    holding += [(loose.source, loose.index, loose.standing) for loose in catalog.loose_standings]
+    for source, index, standing in holding:
+        count = sum(faulty[file] for file in {source.file, tables.get(source.file, source.file)})
+        if count and standing.state in APPROVING:
+            message = (
+                f"the part is {standing.state} since {standing.on.isoformat()}, and its record has "
+                f"{count_text(count, 'error')}. Correct what is wrong; where a figure changes, append an entry that says who looked at it."
+            )
+            yield source.problem(("standing", index), "approval-of-errors", message, "warning")

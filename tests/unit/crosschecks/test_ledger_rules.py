@@ -190,6 +190,8 @@ def test_errors_in_the_file_of_its_table_count(told: Told) -> None:
     Path("parts", "t.csv").write_text("t_c,r_ohm\n0,100\n25,10000\n", "utf-8")
     found = told(a=part(APPROVED, more="r_t_table: {file: t.csv}\n"))
     assert [line.rpartition("[")[2] for line in found] == ["warning: approval-of-errors]", "error: not-falling]"]
+    refused = told(a=part(APPROVED, more="r_t_table: {file: t.csv}\n").replace("3977", "39770"))
+    assert len(refused) == 3 and "its record has 2 errors." in "".join(refused)
 
 
 def test_errors_of_the_ledger_itself_do_not_count(told: Told) -> None:
