@@ -32,6 +32,7 @@ from mkdocs.structure.pages import Page as SitePage
 from mkdocs.structure.toc import AnchorLink, TableOfContents
 
 from builder.crosschecks import CheckedCatalog, checked_catalog
+from builder.history import Past
 from builder.kept import Kept, Shelf, SiteFolder, digest
 from builder.pages.page import CopiedFile, DataFile, Heading, Page
 from builder.pages.site import site
@@ -170,6 +171,7 @@ class Options(Config):  # type: ignore[no-untyped-call]
 
     records = config_options.Dir(default="parts", exists=True)
     about = config_options.Type(str, default="")  # what the home page says of this catalog
+    changes = config_options.Type(int, default=10)  # how many revisions the Changes page shows
     figures = config_options.Type(bool, default=True)  # without them a build shows what figures cost
     cache = config_options.Type(bool, default=True)  # whether what was made is kept for the next build
 
@@ -232,12 +234,17 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         for asset in sorted(ASSETS.iterdir()):
             files.append(File.generated(config, f"assets/{asset.name}", abs_src_path=str(asset)))
         self._pages = []
-        for item in site(self._checked, about=self.config.about, figures=self.config.figures, kept=self._made):
+        for item in self._site():
             files.append(self._file(item, config))
             if isinstance(item, Page):
                 self._pages.append(item)
         self._pages_in_nav = {page.path: page for page in self._pages if page.in_nav}
         return files
+
+    def _site(self) -> Iterator[Page | DataFile | CopiedFile]:
+        past = Past(Path(relpath(self.config.records)), self.config.changes)
+        about, figures = self.config.about, self.config.figures
+        return site(self._checked, about=about, figures=figures, past=past, kept=self._made)
 
     def _file(self, item: Page | DataFile | CopiedFile, config: MkDocsConfig) -> File:
         if isinstance(item, CopiedFile):

@@ -11,7 +11,7 @@ from builder.exports.budget_rows import trip_answer
 from builder.exports.rows import Column, Row, rounded, table_text
 from builder.history import Changes, Commit, PartChange, PositionChange
 from builder.history.fields import FieldChange
-from builder.history.matching import name_of
+from builder.history.matching import Pair, name_of
 from builder.problems import clipped, count_text
 from builder.records import PartRecord, PositionRecord
 from builder.units import number_text, signed_text
@@ -107,13 +107,13 @@ def position_row(change: PositionChange) -> dict[str, str]:
     """A position's change as texts."""
     before, now = (reading.budget if reading else None for reading in (change.reading_before, change.reading_now))
     return {
-        "position": _named(change.before, change.now),
-        "change": change.change,
+        "position": _named(change.pair.before, change.pair.now),
+        "change": change.pair.change,
         "worst_before": _worst(before),
         "worst_now": _worst(now),
         "limit": _turned(_limit(before), _limit(now)),
         "trips": _told(_trips(before, now)),
-        "alternates": _told(_verdicts(change)),
+        "alternates": _alternates(change),
     }
 
 
@@ -144,6 +144,12 @@ def _told(turns: Mapping[str, tuple[str, str]]) -> str:
     return "; ".join(turned) or ("as before" if turns else "")
 
 
+def _alternates(change: PositionChange) -> str:
+    if change.reading_before is change.reading_now:  # what changed cannot turn a verdict, so none is computed
+        return "as before" if change.pair.record.position.alternates else ""
+    return _told(_verdicts(change))
+
+
 def _trips(before: Budget | None, now: Budget | None) -> dict[str, tuple[str, str]]:
     old, new = ({trip.name: _NEAR[trip.ok] for trip in budget.trips} if budget else {} for budget in (before, now))
     return {name: (old.get(name, ""), new.get(name, "")) for name in dict.fromkeys([*old, *new])}
@@ -163,12 +169,11 @@ def details(changes: Changes) -> Iterator[tuple[str, str]]:
         yield from ((name_of(part.pair.record), text) for text in _fields(part.pair.fields))
         yield from _moved(part.pair.before, part.pair.now)
     for position in changes.positions:
-        record = position.now or position.before
-        assert record is not None
+        name = name_of(position.pair.record)
         if position.parts:
-            yield name_of(record), f"changed with {', '.join(position.parts)}"
-        yield from ((name_of(record), text) for text in _fields(position.fields))
-        yield from _moved(position.before, position.now)
+            yield name, f"changed with {', '.join(position.parts)}"
+        yield from ((name, text) for text in _fields(position.pair.fields))
+        yield from _moved(position.pair.before, position.pair.now)
 
 
 def _moved(
@@ -211,7 +216,7 @@ def _part_answer(change: PartChange) -> dict[str, Any]:
     return {
         "part": pair.record.part.part,
         "maker": pair.record.part.maker,
-        "was": name_of(pair.before) if pair.change == "renamed" and pair.before else None,
+        "was": _old_name(pair),
         "change": pair.change,
         "worst_k": rounded(shift.worst_k) if shift else None,
         "at_c": shift.at_c if shift else None,
@@ -222,13 +227,16 @@ def _part_answer(change: PartChange) -> dict[str, Any]:
     }
 
 
+def _old_name(pair: Pair[PartRecord] | Pair[PositionRecord]) -> str | None:
+    return name_of(pair.before) if pair.change == "renamed" and pair.before else None
+
+
 def _position_answer(change: PositionChange) -> dict[str, Any]:
-    record = change.now or change.before
-    assert record is not None
+    pair = change.pair
     return {
-        "position": name_of(record),
-        "was": name_of(change.before) if change.change == "renamed" and change.before else None,
-        "change": change.change,
+        "position": name_of(pair.record),
+        "was": _old_name(pair),
+        "change": change.pair.change,
         "parts": list(change.parts),
         "before": _reading_answer(change.reading_before.budget if change.reading_before else None),
         "now": _reading_answer(change.reading_now.budget if change.reading_now else None),
@@ -236,8 +244,8 @@ def _position_answer(change: PositionChange) -> dict[str, Any]:
             {"part": part, "before": before or None, "now": now or None}
             for part, (before, now) in _verdicts(change).items()
         ],
-        "fields": _field_answers(change.fields),
-        "file": record.source.file,
+        "fields": _field_answers(pair.fields),
+        "file": pair.record.source.file,
     }
 
 

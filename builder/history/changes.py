@@ -5,16 +5,13 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass
 
-from builder.history.fields import FieldChange
-from builder.history.matching import Change, Pair, part_pairs, position_pairs
-from builder.history.readings import Reading, reading
+from builder.history.effects import has_effect
+from builder.history.matching import Pair, part_pairs, position_pairs
+from builder.history.readings import Reading
 from builder.history.revision import State
-from builder.history.shift import Shift, shift
+from builder.history.shift import NOTHING_MOVED, Shift, shift
 from builder.problems import Problem
 from builder.records import Catalog, PartRecord, PositionRecord, UnknownPart
-
-# What a part says in these does nothing to the positions where it is named.
-_WITHOUT_EFFECT = ("accepted", "description", "documents", "notes")
 
 
 @dataclass(frozen=True, eq=False)
@@ -27,12 +24,9 @@ class PartChange:
 
 @dataclass(frozen=True, eq=False)
 class PositionChange:
-    """A position that changed, or whose parts did, as named in `parts`; what it read before and reads now."""
+    """A position that changed, or whose parts did, as named in `parts`; what it read, None where it was not there, and reads."""
 
-    change: Change
-    before: PositionRecord | None
-    now: PositionRecord | None
-    fields: tuple[FieldChange, ...]
+    pair: Pair[PositionRecord]
     parts: tuple[str, ...]
     reading_before: Reading | None
     reading_now: Reading | None
@@ -55,11 +49,13 @@ def changes(before: State, now: State) -> Changes:
 
 
 def _shift(pair: Pair[PartRecord]) -> Shift | None:
-    return shift(pair.before, pair.now) if pair.before is not None and pair.now is not None else None
+    if pair.before is None or pair.now is None:
+        return None
+    return shift(pair.before, pair.now) if has_effect(pair) else NOTHING_MOVED
 
 
 def _position_changes(before: State, now: State, parts: Sequence[Pair[PartRecord]]) -> Iterator[PositionChange]:
-    effective = [pair for pair in parts if _has_effect(pair)]
+    effective = [pair for pair in parts if has_effect(pair)]
     changed_before = {pair.before.name: pair.record.name for pair in effective if pair.before}
     changed_now = {pair.now.name: pair.record.name for pair in effective if pair.now}
     pairs = {_place(pair): pair for pair in position_pairs(before, now)}
@@ -67,29 +63,28 @@ def _position_changes(before: State, now: State, parts: Sequence[Pair[PartRecord
     for record in now.catalog.positions:
         name = record.position.position
         pair = pairs.pop(name, None) or Pair("its parts", olds.get(name, record), record)
-        hangs_on = {
-            **(_hangs_on(pair.before, before.catalog, changed_before) if pair.before else {}),
-            **_hangs_on(record, now.catalog, changed_now),
-        }
+        hangs_on: dict[str, None] = {}
+        if pair.before is not None:
+            hangs_on = _hangs_on(pair.before, before.catalog, changed_before) | _hangs_on(
+                record, now.catalog, changed_now
+            )
         if pair.change != "its parts" or hangs_on:
-            yield _position_change(pair, tuple(hangs_on), before, now)
+            yield _position_change(pair, tuple(hangs_on), before.catalog, now.catalog)
     for pair in pairs.values():
-        yield _position_change(pair, (), before, now)
+        yield _position_change(pair, (), before.catalog, now.catalog)
 
 
-def _position_change(pair: Pair[PositionRecord], parts: tuple[str, ...], before: State, now: State) -> PositionChange:
-    read_before = reading(pair.before, before.catalog) if pair.before else None
-    read_now = reading(pair.now, now.catalog) if pair.now else None
-    return PositionChange(pair.change, pair.before, pair.now, pair.fields, parts, read_before, read_now)
+def _position_change(
+    pair: Pair[PositionRecord], parts: tuple[str, ...], before: Catalog, now: Catalog
+) -> PositionChange:
+    reads = Reading(pair.now, now) if pair.now else None
+    if pair.before is not None and not parts and not has_effect(pair):
+        return PositionChange(pair, parts, reads, reads)
+    return PositionChange(pair, parts, Reading(pair.before, before) if pair.before else None, reads)
 
 
 def _place(pair: Pair[PositionRecord]) -> str:
     return pair.record.position.position
-
-
-def _has_effect(pair: Pair[PartRecord]) -> bool:
-    said = {field.field.partition("[")[0] for field in pair.fields}
-    return pair.change != "file moved" and not (said and said <= set(_WITHOUT_EFFECT))
 
 
 def _hangs_on(place: PositionRecord, catalog: Catalog, changed: Mapping[str, str]) -> dict[str, None]:

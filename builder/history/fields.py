@@ -30,7 +30,7 @@ class FieldChange:
 
 def differing_fields(before: PartRecord | PositionRecord, now: PartRecord | PositionRecord) -> tuple[FieldChange, ...]:
     """The fields that differ, in the order of the record; a table's rows at the end."""
-    return (*differing_values((), _stated(before), _stated(now)), *_differing_rows(_table(before), _table(now)))
+    return (*differing_values((), _stated(before), _stated(now)), *differing_rows(before, now))
 
 
 def _stated(record: PartRecord | PositionRecord) -> dict[str, Any]:
@@ -61,8 +61,9 @@ def _table(record: PartRecord | PositionRecord) -> TableData | None:
     return record.table if isinstance(record, PartRecord) else None
 
 
-def _differing_rows(before: TableData | None, now: TableData | None) -> Iterator[FieldChange]:
-    old, new = _rows(before), _rows(now)
+def differing_rows(before: PartRecord | PositionRecord, now: PartRecord | PositionRecord) -> Iterator[FieldChange]:
+    """The rows of two records' tables that differ, told by their number where they are many."""
+    old, new = _rows(_table(before)), _rows(_table(now))
     differing = [t_c for t_c in sorted(old.keys() | new.keys()) if old.get(t_c) != new.get(t_c)]
     if len(differing) > _MOST_ROWS:
         yield FieldChange("r_t_table", f"{len(old)} rows", f"{len(new)} rows, {len(differing)} differ")

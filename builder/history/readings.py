@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass
+from functools import cached_property
 
 from builder.circuit import Budget, budget, firmware_part, thermistor
 from builder.decisions import Verdict, swap
@@ -13,16 +14,21 @@ from builder.records import Catalog, PositionRecord, UnknownPart
 
 @dataclass(frozen=True, eq=False)
 class Reading:
-    """The budget of the fitted part, None where a part is not on record, and each alternate's verdict by its number."""
+    """A position in one state; each of its figures is computed when it is asked for."""
 
-    budget: Budget | None
-    verdicts: Mapping[str, Verdict | None]
+    place: PositionRecord
+    catalog: Catalog
 
+    @cached_property
+    def budget(self) -> Budget | None:
+        """The budget of the fitted part; None where a part is not on record."""
+        return _budget(self.place, self.catalog)
 
-def reading(place: PositionRecord, catalog: Catalog) -> Reading:
-    """A position's budget and the verdicts of its alternates."""
-    verdicts = {alternate.part: _verdict(place, alternate.part, catalog) for alternate in place.position.alternates}
-    return Reading(_budget(place, catalog), verdicts)
+    @cached_property
+    def verdicts(self) -> Mapping[str, Verdict | None]:
+        """The verdict on each alternate by its number; None where it is not on record."""
+        alternates = self.place.position.alternates
+        return {alternate.part: _verdict(self.place, alternate.part, self.catalog) for alternate in alternates}
 
 
 def _budget(place: PositionRecord, catalog: Catalog) -> Budget | None:

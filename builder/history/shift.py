@@ -37,6 +37,7 @@ class Shift:
         return not max(abs(self.worst_k), abs(self.band_worst_k)) <= MOVED_K
 
 
+NOTHING_MOVED = Shift(0.0, None, 0.0, None)
 NOT_KNOWN = Shift(np.nan, None, np.nan, None)
 
 

@@ -5,8 +5,10 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from builder.crosschecks import RULES, CheckedCatalog
+from builder.history import Past
 from builder.kept import Kept
 from builder.pages.budget_section import budget_csv
+from builder.pages.changes_page import changes_page
 from builder.pages.checks_page import checks_page, rule_page
 from builder.pages.context import Context
 from builder.pages.documents_section import document_files
@@ -24,12 +26,17 @@ from builder.pages.swap_page import swap_csv, swap_page
 
 
 def site(
-    checked: CheckedCatalog, *, about: str = "", figures: bool = True, kept: Kept | None = None
+    checked: CheckedCatalog,
+    *,
+    about: str = "",
+    figures: bool = True,
+    past: Past | None = None,
+    kept: Kept | None = None,
 ) -> Iterator[Page | DataFile | CopiedFile]:
     """Every generated page and file.
 
     `about` is what the home page says of the catalog; pages without figures cost less, for measuring what figures cost;
-    `kept` has what was computed for an earlier site.
+    `past` has the revisions that the Changes page shows, `kept` what was computed for an earlier site.
     """
     context = Context(checked, about, figures, kept or Kept())
     yield home_page(context)
@@ -39,6 +46,7 @@ def site(
     yield side_by_side_page()
     yield families_page(context)
     yield positions_page(context)
+    yield changes_page(context, past)
     yield checks_page()
     yield from (rule_page(rule, context) for rule in RULES)
     yield record_format_page()

@@ -184,7 +184,7 @@ def test_positions_are_listed_with_what_their_parts_do(kept):
     kept.commit("one", x=part(), y=other_part(), place=position())
     kept.write(y=other_part("Y-103", ("3960", "3700")))
     (change,) = found().positions
-    assert (change.change, change.parts, change.fields) == ("its parts", ("Maker Y-103",), ())
+    assert (change.pair.change, change.parts, change.pair.fields) == ("its parts", ("Maker Y-103",), ())
     assert change.reading_before.verdicts == {"Y-103": "fits"}
     assert change.reading_now.verdicts == {"Y-103": "fits with new firmware"}
     assert change.reading_before.budget.worst_k == change.reading_now.budget.worst_k
@@ -211,7 +211,7 @@ def test_edited_positions_are_listed_with_their_fields(kept):
     kept.commit("one", x=part(), y=other_part(), place=position())
     kept.write(place=position(("limit_k: 1.5", "limit_k: 0.2")))
     (change,) = found().positions
-    assert (change.change, fields(change)) == ("edited", [("limit_k", 1.5, 0.2)])
+    assert (change.pair.change, fields(change.pair)) == ("edited", [("limit_k", 1.5, 0.2)])
     assert [r.budget.meets_limit for r in (change.reading_before, change.reading_now)] == [True, False]
 
 
@@ -220,7 +220,7 @@ def test_positions_that_came_went_and_were_renamed(kept):
         "one", x=part(), y=other_part(), a=position(), b=position(("RT1", "RT2"), ("purpose: air", "purpose: oil"))
     )
     kept.write(a=position(("board/RT1", "board/RT7")), b=None, c=position(("board/RT1", "other/T3"), ("firmware: {method: curve}", "firmware: {method: b-value, resistance_ohm: 10k, b_k: 3950}"), ("3.3", "5"), ("10k, t", "22k, t"), ("board: Board", "board: Quite another"), ("alternates:\n  - part: Y-103\n    standing:\n      - {state: proposed, on: 2026-01-13, by: purchasing, because: second source}\n", ""), ("purpose: air", "purpose: heat sink of the output stage"), ("[-20, 60]", "[0, 100]")))  # fmt: skip
-    assert [(change.change, (change.now or change.before).position.position) for change in found().positions] == [
+    assert [(change.pair.change, change.pair.record.position.position) for change in found().positions] == [
         ("renamed", "board/RT7"),
         ("added", "other/T3"),
         ("removed", "board/RT2"),
