@@ -100,18 +100,20 @@ def _out_of_order(ledger: Sequence[Entry]) -> Iterator[Problem]:
 
 
 def _shared_own_numbers(catalog: Catalog) -> Iterator[Problem]:
-    by_number: dict[str, list[PartRecord]] = defaultdict(list)
+    meanings: dict[str, list[tuple[PartRecord, str]]] = defaultdict(list)
     for record in catalog.parts:
-        if record.own_number:
-            by_number[record.own_number.casefold()].append(record)
-    for sharing in by_number.values():
-        for record, other in zip(sharing, [*sharing[1:], sharing[0]], strict=True):
-            if other is not record:
-                message = (
-                    f"{clipped(record.own_number or '')} is the own number of {other.name} too. Give each part its "
-                    "own, or accept the finding where one number buys either."
-                )
-                yield record.source.problem(("own_number",), "own-number-shared", message, "warning")
+        meanings[record.number.casefold()].append((record, "part number"))
+        meanings[(record.own_number or "").casefold()].append((record, "own number"))
+    for record in catalog.parts:
+        own = record.own_number or ""
+        shared = next(((other, what) for other, what in meanings[own.casefold()] if other is not record), None)
+        if own and shared:
+            other, what = shared
+            message = (
+                f"{clipped(own)} is the {what} of {other.name} too. Give each part its own, or accept the finding where "
+                "one number buys either."
+            )
+            yield record.source.problem(("own_number",), "own-number-shared", message, "warning")
 
 
 def approvals_of_errors(catalog: Catalog, problems: Iterable[Problem]) -> Iterator[Problem]:

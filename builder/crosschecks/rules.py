@@ -231,7 +231,8 @@ RULES = (
     ),
     Rule(
         "own-number-shared",
-        "One own number in the records of two parts: nobody can tell by it which of them was bought.",
+        "One own number in the records of two parts, or an own number that is another part's number: nobody can tell by it "
+        "which of them was bought.",
         "own_number: HS-10473 in two records.",
         "Give each part its own. Where one number buys either of them on purpose, accept the finding in both records.",
     ),

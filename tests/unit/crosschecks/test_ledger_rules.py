@@ -162,6 +162,14 @@ def test_an_own_number_of_two_parts_is_told_in_both_records_and_can_be_accepted(
     assert told(b=part(number="PX-2", more="own_number: HS-2\n"), a=part(more=own)) == []
 
 
+def test_an_own_number_that_is_another_part_s_number_is_told(told: Told) -> None:
+    assert told(a=part(more="own_number: PX-1\n")) == []
+    assert told(a=part(more="own_number: px-2\n"), b=part(number="PX-2")) == [
+        "parts/a.yaml:9: own_number: px-2 is the part number of Pellworm PX-2 too. Give each part its own, or accept the finding "
+        "where one number buys either. [warning: own-number-shared]"
+    ]
+
+
 @pytest.mark.parametrize(
     ("old", "new", "count"),
     [
