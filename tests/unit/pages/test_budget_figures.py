@@ -62,6 +62,7 @@ def test_bias_bands_and_limit_stand_where_the_rows_say(made: Budget) -> None:
 def test_the_layers_are_the_sources_half_widths_stacked(made: Budget) -> None:
     rows, figure = made.rows, sources_figure(made)
     total_k = sum((high - low) / 2 for low, high in rows.sources_k.values())
+    np.testing.assert_allclose(sum(layers_k(made).values()), total_k)
     top_k = width_scale(total_k, "").high
     root = ElementTree.fromstring(figure)
     (plot,) = (svg for svg in root.iter("svg") if svg.get("x"))
@@ -74,7 +75,6 @@ def test_the_layers_are_the_sources_half_widths_stacked(made: Budget) -> None:
         np.testing.assert_allclose(low, tenths(rows.t_c, below_k, 0, top_k), rtol=0, atol=HALF_TENTH)
         below_k = below_k + width_k
         np.testing.assert_allclose(high, tenths(rows.t_c, below_k, 0, top_k), rtol=0, atol=HALF_TENTH)
-    np.testing.assert_allclose(below_k, total_k)
 
 
 def test_the_five_largest_sources_stand_alone_and_the_rest_together(made: Budget) -> None:
@@ -104,16 +104,26 @@ def test_layers_are_told_apart_without_colour(made: Budget) -> None:
 
 
 def test_hatching_stays_between_the_edges_of_its_layer() -> None:
-    t_c = np.linspace(0.0, 100.0, 11)
+    t_c = np.linspace(22.0, 88.0, 12)
     low, high = 0.2 + t_c / 200, 0.3 + t_c / 100
-    plot = Plot(temperature_scale(t_c), width_scale(high, ""))
+    plot = Plot(temperature_scale(np.array([0.0, 100.0])), width_scale(high, ""))
     (path,) = elements(Layer("x", t_c, low, high, 2).svg(plot), "bdf-hatch")
     strokes = np.array(re.findall(r"M(\d+) (\d+)V(\d+)", path.get("d", "")), dtype=float)
-    assert len(strokes) > 50
     at_c = strokes[:, 0] / (10 * PLOT_WIDTH) * 100
+    assert len(strokes) > 50 and at_c.min() >= 22 and at_c.max() <= 88
     for place, edge in ((1, 0.2 + at_c / 200), (2, 0.3 + at_c / 100)):
         down = (plot.y.high - edge) / plot.y.high * 10 * PLOT_HEIGHT
         np.testing.assert_allclose(strokes[:, place], down, rtol=0, atol=HALF_TENTH)
+
+
+def test_a_layer_has_a_gap_where_it_has_no_width() -> None:
+    t_c = np.arange(0.0, 100.0, 10.0)
+    high = np.where(t_c == 50, np.nan, 1.0)
+    svg = Layer("x", t_c, 0 * t_c, high, 1).svg(Plot(temperature_scale(t_c), width_scale(high, "")))
+    (path,) = elements(svg, "bdf-layer")
+    across = [run[:, 0] for run in runs(path.get("d", "").replace("z", ""))]
+    ends_c = [(x.min() / (10 * PLOT_WIDTH) * 90, x.max() / (10 * PLOT_WIDTH) * 90) for x in across]
+    np.testing.assert_allclose(ends_c, [(0, 40), (60, 90)], rtol=0, atol=0.05)
 
 
 def test_where_no_board_reads_the_figures_have_a_gap_and_no_number_that_is_none() -> None:
