@@ -15,7 +15,7 @@ from builder.bills.unreadable import Unreadable
 from builder.bills.workbook import COMPOUND_FILE, ZIP, workbook_sheets
 from builder.problems import clipped, nearest
 
-LARGEST_BYTES = 50_000_000
+LARGEST_BYTES = 20_000_000
 # Titles and addresses stand above the headings; nobody writes more of them.
 _TITLE_ROWS = 100
 _LONGEST_REFERENCES = 10_000

@@ -50,7 +50,7 @@ def judgement(bill: Bill, catalog: Catalog, board: Board | None) -> Judgement:
     thermistors = [item for item in items if item.is_thermistor]
     holders = _holders(items)
     found = [finding for item in items for finding in _of_line(item, numbers, board, holders)]
-    found += _missing(thermistors, board)
+    found += _missing(thermistors, numbers, board)
     return Judgement(board, tuple(found), len(thermistors), len(items) - len(thermistors))
 
 
@@ -165,8 +165,9 @@ def _quantity(item: Recognised) -> Iterator[Finding]:
 
 def _repeated(item: Recognised, holders: Mapping[str, list[Recognised]]) -> Iterator[Finding]:
     """References that an earlier line has already, or that this one has twice."""
-    for name, times in Counter(item.line.references).items():
-        held = holders.get(name.casefold(), [item])
+    typed = {name.casefold(): name for name in item.line.references}
+    for key, times in Counter(name.casefold() for name in item.line.references).items():
+        name, held = typed[key], holders.get(key, [item])
         if held[0] is not item:
             message = f"{name} stands on line {held[0].line.line} already. Take it from one of the two."
             yield _found(item, "repeated-reference", "blocks", message, name)
@@ -175,11 +176,12 @@ def _repeated(item: Recognised, holders: Mapping[str, list[Recognised]]) -> Iter
             yield _found(item, "repeated-reference", "blocks", message, name)
 
 
-def _missing(items: Iterable[Recognised], board: Board | None) -> Iterator[Finding]:
+def _missing(items: Iterable[Recognised], numbers: Numbers, board: Board | None) -> Iterator[Finding]:
     """The board's positions that no line names."""
     named = {name.casefold() for item in items for name in item.line.references}
     for place in board.places if board else ():
         if reference(place).casefold() not in named:
             position = place.position
+            part = next((found.part.part for found in numbers.parts(position.fitted)), None)
             message = f"{position.position} is not on the bill; it is made for {position.fitted}. Add it, or take the position out of the records."
-            yield Finding(None, reference(place), "", position.fitted, "missing-reference", "blocks", message)
+            yield Finding(None, reference(place), "", part, "missing-reference", "blocks", message)

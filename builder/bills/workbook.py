@@ -60,7 +60,9 @@ def _rows(sheet: Any) -> Iterator[Row]:
     for line, values in enumerate(sheet.iter_rows(values_only=True), start=1):
         if line > MOST_LINES:
             raise Unreadable(f"more than {MOST_LINES} rows are no bill. Export the rows of the bill alone.")
-        cells = tuple(map(_text, values))
+        # A format that was given to whole rows makes thousands of blank cells.
+        filled = max((column for column, value in enumerate(values, start=1) if value is not None), default=0)
+        cells = tuple(map(_text, values[:filled]))
         if any(cell.strip() for cell in cells):
             yield Row(line, cells)
 

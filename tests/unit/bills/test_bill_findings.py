@@ -300,7 +300,7 @@ def test_a_reference_on_two_lines_blocks(found):
 
 def test_a_reference_twice_on_one_line_blocks(found):
     message = "X1 stands 2 times on the line. Leave it once."
-    assert found("X1 X1;TB3A-103F38\n")[-1] == (2, "X1", "TB3A-103F38", "repeated-reference", "blocks", message)
+    assert found("x1 X1;TB3A-103F38\n")[-1] == (2, "X1", "TB3A-103F38", "repeated-reference", "blocks", message)
 
 
 def test_a_position_that_is_not_on_the_bill_blocks(found):
@@ -310,6 +310,13 @@ def test_a_position_that_is_not_on_the_bill_blocks(found):
     assert found("RT1;TB3A-103F38\n", "coolbox-main")[1:] == [
         (None, "RT2", "PR-1000", "missing-reference", "blocks", message)
     ]
+
+
+def test_what_is_missing_is_told_by_its_number_on_record(records):
+    catalog = records(FILES | {"rt1.yaml": place("coolbox-main/RT1", "Coolbox logger", "HS-10473", ALTERNATES)})
+    bill = read_bill(b"Reference,MPN\nRT2,PR-1000\n", name="bill.csv")
+    missing = judgement(bill, catalog, named_board(boards(catalog), "coolbox-main")).findings[-1]
+    assert (missing.finding, missing.part) == ("missing-reference", "TB3A-103F38")
 
 
 def test_a_part_that_is_not_fitted_is_told_and_blocks_only_where_a_position_stays_empty(found):

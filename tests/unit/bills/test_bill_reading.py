@@ -122,6 +122,7 @@ def test_a_heading_of_several_meanings_means_what_no_other_column_does(headings,
 def test_a_column_is_chosen_by_its_heading():
     content = "Place;Value;MPN\nRT1;TB3A-103F38;RC-1\n"
     assert lines(content, chosen={"number": "value"})[0].number == "TB3A-103F38"
+    assert lines("Reference;Qty\nA1;2\n", chosen={"number": "Reference"}) == (BillLine(2, number="A1", quantity="2"),)
     assert lines("Wo;Was\nRT1;A1\n", chosen={"reference": "WO", "number": "Was"}) == (BillLine(2, ("RT1",), "A1"),)
 
 
@@ -206,7 +207,7 @@ NO_HEADING = (
             1,
             "the headings MPN and Manufacturer's number both say number. Choose one with --number, or rename one.",
         ),
-        (b" " * 50_000_001, None, "it is larger than 50 MB, which is no bill. Export the bill alone."),
+        (b" " * 20_000_001, None, "it is larger than 20 MB, which is no bill. Export the bill alone."),
     ],
     ids=lambda value: "" if not isinstance(value, str) else value[:20],
 )

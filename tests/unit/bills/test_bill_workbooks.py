@@ -12,6 +12,7 @@ import pytest
 from openpyxl.worksheet.worksheet import Worksheet
 
 from builder.bills import BillLine, Unreadable, read_bill
+from builder.bills.workbook import workbook_sheets
 
 HEADINGS = ("Reference", "MPN", "Qty", "Description")
 NO_WORKBOOK = "it is no XLSX workbook that can be read. Save it as XLSX, or export the bill as CSV."
@@ -51,9 +52,16 @@ def changed(data: bytes, member: str, change) -> bytes:
 
 
 def test_cells_of_every_kind_are_text_and_rows_keep_their_numbers():
-    rows = [("Coolbox",), (), HEADINGS, ("RT1", 40512, 1.0, 0.1), (), ("RT2", datetime.datetime(2026, 3, 5), True)]
+    rows = [
+        ("Coolbox",),
+        (),
+        HEADINGS,
+        ("RT1", 40512, 1.0, 0.1 + 0.2),
+        (),
+        ("RT2", datetime.datetime(2026, 3, 5), True),
+    ]
     assert lines(workbook(Bill=rows)) == (
-        BillLine(4, ("RT1",), "40512", quantity="1", description="0.1"),
+        BillLine(4, ("RT1",), "40512", quantity="1", description="0.3"),
         BillLine(6, ("RT2",), "2026-03-05T00:00:00", quantity="True"),
     )
 
@@ -82,6 +90,16 @@ def test_a_sheet_that_is_wrong_about_its_size_is_read_whole():
         lambda xml: xml.replace(b'ref="A1:D2"', b'ref="A1"'),
     )
     assert lines(data) == (BillLine(2, ("RT1",), "A1", quantity="1"),)
+
+
+def test_blank_cells_behind_the_last_are_left_out():
+    book = openpyxl.load_workbook(io.BytesIO(workbook(Bill=[HEADINGS, ("RT1", "A1", 1)])))
+    for row in (1, 2):
+        book.active.cell(row, 2000).number_format = "0.00"
+    out = io.BytesIO()
+    book.save(out)
+    (sheet,) = workbook_sheets(out.getvalue())
+    assert [len(row.cells) for row in sheet.rows] == [4, 3]
 
 
 def test_formulas_without_values_are_refused_since_their_cells_look_empty():
