@@ -197,7 +197,7 @@ def _value(value: Any) -> str:
     if isinstance(value, int | float):
         return number_text(value, 10)
     if isinstance(value, dict):
-        return clipped(", ".join(f"{name} {_value(inner)}" for name, inner in value.items()), 100)
+        return clipped(", ".join(f"{name} {_value(inner)}" for name, inner in value.items()), 160)
     return clipped(", ".join(map(_value, value)) or "nothing")
 
 
