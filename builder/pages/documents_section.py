@@ -8,7 +8,7 @@ from typing import Any
 from builder.ledger import Entry, figure_documents, named_document, replacement
 from builder.pages.context import Context
 from builder.pages.html import Html, joined, link, table, tag
-from builder.pages.ledger import standing_badge
+from builder.pages.ledger import day_text, standing_badge
 from builder.pages.page import CopiedFile
 from builder.pages.paths import relative
 from builder.records import PartRecord
@@ -44,7 +44,7 @@ def _documents(record: PartRecord, context: Context) -> Html:
         (
             link(document.title, document.link) if document.link else document.title,
             document.revision,
-            document.dated.isoformat() if document.dated else None,
+            day_text(document.dated),
             _file(document, record, context),
             ", ".join(_FIGURES[name] for name, source in read_from.items() if source is document),
             _replaced(replacement(part, document)),
@@ -82,7 +82,7 @@ def outdated_sources(record: PartRecord, context: Context) -> str:
 def _outdated_table(record: PartRecord, context: Context) -> Html:
     rows = [
         (
-            entry.standing.on.isoformat(),
+            day_text(entry.standing.on),
             _where(entry, context),
             standing_badge(entry.standing.state),
             entry.standing.by,

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from datetime import date
 
 from builder.pages.html import Html, joined, table, tag
 from builder.records.part import Standing
@@ -24,16 +25,21 @@ def standing_line(standing: Sequence[Standing]) -> Html:
     return joined([standing_badge(last.state), ", ".join(s for s in said if s)], " ")
 
 
+def day_text(day: date | None) -> Html | None:
+    """A day that stays on one line."""
+    return tag("time", day.isoformat(), datetime=day.isoformat()) if day else None
+
+
 def ledger_table(standing: Sequence[Standing], caption: str) -> Html:
     """Every entry, the newest first."""
     rows = [
         (
-            tag("time", entry.on.isoformat(), datetime=entry.on.isoformat()),
+            day_text(entry.on),
             standing_badge(entry.state),
             entry.by,
             entry.because,
             ", ".join(entry.only_for),
-            entry.review_due.isoformat() if entry.review_due else None,
+            day_text(entry.review_due),
         )
         for entry in reversed(standing)
     ]
