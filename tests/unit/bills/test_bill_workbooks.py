@@ -56,14 +56,24 @@ def test_cells_of_every_kind_are_text_and_rows_keep_their_numbers():
         ("Coolbox",),
         (),
         HEADINGS,
-        ("RT1", 40512, 1.0, 0.1 + 0.2),
+        ("RT1", 40512, 1.0, 0.1),
         (),
         ("RT2", datetime.datetime(2026, 3, 5), True),
     ]
     assert lines(workbook(Bill=rows)) == (
-        BillLine(4, ("RT1",), "40512", quantity="1", description="0.3"),
+        BillLine(4, ("RT1",), "40512", quantity="1", description="0.1"),
         BillLine(6, ("RT2",), "2026-03-05T00:00:00", quantity="True"),
     )
+
+
+def test_a_number_has_no_more_figures_than_a_sheet_shows():
+    data = workbook(Bill=[HEADINGS, ("RT1", 40512, 1, 0.3)])
+    noisy = changed(
+        data,
+        "xl/worksheets/sheet1.xml",
+        lambda xml: xml.replace(b">40512<", b">40512.0<").replace(b">0.3<", b">0.30000000000000004<"),
+    )
+    assert noisy != data and lines(noisy) == lines(data)
 
 
 def test_the_sheet_that_has_headings_is_read_and_of_several_the_named_one():
