@@ -19,7 +19,7 @@ LARGEST_BYTES = 20_000_000
 # Titles and addresses stand above the headings; nobody writes more of them.
 _TITLE_ROWS = 100
 _LONGEST_REFERENCES = 10_000
-_MOST_REFERENCES = 1_000_000
+_MOST_REFERENCES = 200_000
 _IN_ORDER: tuple[Role, ...] = ("reference", "number", "own-number", "maker", "quantity")
 _QUANTITY = re.compile(r"([0-9]{1,9})(?:[.,]0+)?\s?(?:x|×|pcs?\.?|pieces?|ea\.?|stk\.?|stück|pi?è?ces?|uds?\.?)?", re.I)
 

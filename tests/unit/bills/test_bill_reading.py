@@ -198,6 +198,16 @@ NO_HEADING = (
             "a cell has more than 131072 characters. Is a quotation mark not closed?",
         ),
         (
+            "Reference,Part number\n" + "R1-R9 " * 2000 + ",A1\n",
+            2,
+            "11999 characters are too many for the references of a line. Divide it into several lines.",
+        ),
+        (
+            "Reference,Part number\n" + "R1-R999,A1\n" * 201,
+            202,
+            "more than 200000 references are no bill. Export the bill of one board.",
+        ),
+        (
             "Part number\n" + "A1\n" * 200_001,
             None,
             "more than 200000 lines are no bill. Export the lines of the bill alone.",
