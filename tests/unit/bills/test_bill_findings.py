@@ -4,6 +4,7 @@ import pytest
 from factory import changed, part, position
 
 from builder.bills import UnknownBoard, boards, guessed_board, judgement, named_board, read_bill, restricted_parts
+from builder.bills.numbers import Numbers
 
 STANDING = "standing:\n  - {state: proposed, on: 2026-01-12, by: sensors, because: first samples}\n"
 HEADINGS = "Ref;MPN;Own number;Maker;Qty;Description;DNP\n"
@@ -193,6 +194,13 @@ def test_the_fitted_part_may_be_not_approved_itself(found):
 )  # fmt: skip
 def test_a_number_is_known_in_any_case_with_spaces_dashes_and_listed_suffixes(found, number):
     assert [finding[2:5] for finding in of_rt1(found, f"RT1;{number}")] == [("TB3A-103F38", "approved", "ok")]
+
+
+def test_a_maker_s_number_is_hidden_by_no_own_number_and_no_suffix(records):
+    own = record("OWN-1", "standing: []\n", own="own_number: YC3-103H\n")
+    packed = record("YC3", "standing: []\n", suffixes='packaging_suffixes: ["-103H"]\n')
+    catalog = records(FILES | {"1.yaml": own, "2.yaml": packed})
+    assert [part.name for part in Numbers(catalog.parts).parts("YC3-103H")] == ["Yarrowfield Sensors YC3-103H"]
 
 
 def test_an_own_number_alone_names_the_part(found):

@@ -208,9 +208,9 @@ NO_HEADING = (
             "more than 200000 references are no bill. Export the bill of one board.",
         ),
         (
-            "Part number\n" + "A1\n" * 200_001,
+            "Part number\n" + "A1\n" * 100_001,
             None,
-            "more than 200000 lines are no bill. Export the lines of the bill alone.",
+            "more than 100000 lines are no bill. Export the lines of the bill alone.",
         ),
         (
             "MPN;Manufacturer's number\nA1;A2\n",
