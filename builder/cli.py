@@ -22,6 +22,7 @@ _MODULES = {
     "shortlist": "positions",
     "changes": "changing",
     "bom": "bom",
+    "new": "new_record",
 }
 
 

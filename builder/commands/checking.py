@@ -39,7 +39,7 @@ def check_command(
             wanted.append(Path(record.table.file).resolve())
     problems = catalog.problems if since is None else (*catalog.problems, *_not_kept(records, since, catalog))
     found = [problem for problem in in_order(problems) if not wanted or _below(problem.file, wanted)]
-    {"table": _print_problems, "json": _print_json_problems, "csv": _print_csv_problems}[form](found, catalog)
+    {"table": print_problems, "json": _print_json_problems, "csv": _print_csv_problems}[form](found, catalog)
     sys.exit(1 if errors(found) else 0)
 
 
@@ -65,7 +65,8 @@ def _below(file: str, wanted: Iterable[Path]) -> bool:
     return any(here.is_relative_to(path) or here.resolve().is_relative_to(path) for path in wanted)
 
 
-def _print_problems(found: list[Problem], catalog: Catalog) -> None:
+def print_problems(found: list[Problem], catalog: Catalog) -> None:
+    """The problems, a line each, and how many there are of what."""
     for problem in found:
         click.echo(f"{problem} [{problem.severity}: {problem.rule}]")
     counts = f"{count_text(len(catalog.parts), 'part')}, {count_text(len(catalog.positions), 'position')}"

@@ -37,6 +37,27 @@ TODAY = click.option(
     metavar="DATE",
     help="The day to judge by, for output that does not change; default today.",
 )
+_TABLE_OPTIONS = (
+    click.option(
+        "--unit", metavar="UNIT", help="Unit of the resistances where the file does not say: ohm, kohm or Mohm."
+    ),
+    click.option(
+        "--temperature-unit", metavar="UNIT", help="Unit of the temperatures where the file does not say: C, F or K."
+    ),
+    click.option("--decimal", metavar="SIGN", help="The decimal sign where the file leaves it open: point or comma."),
+    click.option(
+        "--column",
+        metavar="HEADING",
+        help="Which resistances to read where the file has several: heading, or number from 1.",
+    ),
+)
+
+
+def table_options(command: _Command) -> _Command:
+    """The options that settle what a file's R–T table leaves open."""
+    for option in reversed(_TABLE_OPTIONS):
+        command = option(command)
+    return command
 
 
 REFUSES_CACHE = "builder.commands.refuses_cache"
