@@ -12,7 +12,7 @@ COMMA_FIELD = (
 )
 OUTSIDE_B = "is outside 1000 to 10000 K. Check the decimal point; data sheets print B in kelvin."
 TOP = (
-    "part, maker, own_number, description, body, rated, b_values, steinhart_hart, r_t_table, accuracy, curve_from, "
+    "part, maker, own_number, packaging_suffixes, description, body, rated, b_values, steinhart_hart, r_t_table, accuracy, curve_from, "
     "shape, limits, qualification, lifecycle, documents, standing, accepted, notes"
 )
 
