@@ -31,7 +31,7 @@ def _fitted(place: PositionRecord, catalog: Catalog) -> Iterator[Problem]:
     if own.state == "withdrawn":
         message = f"{part.name} is withdrawn since {own.on.isoformat()}. Fit another part, or an approved alternate."
         yield place.source.problem(("fitted",), "withdrawn-fitted", message, "warning")
-    if not is_for(own, place.position):
+    elif not is_for(own, place.position):
         message = f"{part.name} is {_only_for(own)}. Fit another part, or append an entry to its standing that names this position."
         yield place.source.problem(("fitted",), "not-for-here", message)
 
@@ -44,7 +44,7 @@ def _approved_here(entry: Entry, place: PositionRecord) -> Iterator[Problem]:
             "Append an entry that withdraws it here too, or approve the part again."
         )
         yield entry.problem(("state",), "approved-though-withdrawn", message)
-    if own is not None and not is_for(own, place.position):
+    elif own is not None and not is_for(own, place.position):
         message = f"{state} here, where {name} is {_only_for(own)}. Append an entry to one of the two."
         yield entry.problem(("state",), "not-for-here", message)
     if not is_for(entry.standing, place.position):

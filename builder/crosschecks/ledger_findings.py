@@ -54,9 +54,10 @@ def _near(named: DocumentRevision, entry: Entry) -> str:
 def _replaced(entry: Entry) -> Iterator[Problem]:
     newer, named = replaced_since(entry), entry.standing.document
     if newer is not None and named is not None:
+        later = f"revision {newer.revision}" if newer.revision else "one without a revision"
         since = f" of {newer.dated.isoformat()}" if newer.dated else ""
         message = (
-            f"{entry.standing.state} rests on {clipped(str(named))}, which revision {newer.revision}{since} has replaced. "
+            f"{entry.standing.state} rests on {clipped(str(named))}, which {later}{since} has replaced. "
             "Review what changed, then append an entry."
         )
         yield entry.problem(("document",), "revision-replaced", message, "warning")

@@ -23,6 +23,14 @@ def test_a_fitted_part_that_is_withdrawn_is_told(told: Told) -> None:
     ]
 
 
+def test_of_a_withdrawn_part_it_is_not_told_where_it_might_be_fitted(told: Told) -> None:
+    gone = part(f"{WITHDRAWN}, only_for: [can/RT1]", number="PX-2")
+    found = told(a=part(), b=gone, p=position(*alternate("PX-1", APPROVED), fitted="PX-2"), q=OTHER_PLACE)
+    assert [line.rpartition("[")[2] for line in found] == ["warning: withdrawn-fitted]"]
+    found = told(p=position(*alternate("PX-2", APPROVED)))
+    assert [line.rpartition("[")[2] for line in found] == ["error: approved-though-withdrawn]"]
+
+
 def test_a_part_that_was_approved_again_may_be_fitted(told: Told) -> None:
     assert told(a=part(WITHDRAWN, APPROVED.replace("03-02", "05-04")), p=position()) == []
 

@@ -105,6 +105,14 @@ def test_an_approval_on_a_replaced_revision_is_told_where_it_holds(told: Told) -
     ]
 
 
+def test_a_later_document_without_a_revision_replaces_too(told: Told) -> None:
+    documents = "[{title: data sheet, revision: C}, {title: data sheet}]"
+    assert told(a=part(APPROVED, documents=documents)) == [
+        "parts/a.yaml:10: standing[0].document: approved rests on data sheet, revision C, which one without a revision has "
+        "replaced. Review what changed, then append an entry. [warning: revision-replaced]"
+    ]
+
+
 def test_a_replaced_revision_can_be_accepted(told: Told) -> None:
     on_b = APPROVED.replace("revision: C", "revision: B")
     accepted = "accepted: [{rule: revision-replaced, because: revision C corrects the address}]\n"
