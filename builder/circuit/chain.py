@@ -59,8 +59,8 @@ class Chain:
             Arrays of shape (m, n), or (n,) without offsets. No reading where the code is at an end.
         """
         divider, edge = self.divider(offsets), offsets.get("thermistor", 0.0)
-        body_c = self.thermistor.body_c(t_c, divider, edge)
-        junction_v = divider.junction_v(self.thermistor.resistance_ohm(body_c, edge))
+        body_c, r_ohm = self.thermistor.warmed(t_c, divider, edge)
+        junction_v = divider.junction_v(r_ohm)
         code = self.code(junction_v, offsets)
         readable = ~self.converter(NOMINAL).at_an_end(code)
         reading_c = self.conversion.reading_c(np.where(readable, code, np.nan))

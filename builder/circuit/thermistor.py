@@ -47,8 +47,8 @@ class Thermistor:
         edge_ohm = np.where(edge < 0, low_ohm, high_ohm)
         return edge_ohm if edge.all() else np.where(edge == 0, self.made.curve.resistance_ohm(body_c), edge_ohm)
 
-    def body_c(self, t_c: Array, divider: Divider, edge: Figure = 0.0) -> Array:
-        """Temperature of the body, warmed by its own power.
+    def warmed(self, t_c: Array, divider: Divider, edge: Figure = 0.0) -> tuple[Array, Array]:
+        """Temperature of the body, warmed by its own power, and its resistance there.
 
         Parameters
         ----------
@@ -61,9 +61,9 @@ class Thermistor:
 
         Returns
         -------
-        array, broadcast
+        tuple of two arrays, broadcast
             The balance body − T = P(R(body))/δ, within 1e-9 K; of several the coolest, which a sensor that is
-            switched on comes to first. [°C]
+            switched on comes to first [°C], and R(body) [Ω].
 
         Notes
         -----
@@ -73,22 +73,24 @@ class Thermistor:
         r_ohm = self.resistance_ohm(t_c, edge)
         coldest_c = t_c + 0 * divider.thermistor_w(r_ohm)
         if self.dissipation_mw_per_k is None:
-            return coldest_c
-        hottest_c = coldest_c + self._warming_k(divider, np.asarray(divider.seen_ohm))
+            return coldest_c, r_ohm
+        seen_ohm = divider.seen_ohm
+        hottest_c = coldest_c + self._warming_k(divider, np.asarray(seen_ohm))
         body_c, alpha_per_k = coldest_c, self.made.curve.alpha_pct_per_k(t_c) / 100
         for _ in range(_NEWTON_STEPS):
             warming_k = self._warming_k(divider, r_ohm)
-            power_slope = (divider.seen_ohm - r_ohm) / (divider.seen_ohm + r_ohm)  # d ln P / d ln R
+            power_slope = (seen_ohm - r_ohm) / (seen_ohm + r_ohm)  # d ln P / d ln R
             slope = 1 - warming_k * power_slope * alpha_per_k
             step_k = (body_c - t_c - warming_k) / slope
-            body_c = np.clip(body_c - step_k, coldest_c, hottest_c)
             arrived = ~(np.abs(step_k) > _ARRIVED_K)
             if arrived.all():
-                return body_c
+                return body_c, r_ohm
+            body_c = np.clip(body_c - step_k, coldest_c, hottest_c)
             r_ohm = self.resistance_ohm(body_c, edge)
             if np.any(np.abs(step_k) > _SLOPE_HOLDS_K):
                 alpha_per_k = self.made.curve.alpha_pct_per_k(body_c) / 100
-        return np.where(arrived, body_c, self._bisected_c(coldest_c, hottest_c, divider, edge))
+        body_c = np.where(arrived, body_c, self._bisected_c(coldest_c, hottest_c, divider, edge))
+        return body_c, self.resistance_ohm(body_c, edge)
 
     def _bisected_c(self, coldest_c: Array, hottest_c: Array, divider: Divider, edge: Figure) -> Array:
         low_c, high_c = coldest_c, hottest_c

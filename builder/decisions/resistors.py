@@ -17,8 +17,8 @@ from builder.part_curve import PartCurve, whole_steps_c
 from builder.records import Position
 from builder.units import Array, range_text
 
-# How far beyond the thermistor's resistances over the range the series is tried, each way.
-_BEYOND = 10.0
+# How far the values tried reach beyond the thermistor's resistances over the range, and at least around the middle one.
+_BEYOND, _AROUND = 10**0.5, 10.0
 # How closely values are looked at, one look after the other: at how many temperatures (None: at all), whether at all
 # corners of the limits, and how many values in one go. Only the time taken hangs on it: a few temperatures rule most
 # values out, and 23 over a range do not fall together with the rows of a table.
@@ -73,8 +73,8 @@ def best_resistor(position: Position, part: Thermistor, curve: PartCurve, series
 
     Notes
     -----
-    The values tried reach from a tenth of the thermistor's smallest resistance over the range to ten times its largest.
-    The worst case over some temperatures and some corners of the limits is never above the one over all of them. So the
+    The values tried reach half a decade beyond the thermistor's resistances over the range, and a decade each way from
+    the one in its middle. The worst case over some temperatures and some corners of the limits is never above the one over all of them. So the
     values are looked at more and more closely, always those first that promise most, until the best of those looked at
     wholly is better than what any other promises: it is the best of all.
     """
@@ -112,10 +112,12 @@ def best_value(position: Position, part: Thermistor, curve: PartCurve, series: S
 
 def _errors(position: Position, part: Thermistor, curve: PartCurve, series: Series) -> _Errors:
     place = with_new_firmware(position, curve)
-    ends_ohm = part.made.curve.resistance_ohm(np.array(position.range_c))
-    if not np.isfinite(ends_ohm).all():
+    low_ohm, high_ohm = np.sort(part.made.curve.resistance_ohm(np.array(position.range_c)))
+    if not np.isfinite([low_ohm, high_ohm]).all():
         raise ValueError(f"the curve does not reach over {range_text(position.range_c)}")
-    tried_ohm = series_ohm(series, ends_ohm.min() / _BEYOND, ends_ohm.max() * _BEYOND)
+    middle_ohm = _middle_ohm(position, part)
+    low_ohm, high_ohm = min(low_ohm / _BEYOND, middle_ohm / _AROUND), max(high_ohm * _BEYOND, middle_ohm * _AROUND)
+    tried_ohm = series_ohm(series, low_ohm, high_ohm)
     return _Errors(Chain(place, part, curve.curve, tried_ohm[:, None, None]))
 
 
@@ -169,7 +171,10 @@ class _Errors:
 
     @cached_property
     def _likely_corners(self) -> Offsets:
-        """Two corners that are the extremes as a rule: everything pushes the reading down, or everything up."""
+        """Corners that are the extremes as a rule: everything pushes the reading down, or everything up.
+
+        Of a ratiometric reading a higher supply warms the thermistor, and a lower one lets leakage weigh more.
+        """
         place = self.chain.position
         higher_code = -1 if place.circuit.thermistor == "high side" else 1
         colder = {
@@ -177,9 +182,9 @@ class _Errors:
             "fixed resistor": -1,
             "fixed resistor tempco": -1,
             "parallel resistor": 1,
-            "supply": -1 if place.reference == "ratiometric" else higher_code,  # warms, or raises the junction
+            "supply": -0.5 if place.reference == "ratiometric" else higher_code,
             "reference": -higher_code,
         }
         pushes = sum(np.sign(limit) * colder.get(name, higher_code) for name, limit in self._corners.items())
-        two = [int(np.argmin(pushes)), int(np.argmax(pushes))]
-        return {name: limit[two] for name, limit in self._corners.items()}
+        likely = np.ravel(pushes).argsort()[[0, 1, -1]]
+        return {name: limit[likely] for name, limit in self._corners.items()}

@@ -30,6 +30,7 @@ def worst_k(position, fitted, fixed_ohm):
 
 
 def every_ohm(position, fitted, series):
+    """More values than are tried: a decade beyond the thermistor's resistances each way."""
     r_ohm = fitted.made.curve.resistance_ohm(whole_steps_c(position.range_c, 1.0))
     return series_ohm(series, r_ohm.min() / 10, r_ohm.max() * 10)
 
