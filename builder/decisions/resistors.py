@@ -17,13 +17,14 @@ from builder.part_curve import PartCurve, whole_steps_c
 from builder.records import Position
 from builder.units import Array, range_text
 
-# How far the values tried reach beyond the thermistor's resistances over the range, and at least around the middle one.
-_BEYOND, _AROUND = 10**0.5, 10.0
+# How far beyond the thermistor's resistances over the range the series is tried, each way: where leakage or self-heating
+# weigh most, the best value lies more than half a decade beyond.
+_BEYOND = 10.0
 # How closely values are looked at, one look after the other: at how many temperatures (None: at all), whether at all
 # corners of the limits, and how many values in one go. Only the time taken hangs on it: a few temperatures rule most
 # values out, and 23 over a range do not fall together with the rows of a table.
 _LOOKS: tuple[tuple[int | None, bool, int], ...] = (
-    (3, False, 10_000),
+    (2, False, 10_000),
     (23, False, 16),
     (None, False, 4),
     (None, True, 1),
@@ -73,8 +74,8 @@ def best_resistor(position: Position, part: Thermistor, curve: PartCurve, series
 
     Notes
     -----
-    The values tried reach half a decade beyond the thermistor's resistances over the range, and a decade each way from
-    the one in its middle. The worst case over some temperatures and some corners of the limits is never above the one over all of them. So the
+    The values tried reach from a tenth of the thermistor's smallest resistance over the range to ten times its largest.
+    The worst case over some temperatures and some corners of the limits is never above the one over all of them. So the
     values are looked at more and more closely, always those first that promise most, until the best of those looked at
     wholly is better than what any other promises: it is the best of all.
     """
@@ -112,12 +113,10 @@ def best_value(position: Position, part: Thermistor, curve: PartCurve, series: S
 
 def _errors(position: Position, part: Thermistor, curve: PartCurve, series: Series) -> _Errors:
     place = with_new_firmware(position, curve)
-    low_ohm, high_ohm = np.sort(part.made.curve.resistance_ohm(np.array(position.range_c)))
-    if not np.isfinite([low_ohm, high_ohm]).all():
+    ends_ohm = part.made.curve.resistance_ohm(np.array(position.range_c))
+    if not np.isfinite(ends_ohm).all():
         raise ValueError(f"the curve does not reach over {range_text(position.range_c)}")
-    middle_ohm = _middle_ohm(position, part)
-    low_ohm, high_ohm = min(low_ohm / _BEYOND, middle_ohm / _AROUND), max(high_ohm * _BEYOND, middle_ohm * _AROUND)
-    tried_ohm = series_ohm(series, low_ohm, high_ohm)
+    tried_ohm = series_ohm(series, ends_ohm.min() / _BEYOND, ends_ohm.max() * _BEYOND)
     return _Errors(Chain(place, part, curve.curve, tried_ohm[:, None, None]))
 
 

@@ -30,9 +30,9 @@ def worst_k(position, fitted, fixed_ohm):
 
 
 def every_ohm(position, fitted, series):
-    """More values than are tried: a decade beyond the thermistor's resistances each way."""
+    """More values than are tried: three decades beyond the thermistor's resistances each way."""
     r_ohm = fitted.made.curve.resistance_ohm(whole_steps_c(position.range_c, 1.0))
-    return series_ohm(series, r_ohm.min() / 10, r_ohm.max() * 10)
+    return series_ohm(series, max(r_ohm.min() / 1e3, 0.01), r_ohm.max() * 1e3)
 
 
 def check_against_brute_force(position, record, series):
