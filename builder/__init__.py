@@ -11,13 +11,14 @@ from typing import TYPE_CHECKING
 if TYPE_CHECKING:
     from builder.comparisons import compared, families, sentence
     from builder.crosschecks import checked_catalog
-    from builder.decisions import swap
+    from builder.decisions import best_resistor, shortlist, swap
     from builder.intake import record_text
     from builder.part_curve import part_curve
     from builder.part_fit import fitted
     from builder.records import read_catalog
 
 __all__ = [
+    "best_resistor",
     "checked_catalog",
     "compared",
     "families",
@@ -26,6 +27,7 @@ __all__ = [
     "read_catalog",
     "record_text",
     "sentence",
+    "shortlist",
     "swap",
 ]
 

@@ -6,6 +6,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from builder.curves.curve import Mask
 from builder.units import Array
 
 # Fields of a circuit as built: one number, or an array that broadcasts against the temperatures.
@@ -88,6 +89,32 @@ class Divider:
         open_v = (self.supply_v / self.fixed_ohm + leakage_a) * self._resistors_ohm
         power_w: Array = open_v**2 * r_ohm / (r_ohm + self.seen_ohm) ** 2
         return power_w
+
+    def at(self, places: Mask) -> Divider:
+        """The dividers of some cases and temperatures only, of all that the fields broadcast to.
+
+        Parameters
+        ----------
+        places : array of bool
+            Of the shape of what the fields broadcast to with temperatures; no unit.
+
+        Returns
+        -------
+        Divider
+            With fields of shape (n,), one for each place.
+        """
+
+        def own(field: Figure) -> Array:
+            return np.broadcast_to(field, places.shape)[places]
+
+        return Divider(
+            self.high_side,
+            own(self.fixed_ohm),
+            own(self.supply_v),
+            own(self.parallel_ohm),
+            own(self.wire_ohm),
+            own(self.leakage_a),
+        )
 
     @property
     def seen_ohm(self) -> Figure:

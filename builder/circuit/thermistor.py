@@ -89,7 +89,9 @@ class Thermistor:
             r_ohm = self.resistance_ohm(body_c, edge)
             if np.any(np.abs(step_k) > _SLOPE_HOLDS_K):
                 alpha_per_k = self.made.curve.alpha_pct_per_k(body_c) / 100
-        body_c = np.where(arrived, body_c, self._bisected_c(coldest_c, hottest_c, divider, edge))
+        left = ~arrived
+        own_edge = np.broadcast_to(edge, left.shape)[left]
+        body_c[left] = self._bisected_c(coldest_c[left], hottest_c[left], divider.at(left), own_edge)
         return body_c, self.resistance_ohm(body_c, edge)
 
     def _bisected_c(self, coldest_c: Array, hottest_c: Array, divider: Divider, edge: Figure) -> Array:

@@ -30,9 +30,9 @@ def worst_k(position, fitted, fixed_ohm):
 
 
 def every_ohm(position, fitted, series):
-    """More values than are tried: three decades beyond the thermistor's resistances each way."""
+    """More values than are tried: half a decade more each way."""
     r_ohm = fitted.made.curve.resistance_ohm(whole_steps_c(position.range_c, 1.0))
-    return series_ohm(series, max(r_ohm.min() / 1e3, 0.01), r_ohm.max() * 1e3)
+    return series_ohm(series, r_ohm.min() / 30, r_ohm.max() * 30)
 
 
 def check_against_brute_force(position, record, series):
@@ -50,17 +50,16 @@ def check_against_brute_force(position, record, series):
 
 @pytest.mark.parametrize("i", range(len(DEMO.parts)), ids=[record.part.part for record in DEMO.parts])
 def test_best_of_e24_is_that_of_brute_force_for_every_demo_part(i):
-    for name in (TELLING[i % len(TELLING)], TELLING[(i + 2) % len(TELLING)]):
-        check_against_brute_force(PLACES[name], DEMO.parts[i], "E24")
+    check_against_brute_force(PLACES[TELLING[i % len(TELLING)]], DEMO.parts[i], "E24")
 
 
-@pytest.mark.parametrize("name", PLACES)
-def test_best_of_e96_is_that_of_brute_force_at_every_demo_position(name):
+@pytest.mark.parametrize("name", TELLING)
+def test_best_of_e96_is_that_of_brute_force_at_telling_positions(name):
     check_against_brute_force(PLACES[name], DEMO.part(PLACES[name].fitted), "E96")
 
 
 # The rounded codes of a table make a worst case with steps in it, which a search by slopes does not see through.
-@pytest.mark.parametrize("name", [n for n in PLACES if PLACES[n].firmware.method != "table"])
+@pytest.mark.parametrize("name", [n for n in TELLING if PLACES[n].firmware.method != "table"])
 def test_best_of_e96_is_within_a_step_of_scipys_continuous_minimum(name):
     position, record = PLACES[name], DEMO.part(PLACES[name].fitted)
     fitted = thermistor(record)
@@ -98,7 +97,7 @@ def test_common_rule_takes_the_value_nearest_to_the_thermistor_in_the_middle():
 
 
 def test_best_resistor_is_never_worse_than_the_common_rule():
-    for record in DEMO.parts[::4]:
+    for record in DEMO.parts[::8]:
         fitted = thermistor(record)
         for position in PLACES.values():
             found = best_resistor(position, fitted, fitted.made, "E24")
