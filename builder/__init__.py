@@ -33,6 +33,7 @@ __all__ = [
 
 # Imported when first asked for: a command starts without what the others need.
 _MODULES = {
+    "best_resistor": "decisions",
     "checked_catalog": "crosschecks",
     "compared": "comparisons",
     "families": "comparisons",
@@ -41,6 +42,7 @@ _MODULES = {
     "read_catalog": "records",
     "record_text": "intake",
     "sentence": "comparisons",
+    "shortlist": "decisions",
     "swap": "decisions",
 }
 
