@@ -38,7 +38,7 @@ FILES = {
     "f.yaml": record("PR-1000", standing("proposed")),
     "g.yaml": record("NS-1000", "standing: []\n"),
     "h.yaml": record("TWIN-103", standing("approved"), maker="Ostrel Sensing"),
-    "i.yaml": record("TWIN-103", standing("approved"), maker="Quillhaven Devices"),
+    "i.yaml": record("TWIN-103", standing("approved"), own="own_number: HS-11\n", maker="Quillhaven Devices"),
     "rt1.yaml": place("coolbox-main/RT1", "Coolbox logger", "TB3A-103F38", ALTERNATES),
     "rt2.yaml": place("coolbox-main/RT2", "Coolbox logger", "PR-1000"),
     "rt3.yaml": place("charger/RT1", "Charger, output board", "TB3A-103J38"),
@@ -277,6 +277,10 @@ def test_a_number_of_two_makers_needs_the_maker(found):
     assert [finding[2:4] for finding in found("X1;TWIN-103;;quillhaven\n")] == [("TWIN-103", "approved")]
 
 
+def test_a_number_of_two_makers_is_settled_by_the_own_number(found):
+    assert [finding[2:4] for finding in found("X1;TWIN-103;HS-11\n")] == [("TWIN-103", "approved")]
+
+
 def test_another_maker_than_the_record_s_warns(found):
     message = "Other Ceramics is not the maker on record, Tarnbrook Ceramics. Check whose part it is."
     assert found("X1;TB3A-103F38;;Other Ceramics\n")[0] == (2, "X1", "TB3A-103F38", "maker-differs", "warning", message)
@@ -332,6 +336,8 @@ def test_a_part_that_is_not_fitted_is_told_and_blocks_only_where_a_position_stay
     two = found("RT1;TB3A-103F38\nRT1;WD-1000;;;1;;DNP\n" + RT2, "coolbox-main")
     assert two[1] == (3, "RT1", "WD-1000", "not-fitted", "ok", "the line says that nothing is fitted.")
     assert [finding[3] for finding in two] == ["approved", "not-fitted", "not-fitted"]
+    first = found("RT1;WD-1000;;;1;;DNP\nRT1;TB3A-103F38\n" + RT2, "coolbox-main")
+    assert [finding[3] for finding in first] == ["not-fitted", "approved", "not-fitted"]
     assert found(";WD-1000;;;0\n") == [(2, "", "WD-1000", "not-fitted", "ok", "the line says that nothing is fitted.")]
 
 
@@ -391,5 +397,9 @@ def test_a_board_is_not_guessed_where_several_may_be_meant(catalog, references, 
 
 
 def test_parts_for_some_places_only_are_known_before_the_board_is(catalog):
-    bill = read_bill(f"{HEADINGS}X1;TB3A-103J38\nX2;TB3A-103F38\n".encode(), name="bill.csv")
-    assert [part.name for part in restricted_parts(bill, catalog)] == ["Tarnbrook Ceramics TB3A-103J38"]
+    def restricted(lines):
+        bill = read_bill(f"{HEADINGS}{lines}".encode(), name="bill.csv")
+        return [part.name for part in restricted_parts(bill, catalog)]
+
+    assert restricted("X1;TB3A-103J38\nX2;TB3A-103F38\n") == ["Tarnbrook Ceramics TB3A-103J38"]
+    assert restricted("X1;TB3A-103J38;;;;;DNP\n") == []
