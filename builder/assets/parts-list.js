@@ -1,8 +1,5 @@
 /* The Parts page: filters, order, and the rows that are in view. */
 (() => {
-  const DRAWN_WHOLE = 300; // hits that are simply all drawn
-  const PAUSE_MS = 150; // after the last keystroke; only then the hits below the window are drawn
-  const BEYOND = 15; // rows drawn above and below the window, so that Tab always finds the next link
   const FACTORS = { R: 1, K: 1e3, M: 1e6 };
   const collator = new Intl.Collator("en", { numeric: true });
 
@@ -169,89 +166,15 @@
     return element("tr", { role: "row" }, ...cells);
   }
 
-  /* The table's body: all hits where they are few, else those in view between two spaces of the others' height. */
-  class Rows {
-    constructor(table) {
-      this.table = table;
-      this.columns = [...table.tHead.querySelectorAll("button")].map((button) => button.dataset.by);
-      this.emptyRow = emptyRow(this.columns);
-      this.above = table.appendChild(element("tbody", { "aria-hidden": "true" }));
-      this.body = table.appendChild(element("tbody", { role: "rowgroup" }));
-      this.below = table.appendChild(element("tbody", { "aria-hidden": "true" }));
-      this.height = 30;
-      this.hits = [];
-      this.most = DRAWN_WHOLE;
-    }
-
-    show(hits, most = DRAWN_WHOLE) {
-      Object.assign(this, { hits, most, drawn: null, paused: most === Infinity });
-      this.table.setAttribute("aria-rowcount", hits.length + 1);
-      this.table.classList.toggle("bd-parts-long", hits.length > most);
-      this.draw();
-      clearTimeout(this.timer);
-      this.timer = setTimeout(() => {
-        this.paused = true;
-        this.draw();
-      }, PAUSE_MS);
-    }
-
-    row(part, place) {
-      const made = this.emptyRow.cloneNode(true);
-      made.setAttribute("aria-rowindex", place + 2); // the headings are row 1
-      this.columns.forEach((name, column) => {
-        const cell = made.cells[column];
-        (cell.firstElementChild ?? cell).textContent = part.cells[name];
-      });
-      made.querySelector("a").href = part.address;
-      const state = part.standing === "no standing" ? "none" : part.standing;
-      made.querySelector("span").className = `bd-standing bd-standing-${state}`;
-      return made;
-    }
-
-    rows(first, last) {
-      return this.hits.slice(first, last).map((part, i) => this.row(part, first + i));
-    }
-
-    inView() {
-      const top = -this.above.getBoundingClientRect().top, count = this.hits.length;
-      const last = Math.min(count, Math.max(0, Math.ceil((top + innerHeight) / this.height)) + BEYOND);
-      if (count <= this.most) return [0, this.paused ? count : last];
-      return [Math.max(0, Math.min(last, Math.floor(top / this.height)) - BEYOND), last];
-    }
-
-    draw() {
-      this.height = this.rowHeight();
-      const [first, last] = this.inView();
-      if (String(this.drawn) === String([first, last, this.height])) return;
-      this.keep(first, last);
-      this.space(this.above, first);
-      this.space(this.below, this.hits.length - last);
-      this.drawn = [first, last, this.height];
-    }
-
-    /* Rows of one line differ by less than a pixel; following that would make the page creep. */
-    rowHeight() {
-      const count = this.body.rows.length;
-      if (!count || this.hits.length <= this.most) return this.height;
-      const height = this.body.getBoundingClientRect().height / count;
-      return Math.abs(height - this.height) < 0.5 ? this.height : height;
-    }
-
-    /* Rows that stay are not touched, so that the one with the focus keeps it. */
-    keep(first, last) {
-      const [from, to] = this.drawn ?? [0, 0];
-      if (first >= to || last <= from) return this.body.replaceChildren(...this.rows(first, last));
-      for (const [i, made] of [...this.body.rows].entries()) if (from + i < first || from + i >= last) made.remove();
-      if (first < from) this.body.prepend(...this.rows(first, from));
-      if (last > to) this.body.append(...this.rows(to, last));
-    }
-
-    space(body, count) {
-      if (!count) return body.replaceChildren();
-      const cell = body.rows[0]?.cells[0] ?? body.appendChild(element("tr")).appendChild(element("td"));
-      cell.colSpan = this.columns.length;
-      cell.style.height = `${count * this.height}px`;
-    }
+  function filledRow(made, part, columns) {
+    columns.forEach((name, column) => {
+      const cell = made.cells[column];
+      (cell.firstElementChild ?? cell).textContent = part.cells[name];
+    });
+    made.querySelector("a").href = part.address;
+    const state = part.standing === "no standing" ? "none" : part.standing;
+    made.querySelector("span").className = `bd-standing bd-standing-${state}`;
+    return made;
   }
 
   /* ---- Copy and save ---- */
@@ -280,7 +203,11 @@
     const parts = partsFrom(data);
     const form = root.querySelector("form"), table = root.querySelector("table");
     const count = root.querySelector("[role=status]"), none = root.querySelector(".bd-parts-none");
-    const rows = new Rows(table);
+    const columns = [...table.tHead.querySelectorAll("button")].map((button) => button.dataset.by);
+    const empty = emptyRow(columns);
+    const rows = new beadroll.VisibleRows(
+      table, (part) => filledRow(empty.cloneNode(true), part, columns), "bd-parts-long",
+    );
     const orders = new Map();
     let order = "maker", hits = [], lastField = null;
 
@@ -321,7 +248,7 @@
         else if (field.name) field.value = params.get(field.name) ?? "";
       }
       const by = params.get("order") ?? "maker";
-      order = rows.columns.includes(by.replace("-", "")) ? by : "maker";
+      order = columns.includes(by.replace("-", "")) ? by : "maker";
       lastField = null;
       refresh();
     }
@@ -360,8 +287,6 @@
     addEventListener("popstate", () => {
       if (!/^#[^=]+$/.test(location.hash)) restore(); // else it is an anchor of the page
     });
-    addEventListener("scroll", () => rows.draw(), { passive: true });
-    addEventListener("resize", () => rows.draw());
     addEventListener("beforeprint", () => rows.show(hits, Infinity));
     addEventListener("afterprint", () => rows.show(hits));
 

@@ -54,7 +54,7 @@ def curve_script(key: str, curve: PartCurve, facts: Sequence[str]) -> str:
         "band": _band(curve),
         "facts": list(facts),
     }
-    return f"beadroll.curve({_json(key)},{_json(data)});\n"
+    return f"beadroll.curve({script_json(key)},{script_json(data)});\n"
 
 
 def _points(curve: Curve) -> dict[str, list[float]]:
@@ -121,7 +121,7 @@ def _stretches(t_c: Array, mask: Mask) -> list[list[float]]:
     return [[float(t_c[start]), float(t_c[stop - 1])] for start, stop in zip(starts, stops, strict=True)]
 
 
-def _json(value: Any) -> str:
+def script_json(value: Any) -> str:
     """JSON that may stand in a script and needs no encoding stated, whole numbers without a point."""
     return json.dumps(_short(value), separators=(",", ":"), allow_nan=False).replace("<", "\\u003c")
 

@@ -21,6 +21,7 @@ from builder.pages.parts_page import parts_data, parts_page
 from builder.pages.position_page import position_page
 from builder.pages.positions_page import positions_page
 from builder.pages.record_format_page import record_format_page, schema_files
+from builder.pages.shortlist_page import shortlist_data, shortlist_page
 from builder.pages.side_by_side_page import curve_file, side_by_side_page
 from builder.pages.swap_page import swap_csv, swap_page
 
@@ -46,6 +47,8 @@ def site(
     yield side_by_side_page()
     yield families_page(context)
     yield positions_page(context)
+    yield shortlist_page(context)
+    yield shortlist_data(context)
     yield changes_page(context, past)
     yield checks_page()
     yield from (rule_page(rule, context) for rule in RULES)

@@ -29,7 +29,8 @@ HOSTILE = "<img src=x onerror=document.title='taken'>"
 FRAME = """<!doctype html><html lang="en"><head><meta charset="utf-8"><title>Parts</title>
 <meta http-equiv="Content-Security-Policy" content="default-src 'self' file:; script-src 'self' file:">
 <meta name="viewport" content="width=device-width">{styles}</head>
-<body class="md-typeset"><main>{body}</main><script src="../assets/parts-list.js"></script></body></html>"""
+<body class="md-typeset"><main>{body}</main>
+<script src="../assets/visible-rows.js"></script><script src="../assets/parts-list.js"></script></body></html>"""
 
 # What the site's theme would set.
 FRAME_STYLE = """
