@@ -360,7 +360,7 @@ window.beadroll = window.beadroll || {};
       if (this.kPerW === 0) return rOhm;
       const perK = this.perK[edge][j], warmingK = this.warmingK(rOhm), slope = this.balance(rOhm, warmingK, perK);
       const firstK = warmingK / slope;
-      if (!(Math.abs(firstK) < LITTLE_K)) return this.hotOhm(this.chain.tC[j], edge);
+      if (!(firstK >= 0 && firstK < LITTLE_K)) return this.hotOhm(this.chain.tC[j], edge);
       const firstOhm = rOhm * Math.exp(-perK * firstK);
       return firstOhm * (1 + perK * (firstK - this.warmingK(firstOhm)) / slope);
     }
@@ -377,9 +377,9 @@ window.beadroll = window.beadroll || {};
       for (let step = 0; step < NEWTON_STEPS; step += 1) {
         const rOhm = curve.resistance(bodyC, edge), warmingK = this.warmingK(rOhm);
         const slope = this.balance(rOhm, warmingK, curve.slopeK / (bodyC - ZERO_C) ** 2);
-        const next = Math.min(Math.max(bodyC - (bodyC - tC - warmingK) / slope, tC), hottestC);
-        if (Number.isNaN(next) || Math.abs(next - bodyC) <= ARRIVED_K) return rOhm;
-        bodyC = next;
+        const stepK = (bodyC - tC - warmingK) / slope;
+        if (!(Math.abs(stepK) > ARRIVED_K)) return rOhm;
+        bodyC = Math.min(Math.max(bodyC - stepK, tC), hottestC);
       }
       return this.bisectedOhm(tC, hottestC, edge);
     }

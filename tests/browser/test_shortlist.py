@@ -138,7 +138,12 @@ class Short:
     page: Page
 
     def settle(self) -> None:
-        self.page.wait_for_function("() => document.getElementById('bd-short').ariaBusy === 'false'")
+        """Wait until all parts are ranked and all rows drawn."""
+        self.page.wait_for_function(
+            "() => document.getElementById('bd-short').ariaBusy === 'false' && "
+            "[...document.querySelectorAll('.bd-short-table')].every("
+            "(table) => table.querySelectorAll('tbody[role] tr').length === table.ariaRowCount - 1)"
+        )
 
     def fill(self, name: str, text: str) -> None:
         self.page.locator(f"[name={name}]").fill(text)
@@ -473,7 +478,7 @@ def test_a_figure_that_is_left_out_leaves_the_limit_undecided(opened: Opened) ->
         ("bits", "10.5", "bits: a whole number is needed."),
         ("range_to_c", "-20", "The range does not rise."),
         ("ambient_to_c", "40", "The electronics’ range must rise, or be left empty."),
-        ("parallel_ohm", "0", "across the thermistor, Ω: 0 is outside 0.01 to 1e+9."),
+        ("parallel_ohm", "0", "across the thermistor, Ω: 0 is outside 0.01 to 1000000000."),
         ("step_k", "0.01", "rows of the table every, K: 0.01 is outside 0.1 to 100."),
     ],
 )
@@ -513,6 +518,7 @@ def test_a_divider_without_reading_puts_a_part_out(opened: Opened) -> None:
 
 def test_the_address_holds_the_form_and_a_step_back_takes_one_field_back(opened: Opened) -> None:
     short = opened()
+    short.page.locator("[name=limit_k]").press("End")
     short.page.locator("[name=limit_k]").press_sequentially("5")
     short.settle()
     short.choose("thermistor", "high side")
@@ -546,7 +552,8 @@ def test_start_anew_is_the_page_as_it_was(opened: Opened) -> None:
 def test_both_lists_are_searched_and_places_stay(opened: Opened) -> None:
     short = opened()
     ranked, out = short.ranked(), short.out()
-    short.page.get_by_label("Find").fill("nv 10")
+    short.page.get_by_label("Find").fill("nv10")
+    short.settle()
     found = [number for number in ranked if number.startswith("NV10")]
     assert short.ranked() == found and found
     assert short.cells(found[0])["place"] == str(ranked.index(found[0]) + 1)
