@@ -26,6 +26,7 @@ from mkdocs.livereload import LiveReloadServer
 from playwright.sync_api import Browser
 
 from builder import plugin
+from builder.history import Past
 from builder.pages.page import DataFile, Heading, Page
 from builder.problems import Problem
 
@@ -218,6 +219,17 @@ def test_the_sitemap_lists_every_page_once(project: Project) -> None:
     places = re.findall("<loc>https://demo.example.com/sub/(.*)</loc>", project.read("sitemap.xml"))
     pages = [page.path for page in project.pages if isinstance(page, Page)]
     assert sorted(places) == sorted([*pages, "method.html"])
+
+
+@pytest.mark.parametrize(("options", "most"), [("beadroll", 10), ("beadroll: {changes: 3}", 3)])
+def test_the_site_is_given_as_many_revisions_as_asked_for(
+    project: Project, monkeypatch: pytest.MonkeyPatch, options: str, most: int
+) -> None:
+    given: list[Past] = []
+    monkeypatch.setattr(plugin, "site", lambda _, past, **__: given.append(past) or iter(project.pages))
+    (project.folder / "mkdocs.yml").write_text(MKDOCS_YML.replace("- beadroll", f"- {options}"))
+    project.build()
+    assert [(past.records.resolve(), past.most) for past in given] == [(project.folder / "parts", most)]
 
 
 def test_a_data_file_is_written_as_it_is(project: Project) -> None:

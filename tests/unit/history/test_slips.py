@@ -221,7 +221,7 @@ def test_a_side_branch_counts_as_what_its_merge_brought(kept):
     first = kept.commit("one", x=part())
     kept.git("checkout", "--quiet", "-b", "side")
     kept.commit("approve", x=approved())
-    kept.commit("undo", x=part())
+    kept.commit("undo", x=part(), y=other_part())
     kept.git("checkout", "--quiet", "main")
     kept.git("merge", "--quiet", "--no-ff", "--message", "merge", "side")
     assert findings(first) == []
