@@ -34,6 +34,8 @@ from mkdocs.structure.toc import AnchorLink, TableOfContents
 from builder.crosschecks import CheckedCatalog, checked_catalog
 from builder.history import Past
 from builder.kept import Kept, Shelf, SiteFolder, digest
+from builder.pages.figures.axes import newly_drawn, recall
+from builder.pages.figures.scales import Scale
 from builder.pages.page import CopiedFile, DataFile, Heading, Page
 from builder.pages.site import site
 from builder.problems import count_text, errors, warnings
@@ -121,9 +123,9 @@ class WrittenFile(File):
         """Nothing: the plugin has written all such files before MkDocs copies its own."""
 
 
-def write(files: Sequence[WrittenFile]) -> list[str]:
-    """Write a share of the files; gives their digests."""
-    return [file.write() for file in files]
+def write(files: Sequence[WrittenFile]) -> list[tuple[str, dict[Scale, str]]]:
+    """Write a share of the files; gives the digest of each, and the axes that had to be drawn for it."""
+    return [(file.write(), newly_drawn()) for file in files]
 
 
 class KeptTemplates(jinja2.BytecodeCache):
@@ -320,9 +322,15 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         keys = {file.dest_uri: file.key() for file in files}
         missing = [file for file in files if not self._taken_over(file.dest_uri, keys[file.dest_uri], shelf)]
         log.info(f"Writing {count_text(len(missing), 'file')}, keeping {len(files) - len(missing)}")
-        for file, written in zip(missing, shared_out(write, missing), strict=True):
+        axes: dict[Scale, str] = self._made.shelf("axes").get("all") or {}
+        recall(axes)
+        known = len(axes)
+        for file, (written, drawn) in zip(missing, shared_out(write, missing), strict=True):
+            axes |= drawn
             if keys[file.dest_uri] is not None:
                 shelf.put(file.dest_uri, None, [keys[file.dest_uri], written])
+        if len(axes) > known:
+            self._made.shelf("axes").put("all", axes)
 
     def _taken_over(self, path: str, key: str | None, shelf: Shelf) -> bool:
         head = shelf.head(path) if key is not None else None

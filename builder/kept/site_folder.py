@@ -25,7 +25,7 @@ class SiteFolder:
     def __init__(self, place: Path) -> None:
         self.place = Path(os.path.realpath(place))
         self.building = self._beside("building")
-        self._folders: set[Path] = set()
+        self._folders: set[str] = set()
 
     def begin(self) -> None:
         """Make the folder to build in, after putting right what an earlier build left behind.
@@ -45,21 +45,24 @@ class SiteFolder:
 
     def take(self, path: str, expected: str) -> bool:
         """Take a file over from the site, if it is there with the content that a digest says; whether it was."""
+        # Plain names, not Path: thousands of files are taken over in a tenth of a second.
+        old, new = f"{self.place}/{path}", f"{self.building}/{path}"
         try:
-            data = Path(self.place, path).read_bytes()
+            with open(old, "rb") as file:  # noqa: PTH123
+                data = file.read()
         except OSError:
             return False
         if digest(data) != expected:
             return False
-        target = Path(self.building, path)
-        if target.parent not in self._folders:
-            target.parent.mkdir(parents=True, exist_ok=True)
-            self._folders.add(target.parent)
+        folder = new.rpartition("/")[0]
+        if folder not in self._folders:
+            Path(folder).mkdir(parents=True, exist_ok=True)
+            self._folders.add(folder)
         try:
             # The old name goes with the old site: no file is left that has two.
-            os.link(Path(self.place, path), target)
+            os.link(old, new)
         except OSError:
-            target.write_bytes(data)
+            Path(new).write_bytes(data)
         return True
 
     def finish(self) -> None:

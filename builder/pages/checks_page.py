@@ -4,9 +4,10 @@ from __future__ import annotations
 
 from builder.crosschecks import RULES, Rule
 from builder.pages.context import Context
-from builder.pages.home_page import problems_table
+from builder.pages.home_page import problem_sources, problems_table
 from builder.pages.html import Html, joined, link, table, tag
 from builder.pages.page import Heading, Page
+from builder.problems import Problem
 
 _HEADINGS = (("example", "An example"), ("settle", "How to settle it"), ("now", "What it finds now"))
 
@@ -20,6 +21,7 @@ def checks_page() -> Page:
         body=lambda: str(_list_body()),
         search_text="checks rules misprints warnings accepted",
         in_nav=True,
+        made_from=(),
         wide=False,
     )
 
@@ -33,8 +35,14 @@ def rule_page(rule: Rule, context: Context) -> Page:
         body=lambda: str(_rule_body(rule, context)),
         headings=tuple(Heading(anchor, text) for anchor, text in _HEADINGS),
         search_text=f"check rule {rule.looks_for}",
+        made_from=problem_sources(_problems_of(rule, context), context),
         wide=False,
     )
+
+
+def _problems_of(rule: Rule, context: Context) -> list[Problem]:
+    """What a rule finds in the catalog."""
+    return [problem for problem in context.catalog.problems if problem.rule == rule.name]
 
 
 def _list_body() -> Html:
@@ -52,7 +60,7 @@ def _list_body() -> Html:
 
 
 def _rule_body(rule: Rule, context: Context) -> Html:
-    found = [problem for problem in context.catalog.problems if problem.rule == rule.name]
+    found = _problems_of(rule, context)
     bodies = (
         tag("p", rule.example),
         tag("p", rule.settled_by),

@@ -6,16 +6,17 @@ import datetime
 import pickle
 from collections import defaultdict
 from collections.abc import Callable, Mapping, Sequence
-from dataclasses import dataclass, field
-from functools import cached_property
+from dataclasses import astuple, dataclass, field
+from functools import cached_property, partial
 from typing import Any, TypeVar
 
 from builder.circuit import Budget, Thermistor, budget, firmware_part
 from builder.comparisons.nearest import NearestParts, Neighbour
 from builder.crosschecks import CheckedCatalog
 from builder.decisions import Swap, swap
+from builder.decisions.swap import Verdict
 from builder.kept import Kept, digest
-from builder.ledger import Entry, entries, replaced_since
+from builder.ledger import Entry, alternate_ledgers, entries, part_ledger, replaced_since
 from builder.pages.paths import Paths
 from builder.part_curve import PartCurve, Sample, whole_steps_c
 from builder.problems import Problem
@@ -106,15 +107,15 @@ class Context:
     def _nearest(self) -> Sequence[tuple[Neighbour, ...]]:
         """Of every part; as found before, if no curve is another."""
         shelf = self.kept.shelf("nearest")
-        key = digest(repr([(record.name, self._curve_digest(record)) for record in self.catalog.parts]).encode())
-        found: list[tuple[Neighbour, ...]] | None = shelf.get(key)
+        key = digest(repr([(record.name, self.curve_digest(record)) for record in self.catalog.parts]).encode())
+        found: list[list[tuple[Any, ...]]] | None = shelf.get(key)
         if found is None:
             nearest = NearestParts([self.curve(record) for record in self.catalog.parts])
-            found = shared_out(lambda places: [nearest.of(place) for place in places], range(len(self.catalog.parts)))
+            found = shared_out(partial(_neighbours, nearest), range(len(self.catalog.parts)))
             shelf.put(key, found)
-        return found
+        return [tuple(Neighbour(*each) for each in neighbours) for neighbours in found]
 
-    def _curve_digest(self, record: PartRecord) -> str:
+    def curve_digest(self, record: PartRecord) -> str:
         """Of a part's nominal curve and operating range."""
 
         def made() -> str:
@@ -125,6 +126,8 @@ class Context:
 
     def of_record(self, name: str, record: PartRecord | PositionRecord, make: Callable[[], T]) -> T:
         """What one record alone gives, as it was made before if the record is as it was: what JSON can say, no tuples."""
+        if not record.digest:
+            return make()
         shelf = self.kept.shelf(name)
         made: T | None = shelf.head(record.digest)
         if made is None:
@@ -142,15 +145,21 @@ class Context:
         return entries(self.catalog)
 
     def outdated(self, record: PartRecord) -> list[Entry]:
-        """The decisions about a part that rest on a revision which has been replaced."""
-        return self._outdated_by_part.get(record.source.file, [])
+        """The decisions about a part that rest on a revision which has been replaced, the oldest first."""
+        own = [entry for entry in part_ledger(record) if replaced_since(entry)]
+        return sorted([*own, *self.outdated_at_positions(record)], key=lambda entry: entry.standing.on)
+
+    def outdated_at_positions(self, record: PartRecord) -> list[Entry]:
+        """Those of them that stand in the records of positions."""
+        return self._outdated_at_positions.get(record.source.file, [])
 
     @cached_property
-    def _outdated_by_part(self) -> Mapping[str, list[Entry]]:
+    def _outdated_at_positions(self) -> Mapping[str, list[Entry]]:
         by_part: dict[str, list[Entry]] = defaultdict(list)
-        for entry in self.entries:
-            if replaced_since(entry):
-                by_part[entry.part.source.file].append(entry)
+        for place in self.catalog.positions:
+            for ledger in alternate_ledgers(place, self.catalog):
+                for entry in filter(replaced_since, ledger):
+                    by_part[entry.part.source.file].append(entry)
         return by_part
 
     def positions_of(self, record: PartRecord) -> list[tuple[PositionRecord, str]]:
@@ -173,6 +182,28 @@ class Context:
         return {}
 
     @cached_property
+    def pages_by_file(self) -> Mapping[str, tuple[str, str]]:
+        """Name and page of the record that each file belongs to."""
+        pages = {
+            place.source.file: (place.position.position, self.paths.position(place)) for place in self.catalog.positions
+        }
+        for record in self.catalog.parts:
+            page = record.number, self.paths.part(record)
+            pages |= {record.source.file: page, record.table_file or record.source.file: page}
+        return pages
+
+    def verdict(self, record: PositionRecord, alternate: PartRecord) -> Verdict:
+        """Whether an alternate may be fitted at a position; as found before, if no record that it rests on has changed."""
+        named = [self.catalog.part(name) for name in record.position.named_parts().values()]
+        key = digest(repr([record.digest, alternate.digest, *(part.digest for part in named)]).encode())
+        shelf = self.kept.shelf("verdicts")
+        found: Verdict | None = shelf.head(key)
+        if found is None:
+            found = self.swap(record, alternate).verdict
+            shelf.put(key, None, found)
+        return found
+
+    @cached_property
     def _problems_by_file(self) -> Mapping[str, tuple[Problem, ...]]:
         by_file: dict[str, list[Problem]] = defaultdict(list)
         for problem in self.catalog.problems:
@@ -187,3 +218,8 @@ class Context:
             for alternate in place.position.alternates:
                 by_part[self.catalog.part(alternate.part).source.file].append((place, "alternate"))
         return by_part
+
+
+def _neighbours(nearest: NearestParts, places: Sequence[int]) -> list[list[tuple[Any, ...]]]:
+    """The nearest parts of each of some parts, as plain tuples: these are kept, and come back ten times sooner."""
+    return [[astuple(neighbour) for neighbour in nearest.of(place)] for place in places]

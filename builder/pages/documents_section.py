@@ -75,7 +75,7 @@ def rests_on(part: Part, standing: Standing | None) -> str | None:
 
 def outdated_sources(record: PartRecord, context: Context) -> str:
     """What the part's page takes of the decisions at positions, for its `made_from`."""
-    at = [(entry.standing, entry.position) for entry in context.outdated(record) if entry.position]
+    at = [(entry.standing, entry.position) for entry in context.outdated_at_positions(record) if entry.position]
     return repr([(standing, place.position.position, context.paths.position(place)) for standing, place in at])
 
 

@@ -28,7 +28,14 @@ def families_page(context: Context) -> Page:
         body=lambda: str(_body(context)),
         search_text="families groups same curve alternates",
         in_nav=True,
+        made_from=tuple(repr(_shown(record, context)) for record in context.catalog.parts),
     )
+
+
+def _shown(record: PartRecord, context: Context) -> tuple[object, ...]:
+    """What the page takes of a part."""
+    texts = context.of_record("family-texts", record, lambda: [rated_text(record.part), body_text(record.part)])
+    return context.paths.part(record), record.maker, record.number, record.state, texts, context.curve_digest(record)
 
 
 def _body(context: Context) -> Html:
@@ -55,8 +62,7 @@ def _body(context: Context) -> Html:
 
 def _family(number: int, group: Sequence[PartRecord], context: Context) -> Html:
     rows = [
-        (_part_link(r, context), r.part.maker, rated_text(r.part), body_text(r.part), standing_badge(r.part.state()))
-        for r in group
+        (_part_link(r, context), r.maker, rated_text(r.part), body_text(r.part), standing_badge(r.state)) for r in group
     ]
     caption = f"Family {number}: {count_text(len(group), 'part')}"
     return table(("part", "maker", "rated", "body", "standing"), rows, caption=caption)
@@ -70,4 +76,4 @@ def _left_out(records: Sequence[PartRecord], span: str, context: Context) -> Htm
 
 
 def _part_link(record: PartRecord, context: Context) -> Html:
-    return link(record.part.part, relative(context.paths.part(record), _HERE))
+    return link(record.number, relative(context.paths.part(record), _HERE))

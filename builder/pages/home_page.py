@@ -3,7 +3,8 @@
 from __future__ import annotations
 
 from collections import Counter
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
+from functools import partial
 from typing import Any
 
 from builder.pages.context import Context
@@ -12,9 +13,10 @@ from builder.pages.html import Html, joined, link, notice, table, tag
 from builder.pages.ledger import standing_badge
 from builder.pages.page import Heading, Page
 from builder.pages.paths import relative
-from builder.pages.tour_section import tour_section
+from builder.pages.tour_section import tour_section, tour_sources
 from builder.problems import Problem, count_text
 from builder.records import PartRecord
+from builder.records.part import Standing, StandingState
 
 HERE = "index.html"
 _NEWEST = 10
@@ -37,6 +39,14 @@ def home_page(context: Context) -> Page:
         headings=tuple(Heading(anchor, text) for anchor, text in _HEADINGS),
         search_text="home counts attention standings",
         in_nav=True,
+        made_from=(
+            *problem_sources(context.catalog.problems[:_MOST_DOUBTS], context),
+            repr((len(context.catalog.problems), len(context.catalog.positions))),
+            repr([(record.maker, record.state) for record in context.catalog.parts]),
+            repr([context.paths.maker(maker) for maker in {record.maker: None for record in context.catalog.parts}]),
+            repr(_newest_entries(context)),
+            *tour_sources(context),
+        ),
     )
 
 
@@ -54,7 +64,7 @@ def _body(context: Context) -> Html:
 
 def _tiles(context: Context) -> Html:
     catalog = context.catalog
-    states = Counter(record.part.state() for record in catalog.parts)
+    states = Counter(record.state for record in catalog.parts)
     tiles = [
         (len(catalog.parts), "parts", "parts/index.html"),
         (states["approved"], "approved", "parts/index.html#standing=approved"),
@@ -79,14 +89,18 @@ def _attention(context: Context) -> Html:
     return joined([problems_table(problems[:_MOST_DOUBTS], HERE, context), more])
 
 
+def problem_sources(problems: Sequence[Problem], context: Context) -> tuple[str, ...]:
+    """What `problems_table` shows, for the `made_from` of its page."""
+    return tuple(repr((problem, context.pages_by_file.get(problem.file))) for problem in problems)
+
+
 def problems_table(problems: Sequence[Problem], here: str, context: Context) -> Html:
     """Problems with a link to the page of each one's record and of its rule."""
     if not problems:
         return tag("p", "Nothing in this catalog.")
-    pages = _pages_by_file(context)
     rows = [
         (
-            _record_link(problem, pages, here),
+            _record_link(problem, context.pages_by_file, here),
             tag("code", problem.place) if problem.field else None,
             problem.message,
             rule_link(problem.rule, here),
@@ -96,38 +110,50 @@ def problems_table(problems: Sequence[Problem], here: str, context: Context) -> 
     return table(("record", "field", "what", "rule"), rows, caption=f"Found: {count_text(len(problems), 'warning')}")
 
 
-def _record_link(problem: Problem, pages: dict[str, tuple[str, str]], here: str) -> Any:
+def _record_link(problem: Problem, pages: Mapping[str, tuple[str, str]], here: str) -> Any:
     if problem.file not in pages:
         return problem.file
     name, path = pages[problem.file]
     return link(name, relative(path, here))
 
 
-def _pages_by_file(context: Context) -> dict[str, tuple[str, str]]:
-    """Name and page of the record that each file belongs to."""
-    pages = {
-        place.source.file: (place.position.position, context.paths.position(place))
-        for place in context.catalog.positions
-    }
+def _newest_entries(context: Context) -> list[tuple[str, str, str, str, str, str, str, StandingState]]:
+    """The latest decisions: day, part and its page, position and its page, by, because, state."""
+    entries = []
     for record in context.catalog.parts:
-        files = {record.source.file, record.table.file if record.table else record.source.file}
-        pages |= dict.fromkeys(files, (record.part.part, context.paths.part(record)))
-    return pages
+        path = context.paths.part(record)
+        for on, state, by, because in context.of_record("standings", record, partial(_told_of, record)):
+            entries.append((on, record.number, path, "", "", by, because, state))
+    for place in context.catalog.positions:
+        at = place.position.position, context.paths.position(place)
+        for alternate, record in zip(place.position.alternates, context.alternates(place), strict=True):
+            path = context.paths.part(record)
+            entries += [
+                (on, record.number, path, *at, by, because, state)
+                for on, state, by, because in _told(alternate.standing)
+            ]
+    return sorted(entries, key=lambda entry: entry[0], reverse=True)[:_NEWEST]
+
+
+def _told_of(record: PartRecord) -> list[Any]:
+    return _told(record.part.standing)
+
+
+def _told(standings: Sequence[Standing]) -> list[Any]:
+    return [[entry.on.isoformat(), entry.state, entry.by, entry.because] for entry in standings]
 
 
 def _newest(context: Context) -> Html:
-    entries = [
-        (entry, _part_link(record, context), "") for record in context.catalog.parts for entry in record.part.standing
-    ]
-    for place in context.catalog.positions:
-        at = link(place.position.position, relative(context.paths.position(place), HERE))
-        for alternate in place.position.alternates:
-            part = _part_link(context.catalog.part(alternate.part), context)
-            entries += [(entry, part, at) for entry in alternate.standing]
-    newest = sorted(entries, key=lambda e: e[0].on, reverse=True)[:_NEWEST]
     rows: list[tuple[Any, ...]] = [
-        (entry.on.isoformat(), part, at, standing_badge(entry.state), entry.by, entry.because)
-        for entry, part, at in newest
+        (
+            on,
+            link(number, relative(path, HERE)),
+            link(place, relative(at, HERE)) if at else "",
+            standing_badge(state),
+            by,
+            because,
+        )
+        for on, number, path, place, at, by, because, state in _newest_entries(context)
     ]
     if not rows:
         return tag("p", "Nobody has decided anything yet.")
@@ -139,12 +165,11 @@ def _newest(context: Context) -> Html:
 
 
 def _part_link(record: PartRecord, context: Context) -> Html:
-    return link(record.part.part, relative(context.paths.part(record), HERE))
+    return link(record.number, relative(context.paths.part(record), HERE))
 
 
 def _holds(context: Context) -> Html:
-    parts = [record.part for record in context.catalog.parts]
-    makers = Counter(part.maker for part in parts)
+    makers = Counter(record.maker for record in context.catalog.parts)
     rows = [(link(maker, context.paths.maker(maker)), count) for maker, count in sorted(makers.items())]
     if not rows:
         return tag("p", "No part yet. Record format shows how to write the first one.")

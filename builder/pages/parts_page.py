@@ -5,19 +5,21 @@ from __future__ import annotations
 import json
 import posixpath
 from collections import Counter
-from collections.abc import Callable, Hashable, Iterable, Mapping
+from collections.abc import Callable, Hashable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
-from typing import Any, TypeVar, get_args
+from functools import partial
+from typing import Any, NamedTuple, TypeVar, get_args
 
 import numpy as np
 
+from builder.pages.context import Context
 from builder.pages.html import Html, html, joined, link, slug, tag
 from builder.pages.page import DataFile, Heading, Page
 from builder.pages.part_texts import body_text, rated_text
 from builder.pages.paths import Paths, relative
 from builder.part_curve import PartCurve
 from builder.problems import count_text
-from builder.records import Catalog, Part, PartRecord
+from builder.records import Part, PartRecord
 from builder.records.part import Lifecycle
 from builder.units import number_text, range_text, resistance_text, temperature_text
 
@@ -43,22 +45,73 @@ _Value = TypeVar("_Value", bound=Hashable)
 _Places = Mapping[_Value, int]
 
 
-def parts_page(catalog: Catalog, curves: Mapping[str, PartCurve], paths: Paths) -> Page:  # noqa: ARG001
+def parts_page(context: Context) -> Page:
     """The page with the list; its rows come from `parts_data`, its script from the site's assets."""
+    catalog, paths = context.catalog, context.paths
+    makers = Counter(record.maker for record in catalog.parts)
     return Page(
         path=PAGE,
         title="Parts",
         description=f"{count_text(len(catalog.parts), 'part')} by number, value, body, range and standing",
-        body=lambda: str(_body(catalog, paths)),
+        body=lambda: str(_body(_occurring(_listed(context)), makers, paths)),
         headings=(Heading("makers", "Makers"),),
         search_text="list of all parts, filters, makers",
         in_nav=True,
+        made_from=(
+            repr([(maker, count, paths.maker(maker)) for maker, count in makers.items()]),
+            repr(_occurring(_listed(context))),
+        ),
     )
 
 
-def parts_data(catalog: Catalog, curves: Mapping[str, PartCurve], paths: Paths) -> DataFile:
+def parts_data(context: Context) -> DataFile:
     """The list's rows as a script, since a page from file:// cannot fetch data."""
-    return DataFile(DATA, lambda: _script(catalog, curves, paths))
+    paths = tuple(context.paths.part(record) for record in context.catalog.parts)
+    rows = tuple(map(repr, _listed(context)))
+    return DataFile(DATA, lambda: _script(context), made_from=(*paths, *rows))
+
+
+class Listed(NamedTuple):
+    """What the list has of a part, its page apart."""
+
+    number: str
+    own_number: str
+    maker: str
+    rated: tuple[float, float]
+    tolerance_pct: float | None
+    b_k: float | None
+    b_mark: str
+    body: tuple[str, str]
+    operating_c: tuple[float, float] | None
+    standing: str
+    lifecycle: str
+    words: str
+
+
+def _listed(context: Context) -> list[Listed]:
+    return [
+        Listed._make(tuple(value) if isinstance(value, list) else value for value in values)
+        for record in context.catalog.parts
+        for values in (context.of_record("listed", record, partial(_values, record, context)),)
+    ]
+
+
+def _values(record: PartRecord, context: Context) -> list[Any]:
+    part, (b_k, mark) = record.part, curve_b(context.curve(record))
+    return [
+        part.part,
+        part.own_number or "",
+        part.maker,
+        [part.rated.resistance_ohm, part.rated.at_c],
+        part.rated.tolerance_pct,
+        b_k,
+        mark,
+        [part.body.form, part.body.size_code or ""],
+        list(part.limits.operating_c) if part.limits.operating_c else None,
+        part.state() or "no standing",
+        part.lifecycle,
+        _words(part),
+    ]
 
 
 def curve_b(curve: PartCurve) -> tuple[float | None, str]:
@@ -86,17 +139,16 @@ class _Occurring:
     words: _Places[str]
 
 
-def _occurring(parts: Iterable[Part]) -> _Occurring:
-    parts = tuple(parts)
+def _occurring(rows: Sequence[Listed]) -> _Occurring:
     return _Occurring(
-        makers=_places((p.maker for p in parts), str.casefold),
-        rated=_places(map(_rated, parts)),
-        tolerances=_places(p.rated.tolerance_pct for p in parts),
-        bodies=_places(map(_body_pair, parts)),
-        ranges=_places(p.limits.operating_c for p in parts),
-        standings=_places(map(_standing, parts), _STANDINGS.index),
-        lifecycles=_places((p.lifecycle for p in parts), get_args(Lifecycle).index),
-        words=_places(map(_words, parts)),
+        makers=_places((row.maker for row in rows), str.casefold),
+        rated=_places(row.rated for row in rows),
+        tolerances=_places(row.tolerance_pct for row in rows),
+        bodies=_places(row.body for row in rows),
+        ranges=_places(row.operating_c for row in rows),
+        standings=_places((row.standing for row in rows), _STANDINGS.index),
+        lifecycles=_places((row.lifecycle for row in rows), get_args(Lifecycle).index),
+        words=_places(row.words for row in rows),
     )
 
 
@@ -109,18 +161,6 @@ def _places(values: Iterable[_Value], key: Callable[[Any], Any] = _none_last) ->
     return {value: place for place, value in enumerate(sorted(sorted(set(values), key=_none_last), key=key))}
 
 
-def _rated(part: Part) -> tuple[float, float]:
-    return part.rated.resistance_ohm, part.rated.at_c
-
-
-def _body_pair(part: Part) -> tuple[str, str]:
-    return part.body.form, part.body.size_code or ""
-
-
-def _standing(part: Part) -> str:
-    return part.state() or "no standing"
-
-
 def _words(part: Part) -> str:
     """The description's words that the other columns do not say: the filter looks for them, nobody sees them."""
     said = {*f"{part.part} {part.own_number} {part.maker} {rated_text(part)} {body_text(part)}".casefold().split()}
@@ -128,9 +168,10 @@ def _words(part: Part) -> str:
     return " ".join(word for word in words if word.casefold() not in said)
 
 
-def _script(catalog: Catalog, curves: Mapping[str, PartCurve], paths: Paths) -> str:
-    here = _occurring(record.part for record in catalog.parts)
-    rows = [_row(record, curves[record.source.file], here, paths) for record in catalog.parts]
+def _script(context: Context) -> str:
+    listed, paths = _listed(context), context.paths
+    here = _occurring(listed)
+    rows = [_row(row, paths.part(record), here) for row, record in zip(listed, context.catalog.parts, strict=True)]
     data = {
         "makers": [[maker, relative(posixpath.dirname(paths.maker(maker)), PAGE)] for maker in here.makers],
         "rated": [[*pair, resistance_text(pair[0]), _at(pair[1])] for pair in here.rated],
@@ -150,26 +191,24 @@ def _at(t_c: float) -> str:
     return "" if t_c == 25 else f"at {temperature_text(t_c)}"
 
 
-def _row(record: PartRecord, curve: PartCurve, here: _Occurring, paths: Paths) -> list[Any]:
-    part = record.part
-    b_k, mark = curve_b(curve)
+def _row(part: Listed, path: str, here: _Occurring) -> list[Any]:
     row = [
-        part.part,
-        part.own_number or "",
+        part.number,
+        part.own_number,
         here.makers[part.maker],
-        here.rated[_rated(part)],
-        here.tolerances[part.rated.tolerance_pct],
-        b_k,
-        mark,
-        here.bodies[_body_pair(part)],
-        here.ranges[part.limits.operating_c],
-        here.standings[_standing(part)],
+        here.rated[part.rated],
+        here.tolerances[part.tolerance_pct],
+        part.b_k,
+        part.b_mark,
+        here.bodies[part.body],
+        here.ranges[part.operating_c],
+        here.standings[part.standing],
         here.lifecycles[part.lifecycle],
-        here.words[_words(part)],
+        here.words[part.words],
     ]
     # The script makes most file names from the number itself; only the others are sent.
-    file = posixpath.basename(paths.part(record))
-    return row if part.part.isascii() and file == f"{slug(part.part)}.html" else [*row, file]
+    file = posixpath.basename(path)
+    return row if part.number.isascii() and file == f"{slug(part.number)}.html" else [*row, file]
 
 
 def _json(value: Any) -> str:
@@ -177,14 +216,13 @@ def _json(value: Any) -> str:
     return json.dumps(value, ensure_ascii=False, separators=(",", ":"), allow_nan=False).replace("<", "\\u003c")
 
 
-def _body(catalog: Catalog, paths: Paths) -> Html:
-    parts = [record.part for record in catalog.parts]
+def _body(here: _Occurring, makers: Counter[str], paths: Paths) -> Html:
     return joined(
         [
             tag("h1", "Parts"),
             tag(
                 "section",
-                _filters(_occurring(parts)),
+                _filters(here),
                 _TOOLS,
                 _list_head(),
                 id="bd-parts",
@@ -194,7 +232,7 @@ def _body(catalog: Catalog, paths: Paths) -> Html:
             ),
             tag("h2", "Makers", id="makers"),
             tag("p", "Each maker's page holds its parts as a plain table."),
-            _makers(Counter(part.maker for part in parts), paths),
+            _makers(makers, paths),
             tag("script", src=relative(DATA, PAGE), defer=True),
         ]
     )

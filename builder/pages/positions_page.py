@@ -31,7 +31,18 @@ def positions_page(context: Context) -> Page:
         headings=tuple(Heading(anchor, board) for board, anchor, _ in _boards(context)),
         search_text="positions boards designators fitted alternates swap verdict matrix",
         in_nav=True,
+        made_from=tuple(_sources(place, context) for place in context.catalog.positions),
     )
+
+
+def _sources(place: PositionRecord, context: Context) -> str:
+    """What the page takes of a position and the parts that it names."""
+    fitted, alternates = context.catalog.part(place.position.fitted), context.alternates(place)
+    parts = [
+        (part.name, part.number, context.paths.part(part), context.paths.swap(place, part))
+        for part in (fitted, *alternates)
+    ]
+    return repr((context.digest(place), parts, [context.verdict(place, part) for part in alternates]))
 
 
 def _body(context: Context) -> Html:
@@ -86,7 +97,7 @@ def _limit(place: PositionRecord) -> Html:
 def _verdicts(place: PositionRecord, columns: Sequence[PartRecord], context: Context) -> list[Html]:
     here = {part.source.file for part in context.alternates(place)}
     return [
-        link(verdict_badge(context.swap(place, part).verdict), relative(context.paths.swap(place, part), HERE))
+        link(verdict_badge(context.verdict(place, part)), relative(context.paths.swap(place, part), HERE))
         if part.source.file in here
         else tag("span", "–", class_="bd-none")
         for part in columns
@@ -94,4 +105,4 @@ def _verdicts(place: PositionRecord, columns: Sequence[PartRecord], context: Con
 
 
 def _part_link(part: PartRecord, context: Context) -> Html:
-    return link(part.part.part, relative(context.paths.part(part), HERE))
+    return link(part.number, relative(context.paths.part(part), HERE))

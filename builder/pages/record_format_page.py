@@ -28,12 +28,13 @@ def record_format_page() -> Page:
         search_text="record format fields YAML schema units table CSV columns how to add a part",
         in_nav=True,
         wide=False,
+        made_from=(),
     )
 
 
 def schema_files() -> list[DataFile]:
     """A JSON Schema of each kind of record, for editors."""
-    return [DataFile(f"schema/{kind}.json", partial(schema_text, model)) for kind, model in _KINDS]
+    return [DataFile(f"schema/{kind}.json", partial(schema_text, model), made_from=()) for kind, model in _KINDS]
 
 
 def schema_text(model: type[RecordModel]) -> str:

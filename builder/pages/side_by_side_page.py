@@ -23,6 +23,7 @@ def side_by_side_page() -> Page:
         body=lambda: str(_body()),
         search_text="compare parts, difference in kelvin, ratio, what an alternate reads, replace, second source",
         in_nav=True,
+        made_from=(),
     )
 
 

@@ -41,8 +41,8 @@ def site(
     """
     context = Context(checked, about, figures, kept or Kept())
     yield home_page(context)
-    yield parts_page(context.catalog, checked.curves, context.paths)
-    yield parts_data(context.catalog, checked.curves, context.paths)
+    yield parts_page(context)
+    yield parts_data(context)
     yield from maker_pages(context.catalog, checked.curves, context.paths)
     yield side_by_side_page()
     yield families_page(context)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections import defaultdict
 from collections.abc import Iterator
+from functools import partial
 
 import numpy as np
 
@@ -51,14 +52,28 @@ def largest_pair(context: Context) -> Pair | None:
     return found if found and abs(found[2].reads_k[0]) > _LEAST_K else None
 
 
+def tour_sources(context: Context) -> tuple[str, ...]:
+    """What the tour is made from, for the `made_from` of its page."""
+    alike = (record for group in _alike_on_paper(context) for record in group)
+    return tuple(repr((context.paths.part(r), r.name, context.curve_digest(r), r.digest)) for r in alike)
+
+
 def _alike_on_paper(context: Context) -> Iterator[list[PartRecord]]:
     """Parts with one rated resistance and one stated B25/85, whose curves are more than an estimate from these."""
-    groups: dict[tuple[float, float, float], list[PartRecord]] = defaultdict(list)
+    groups: dict[tuple[float, ...], list[PartRecord]] = defaultdict(list)
     for record in context.catalog.parts:
-        b_k = _stated_b_k(record.part)
-        if b_k is not None and context.curve(record).curve.basis in ("table", "steinhart-hart"):
-            groups[record.part.rated.resistance_ohm, record.part.rated.at_c, b_k].append(record)
+        stated = context.of_record("on-paper", record, partial(_on_paper, record, context))
+        if stated:
+            groups[tuple(stated)].append(record)
     return (group for group in groups.values() if len(group) > 1)
+
+
+def _on_paper(record: PartRecord, context: Context) -> list[float]:
+    """Rated resistance and temperature, and B25/85; nothing where the curve would not be more than these."""
+    part, b_k = record.part, _stated_b_k(record.part)
+    if b_k is None or context.curve(record).curve.basis not in ("table", "steinhart-hart"):
+        return []
+    return [part.rated.resistance_ohm, part.rated.at_c, b_k]
 
 
 def _stated_b_k(part: Part) -> float | None:

@@ -6,6 +6,7 @@ from collections.abc import Callable, Iterator, Mapping
 from dataclasses import dataclass, field
 from functools import cached_property
 from pathlib import Path
+from typing import Any
 
 from builder.problems import Problem, Severity
 from builder.records import yaml_text
@@ -89,10 +90,11 @@ class PositionRecord:
 class KeptPartRecord(PartRecord):
     """A part's record that was read before: what it goes by is known, all else is fetched when it is asked for."""
 
-    def __init__(self, known: Mapping[str, str | None], fetch: Callable[[], PartRecord]) -> None:
+    def __init__(self, known: Mapping[str, Any], fetch: Callable[[], PartRecord]) -> None:
         names = {name: known[name] for name in ("number", "maker", "own_number", "state", "table_file", "digest")}
-        source = Source(str(known["file"]), str(known["below"]), _KeptLines(fetch))
-        self.__dict__.update(names, source=source, _fetch=fetch)
+        source = Source(known["file"], known["below"], _KeptLines(fetch))
+        files = {name: DocumentFile(Path(path), sha256) for name, path, sha256 in known["files"]}
+        self.__dict__.update(names, source=source, files=files, _fetch=fetch)
 
     @cached_property
     def part(self) -> Part:
@@ -103,11 +105,6 @@ class KeptPartRecord(PartRecord):
     def table(self) -> TableData | None:
         """The numbers of its table."""
         return self._fetched.table
-
-    @cached_property
-    def files(self) -> Mapping[str, DocumentFile]:
-        """The files of its documents."""
-        return self._fetched.files
 
     @cached_property
     def _fetched(self) -> PartRecord:
@@ -131,8 +128,9 @@ class _KeptLines(Mapping[yaml_text.Path, int]):
         return len(self._fetch().source.lines)
 
 
-def known_of(record: PartRecord) -> dict[str, str | None]:
+def known_of(record: PartRecord) -> dict[str, Any]:
     """What a record that is kept is known by before it is fetched."""
     names = {"number": record.number, "maker": record.maker, "own_number": record.own_number, "state": record.state}
     places = {"file": record.source.file, "below": record.source.below, "table_file": record.table_file}
-    return names | places | {"digest": record.digest}
+    files = [[name, file.path.as_posix(), file.sha256] for name, file in record.files.items()]
+    return names | places | {"files": files, "digest": record.digest}

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import csv
+import datetime
 import functools
 import http.server
 import io
@@ -17,6 +18,8 @@ from typing import Any
 import pytest
 from playwright.sync_api import Browser, Page
 
+from builder.crosschecks import CheckedCatalog
+from builder.pages.context import Context
 from builder.pages.parts_page import parts_data, parts_page
 from builder.pages.paths import Paths
 from builder.part_curve import part_curve
@@ -42,15 +45,16 @@ a { color: var(--bd-nominal); }
 
 def written(catalog: Catalog, folder: Path) -> Path:
     """The Parts page of a catalog in the plainest frame that loads the site's own files."""
-    paths, curves = Paths(catalog), {record.source.file: part_curve(record) for record in catalog.parts}
+    curves = {record.source.file: part_curve(record) for record in catalog.parts}
+    context = Context(CheckedCatalog(catalog, curves, datetime.date(2026, 1, 1)))
     assets = shutil.copytree(ROOT / "builder" / "assets", folder / "assets")
     (assets / "frame.css").write_text(FRAME_STYLE, "utf-8")
     styles = "".join(f'<link rel="stylesheet" href="../assets/{f.name}">' for f in sorted(assets.glob("*.css")))
-    data = parts_data(catalog, curves, paths)
+    data = parts_data(context)
     (folder / "parts").mkdir()
     (folder / data.path).write_text(data.content(), "utf-8")
     page = folder / "parts" / "index.html"
-    page.write_text(FRAME.format(styles=styles, body=parts_page(catalog, curves, paths).body()), "utf-8")
+    page.write_text(FRAME.format(styles=styles, body=parts_page(context).body()), "utf-8")
     return page
 
 

@@ -55,7 +55,7 @@ def written(context: Context, folder: Path) -> Path:
         f'<script src="assets/{f.name}"></script>' for f in sorted(assets.glob("*.js")) if f.name != "search.js"
     )
     files = [curve_file(record, context) for record in context.catalog.parts]
-    for file in (*files, parts_data(context.catalog, context.checked.curves, context.paths)):
+    for file in (*files, parts_data(context)):
         (folder / file.path).parent.mkdir(parents=True, exist_ok=True)
         (folder / file.path).write_text(file.content(), "utf-8")
     page = folder / PAGE

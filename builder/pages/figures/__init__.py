@@ -12,6 +12,7 @@ from html import escape
 
 import numpy as np
 
+from builder.pages.figures.axes import axis
 from builder.pages.figures.marks import Band, BoolArray, Dots, Layer, Limit, Line, Mark, Plot
 from builder.pages.figures.scales import (
     HEIGHT,
@@ -135,9 +136,7 @@ def _figure(title: str, description: str, y: Scale, marks: Sequence[Mark], dashe
 
 
 def _frame(plot: Plot) -> str:
-    from builder.pages.figures.frames import axis_svg
-
-    return axis_svg(plot.x) + axis_svg(plot.y)
+    return axis(plot.x) + axis(plot.y)
 
 
 def _clipped(drawn: Sequence[tuple[Mark, str]]) -> str:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import datetime
 import json
 import math
 import re
@@ -11,6 +12,8 @@ from typing import Any
 
 import pytest
 
+from builder.crosschecks import CheckedCatalog
+from builder.pages.context import Context
 from builder.pages.maker_page import maker_pages
 from builder.pages.page import Page
 from builder.pages.parts_page import curve_b, parts_data, parts_page
@@ -51,8 +54,12 @@ def curves(catalog: Catalog) -> dict[str, PartCurve]:
     return {record.source.file: part_curve(record) for record in catalog.parts}
 
 
+def context(catalog: Catalog) -> Context:
+    return Context(CheckedCatalog(catalog, curves(catalog), datetime.date(2026, 1, 1)))
+
+
 def script(catalog: Catalog) -> str:
-    return parts_data(catalog, curves(catalog), Paths(catalog)).content()
+    return parts_data(context(catalog)).content()
 
 
 def data(catalog: Catalog) -> dict[str, Any]:
@@ -130,7 +137,7 @@ def test_what_a_record_says_cannot_end_the_script_or_become_html(written: Write)
     catalog = written({"part": HOSTILE, "maker": HOSTILE, "own_number": HOSTILE, "description": HOSTILE})
     assert "<" not in script(catalog)
     assert data(catalog)["rows"][0][0] == HOSTILE
-    bodies = [page.body() for page in (parts_page(catalog, curves(catalog), Paths(catalog)), *makers_pages(catalog))]
+    bodies = [page.body() for page in (parts_page(context(catalog)), *makers_pages(catalog))]
     assert not any("<img" in body for body in bodies)
 
 
@@ -162,7 +169,7 @@ def test_values_are_sorted_with_missing_ones_last(written: Write) -> None:
 
 def test_the_page_links_every_maker_with_the_count_of_its_parts() -> None:
     catalog = read_catalog(DEMO)
-    body = parts_page(catalog, curves(catalog), Paths(catalog)).body()
+    body = parts_page(context(catalog)).body()
     makers = [record.part.maker for record in catalog.parts]
     listed = re.findall(r'<li><a href="([^"]+)">([^<]+)</a> (\d+) parts?</li>', body)
     assert {maker: int(count) for _, maker, count in listed} == {maker: makers.count(maker) for maker in makers}
@@ -181,5 +188,5 @@ def test_every_part_stands_on_its_maker_s_page_and_is_linked_there() -> None:
 
 def test_an_empty_catalog_has_a_page() -> None:
     catalog = Catalog()
-    assert "<h1>Parts</h1>" in parts_page(catalog, {}, Paths(catalog)).body()
+    assert "<h1>Parts</h1>" in parts_page(context(catalog)).body()
     assert data(catalog)["rows"] == []
