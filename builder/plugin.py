@@ -183,6 +183,7 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
 
     def __init__(self) -> None:
         self._checked: CheckedCatalog
+        self._kept_for: tuple[str, bool] | None = None
         self._kept: Kept  # what was read and checked
         self._made: Kept  # what the site was made of
         self._site_folder: SiteFolder | None = None
@@ -193,7 +194,9 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         self._shell: Callable[[str, bool, bool, bool], Shell]
 
     def on_config(self, config: MkDocsConfig) -> MkDocsConfig:
-        if not hasattr(self, "_kept"):  # while serving, what is in memory goes on to the next build
+        asked = self.config.records, self.config.cache
+        if self._kept_for != asked:  # while serving, what is in memory goes on to the next build
+            self._kept_for = asked
             self._kept = Kept.beside(Path(self.config.records)) if self.config.cache else Kept()
             self._made = self._kept.below("site")
         self._read_records()

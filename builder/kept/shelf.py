@@ -8,6 +8,7 @@ import json
 import os
 import pickle
 import time
+from collections.abc import Callable
 from pathlib import Path
 from typing import Any
 
@@ -52,6 +53,15 @@ class Shelf:
             self._values[key] = None if pickled is None else pickle.loads(pickled)
         return self._values[key]
 
+    def later(self, key: str) -> Callable[[], Any]:
+        """What gives the value that a key has now, whatever is put there later."""
+        self._used.add(key)
+        if key in self._values:
+            value = self._values[key]
+            return lambda: value
+        entry, data = self._index.get(key), self._data
+        return lambda: None if (pickled := _checked(entry, data)) is None else pickle.loads(pickled)
+
     def put(self, key: str, value: Any, head: Any = True) -> None:
         """Keep a value, with what is to stand in the index beside it: anything but None that JSON can say."""
         self._used.add(key)
@@ -59,11 +69,7 @@ class Shelf:
         self._new[key] = head, pickle.dumps(value, pickle.HIGHEST_PROTOCOL)
 
     def _pickled(self, key: str) -> bytes | None:
-        if key not in self._index:
-            return None
-        _, start, length, expected = self._index[key]
-        found = self._data[start : start + length]
-        return found if digest(found) == expected else None
+        return _checked(self._index.get(key), self._data)
 
     def save(self) -> None:
         """Write what was asked for since the last saving, if that differs from what stands there.
@@ -85,7 +91,17 @@ class Shelf:
                 pieces.append(pickled)
                 start += len(pickled)
         self._index, self._data, self._new = index, b"".join(pieces), {}
+        self._values = {key: value for key, value in self._values.items() if key in index}
         _write(self._path, self._code, index, self._data)
+
+
+def _checked(entry: tuple[Any, int, int, str] | None, data: bytes) -> bytes | None:
+    """The pickled value that an entry of the index names; None where it is not as it was written."""
+    if entry is None:
+        return None
+    _, start, length, expected = entry
+    found = data[start : start + length]
+    return found if digest(found) == expected else None
 
 
 def _opened(path: Path | None, code: str) -> tuple[dict[str, Any], bytes]:

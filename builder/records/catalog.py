@@ -5,7 +5,7 @@ from __future__ import annotations
 import codecs
 import hashlib
 import os
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Callable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, field
 from functools import cache, cached_property, partial
 from pathlib import Path
@@ -243,17 +243,13 @@ def _kept_reading(reading: _Reading, path: Path, shelf: Shelf) -> _Reading | Non
     if head["part"] is None:
         read: _Reading | None = shelf.get(path.as_posix())
         return read
-    part = KeptPartRecord(head["part"], partial(_fetched, reading.root, path, shelf))
+    part = KeptPartRecord(head["part"], partial(_fetched, reading.root, path, shelf.later(path.as_posix())))
     return _Reading(reading.root, parts=[part], seen=head["seen"])
 
 
-def _fetched(root: Path, path: Path, shelf: Shelf) -> PartRecord:
+def _fetched(root: Path, path: Path, later: Callable[[], _Reading | None]) -> PartRecord:
     """A kept part; one whose value is damaged is read again."""
-    read: _Reading | None = shelf.get(path.as_posix())
-    if read is None:
-        (read,) = _read_share(root, [path])
-        _keep(read, path, shelf)
-    return read.parts[0]
+    return (later() or _read_share(root, [path])[0]).parts[0]
 
 
 def _record_files(reading: _Reading) -> Iterator[Path]:

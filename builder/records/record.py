@@ -92,7 +92,7 @@ class KeptPartRecord(PartRecord):
 
     def __init__(self, known: Mapping[str, Any], fetch: Callable[[], PartRecord]) -> None:
         names = {name: known[name] for name in ("number", "maker", "own_number", "state", "table_file", "digest")}
-        source = Source(known["file"], known["below"], _KeptLines(fetch))
+        source = Source(known["file"], known["below"], _KeptLines(lambda: self._fetched))
         files = {name: DocumentFile(Path(path), sha256) for name, path, sha256 in known["files"]}
         self.__dict__.update(names, source=source, files=files, _fetch=fetch)
 
