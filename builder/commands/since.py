@@ -24,6 +24,9 @@ def slips_since(records: Path, since: str, catalog: Catalog) -> tuple[Problem, .
         commit, now = repository.commit(since), present_state(records, catalog)
         if not repository.leads_to_head(commit):
             click.echo(_APART.format(revision=commit.short), err=True)
-        return ledger_slips(states_since(repository, commit, now), now)
+        states = states_since(repository, commit, now)
     except HistoryUnread as unread:
         stop(str(unread), 2)
+    for problem in states[0].unread:
+        click.echo(f"Not readable in revision {commit.short}, so no ledger in it is compared: {problem}", err=True)
+    return ledger_slips(states, now)

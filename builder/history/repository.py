@@ -84,7 +84,9 @@ class Repository:
                 f"{clipped(revision) or 'an empty text'} is no revision of this repository. {self._advice}"
             )
         if not self._folder(named):
-            raise HistoryUnread(f"{self.folder} is not in revision {clipped(revision)}. Name a later revision.")
+            raise HistoryUnread(
+                f"{self.folder} is not in revision {clipped(revision)}. Name a later one, or commit the folder first."
+            )
         return self.commits("--max-count=1", named)[0]
 
     def _folder(self, commit: str) -> str:

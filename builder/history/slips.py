@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections import Counter
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from difflib import SequenceMatcher
 from itertools import count
@@ -15,7 +15,7 @@ from builder.history.revision import State, state_at
 from builder.history.shift import Shift, shift
 from builder.ledger import APPROVING
 from builder.problems import Problem, clipped, in_order, quoted
-from builder.records import PartRecord, PositionRecord, Source
+from builder.records import Catalog, PartRecord, PositionRecord, Source, UnknownPart
 from builder.records.part import Standing
 from builder.records.position import Alternate
 from builder.records.yaml_text import Path
@@ -27,8 +27,12 @@ Standings = tuple[Standing, ...]
 
 @dataclass(frozen=True, eq=False)
 class _Ledger:
-    """A list of entries as a state had it and as it is now (None: gone), and where what is wrong with it is told."""
+    """A list of entries as a state had it and as it is now (None: gone), and where what is wrong with it is told.
 
+    `about` is the part's name today, whatever it was called in the state.
+    """
+
+    about: str
     what: str
     source: Source
     path: Path
@@ -39,7 +43,7 @@ class _Ledger:
     @property
     def key(self) -> tuple[str, str]:
         """The same for one ledger in every state."""
-        return self.source.file, self.what.casefold()
+        return self.source.file, self.about
 
     def problem(self, path: Path, rule: str, message: str) -> Problem:
         """A problem of one of its fields."""
@@ -71,7 +75,8 @@ def ledger_slips(states: Sequence[State], now: State) -> tuple[Problem, ...]:
     settled: set[str] = set()
     for state in states:
         parts = list(_matched(part_pairs(state, now), now.catalog.parts))
-        for ledger in (*_of_parts(state, parts), *_of_alternates(state, now)):
+        renamed = {before.name: part.name for before, part in parts if part is not None}
+        for ledger in (*_of_parts(state, parts), *_of_alternates(state, now, renamed)):
             known = kept.get(ledger.key)
             if known is None or ledger.before[: len(known.before)] == known.before:
                 kept[ledger.key] = ledger
@@ -93,22 +98,34 @@ def _of_parts(state: State, matched: Iterable[tuple[PartRecord, PartRecord | Non
         record = now or before
         what = f"the record of {record.name}"
         entries = now.part.standing if now else None
-        yield _Ledger(what, record.source, ("standing",), before.part.standing, entries, state.name)
+        yield _Ledger(record.name, what, record.source, ("standing",), before.part.standing, entries, state.name)
 
 
-def _of_alternates(state: State, now: State) -> Iterator[_Ledger]:
+def _of_alternates(state: State, now: State, renamed: Mapping[str, str]) -> Iterator[_Ledger]:
     for before, place in _matched(position_pairs(state, now), now.catalog.positions):
-        record, found = place or before, _alternates(place)
-        for number, (_, alternate) in _alternates(before).items():
-            i, same = found.get(number, (None, None))
+        record = place or before
+        found = _alternates(place, now.catalog, {}) if place else {}
+        for part, (_, alternate) in _alternates(before, state.catalog, renamed).items():
+            i, same = found.get(part, (None, None))
             path: Path = ("alternates",) if i is None else ("alternates", i, "standing")
             what = f"the alternate {alternate.part} at {record.position.position}"
             entries = same.standing if same else None
-            yield _Ledger(what, record.source, path, alternate.standing, entries, state.name)
+            yield _Ledger(part, what, record.source, path, alternate.standing, entries, state.name)
 
 
-def _alternates(place: PositionRecord | None) -> dict[str, tuple[int, Alternate]]:
-    return {a.part.casefold(): (i, a) for i, a in enumerate(place.position.alternates)} if place else {}
+def _alternates(
+    place: PositionRecord, catalog: Catalog, renamed: Mapping[str, str]
+) -> dict[str, tuple[int, Alternate]]:
+    """A position's alternates with their places in its list, by the names that the parts have today."""
+    return {_name(a.part, catalog, renamed): (i, a) for i, a in enumerate(place.position.alternates)}
+
+
+def _name(number: str, catalog: Catalog, renamed: Mapping[str, str]) -> str:
+    try:
+        name = catalog.part(number).name
+    except UnknownPart:
+        return number.casefold()
+    return renamed.get(name, name)
 
 
 def _slips(ledger: _Ledger) -> Iterator[Problem]:

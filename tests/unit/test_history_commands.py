@@ -167,3 +167,14 @@ def test_check_since_a_commit_on_another_way_says_so(kept):
         f"Revision {second[:10]} is not among the commits that lead to this one, as far as this clone knows: what was "
         "entered there counts as removed here. Where a branch is behind, give git merge-base of the two.\n",
     )
+
+
+def test_check_since_says_whose_ledger_it_could_not_read(kept):
+    first = kept.commit("one", x=part(("b_k: 3950", "b_k: 39500")))
+    kept.commit("two", x=part())
+    assert told("check", "--since", first) == (
+        0,
+        "1 part, 0 positions: 0 errors, 0 warnings.\n",
+        f"Not readable in revision {first[:10]}, so no ledger in it is compared: parts/x.yaml:6: b_values[0].b_k: "
+        "39500 K is outside 1000 to 10000 K. Check the decimal point; data sheets print B in kelvin.\n",
+    )

@@ -158,7 +158,9 @@ def test_a_revision_without_the_folder_is_refused(kept):
     (kept.root / "README").write_text("begun")
     kept.commit("one")
     kept.commit("two", x=part())
-    assert refusal(revision="HEAD~1") == "parts is not in revision HEAD~1. Name a later revision."
+    assert (
+        refusal(revision="HEAD~1") == "parts is not in revision HEAD~1. Name a later one, or commit the folder first."
+    )
 
 
 @pytest.mark.usefixtures("kept")

@@ -125,6 +125,18 @@ def test_an_alternate_that_is_gone_with_its_approval_is_told(kept):
     ]
 
 
+def test_an_alternate_whose_part_was_renamed_keeps_its_ledger(kept):
+    approved_there = appended(position(), APPROVED)
+    first = kept.commit("one", x=part(), y=other_part(), place=approved_there)
+    kept.write(y=other_part("Y-104"), place=approved_there.replace("Y-103", "Y-104"))
+    assert findings(first) == []
+    kept.commit("two")
+    kept.write(place=approved_there.replace("Y-103", "maker y-104"))
+    assert findings(first) == []
+    kept.write(place=position(("Y-103", "Y-104")))
+    assert len(findings(first)) == 1
+
+
 def test_an_alternate_that_was_never_approved_may_go(kept):
     first = kept.commit("one", x=part(), y=other_part(), place=position())
     text = position()
