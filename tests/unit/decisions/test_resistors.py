@@ -8,7 +8,7 @@ from places import part, place
 from scipy.optimize import minimize_scalar
 
 from builder.circuit import Chain, budget, thermistor
-from builder.decisions import best_resistor, series_ohm
+from builder.decisions import best_resistor, resistors, series_ohm
 from builder.decisions.new_firmware import with_new_firmware
 from builder.part_curve import whole_steps_c
 from builder.records import read_catalog
@@ -116,3 +116,21 @@ def test_curve_that_does_not_reach_over_the_range_is_refused():
     fitted = thermistor(part(steinhart_hart=bent))
     with pytest.raises(ValueError, match=r"^the curve does not reach over 0 to 60 °C$"):
         best_resistor(place().position, fitted, fitted.made)
+
+
+def test_answer_does_not_hang_on_the_corners_that_are_looked_at_first(monkeypatch):
+    position, fitted = PLACES["charger-power/RT2"], thermistor(DEMO.part("TB3A-104F42"))
+    expected = best_resistor(position, fitted, fitted.made, "E24")
+
+    def one_corner(errors):
+        return {name: limit[:1] for name, limit in errors._corners.items()}
+
+    monkeypatch.setattr(resistors._Errors, "_likely_corners", property(one_corner))
+    assert best_resistor(position, fitted, fitted.made, "E24") == expected
+
+
+def test_answer_does_not_hang_on_how_closely_values_are_looked_at_first(monkeypatch):
+    position, fitted = PLACES["coolbox-main/RT1"], thermistor(DEMO.part("TB3A-103F38"))
+    expected = best_resistor(position, fitted, fitted.made, "E24")
+    monkeypatch.setattr(resistors, "_LOOKS", ((5, False, 7), (None, True, 2)))
+    assert best_resistor(position, fitted, fitted.made, "E24") == expected

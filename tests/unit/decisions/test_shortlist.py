@@ -86,6 +86,12 @@ def test_missing_figures_leave_it_open_and_are_named():
     assert ranked.missing == ("rated.tolerance_pct", "limits.operating_c", "limits.time_constant_s")
 
 
+@pytest.mark.parametrize("field", ["operating_c", "time_constant_s"])
+def test_requirement_that_cannot_be_judged_leaves_a_met_limit_open(field):
+    (ranked,) = listed(part("A", limits={field: None}), requires={"time_constant_max_s": 10}).ranked
+    assert (ranked.meets, ranked.missing, ranked.margin_k > 0) == (None, (f"limits.{field}",), True)
+
+
 def test_limit_that_is_missed_already_is_missed_whatever_else_is_not_stated():
     (ranked,) = listed(part("A", limits={"operating_c": None}), limit_k=0.1).ranked
     assert (ranked.meets, ranked.missing) == (False, ("limits.operating_c",))

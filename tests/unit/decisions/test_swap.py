@@ -81,6 +81,14 @@ def test_b_value_made_anew_keeps_its_reference_temperature():
     assert (firmware.at_c, firmware.b_k) == (40, pytest.approx(3600, abs=1e-4))
 
 
+def test_steinhart_hart_made_anew_has_the_coefficients_that_the_alternates_maker_states():
+    # A common 10 kΩ set; Kaw's open numerical-methods textbook uses it.
+    stated = {"a": 1.129241e-3, "b": 2.341077e-4, "c": 8.775468e-8}
+    alternate = part("X2", steinhart_hart=stated | {"span_c": [-40, 125]})
+    firmware = swapped(alternate, firmware=EQUATIONS["steinhart-hart"]).new_firmware.position.firmware
+    assert {name: getattr(firmware, name) for name in "abc"} == pytest.approx(stated, rel=1e-6)
+
+
 def test_part_of_another_curve_fits_with_new_firmware():
     found = swapped(part("X2", b_k=3700), trips=[TRIP])
     assert found.verdict == "fits with new firmware"
