@@ -12,7 +12,7 @@ from builder.history.fields import differing_values
 from builder.history.matching import Pair, R, part_pairs, position_pairs
 from builder.history.repository import Commit, Repository
 from builder.history.revision import State, state_at
-from builder.history.shift import Shift, shift
+from builder.history.shift import MOVED_K, Shift, shift
 from builder.ledger import APPROVING
 from builder.problems import Problem, clipped, in_order, quoted
 from builder.records import Catalog, PartRecord, PositionRecord, Source, UnknownPart
@@ -199,7 +199,7 @@ def _moved_text(moved: Shift, record: PartRecord, state: State) -> str:
 
 
 def _shift_text(moved: Shift) -> str:
-    if moved.worst_k and moved.at_c is not None:
+    if abs(moved.worst_k) > MOVED_K and moved.at_c is not None:
         return f"the curve moved by {signed_text(moved.worst_k, 3)} K at {temperature_text(moved.at_c)}"
     if moved.band_at_c is not None:
         return (

@@ -190,6 +190,13 @@ def test_a_band_that_moved_without_a_new_entry_is_told(kept):
     assert "standing[1]: the tolerance band moved by " in finding
 
 
+def test_a_band_that_moved_is_told_though_the_curve_moved_by_less_than_counts(kept):
+    first = kept.commit("one", x=approved())
+    kept.write(x=approved().replace("b_k: 3950, tolerance_pct: 1", "b_k: 3950.01, tolerance_pct: 2"))
+    (finding,) = findings(first)
+    assert "standing[1]: the tolerance band moved by " in finding
+
+
 @pytest.mark.parametrize("state", ["proposed", "withdrawn"])
 def test_the_curve_of_a_part_that_is_not_approved_may_move(kept, state):
     text = appended(part(), WITHDRAWN) if state == "withdrawn" else part()
