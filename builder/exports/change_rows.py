@@ -16,7 +16,7 @@ from builder.problems import clipped, count_text
 from builder.records import PartRecord, PositionRecord
 from builder.units import number_text, signed_text
 
-_NOT_PLAIN = re.compile(r"[^\w\s.,;+=°Ω±−–…%/()'\"→²³-]|_")
+_NOT_PLAIN = re.compile(r"[^\w\s.,;:+=°Ω±−–…%/()'\"→²³-]|_|:(?=\S)")
 _WORDS = {True: "met", False: "exceeded", None: "undecided"}
 
 PART_COLUMNS = (
@@ -83,8 +83,8 @@ def _markdown_table(columns: Sequence[Column], rows: Iterable[Row]) -> str:
 def escaped(text: str) -> str:
     """Text on one line in which nothing is Markdown, HTML or a mention.
 
-    >>> escaped("a|b *c*\\n@all <b> www.x.com")
-    'a&#124;b &#42;c&#42; &#64;all &#60;b&#62; www&#46;x.com'
+    >>> escaped("a: |b *c*\\n@all <b> www.x.com https://x")
+    'a: &#124;b &#42;c&#42; &#64;all &#60;b&#62; www&#46;x.com https&#58;//x'
     """
     plain = _NOT_PLAIN.sub(lambda sign: f"&#{ord(sign[0])};", " ".join(text.split()))
     return plain.replace("www.", "www&#46;")

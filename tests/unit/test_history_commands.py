@@ -56,13 +56,13 @@ def test_changes_answers_markdown_in_which_records_are_text(kept):
     assert told("changes", "--format", "markdown") == (
         0,
         f"""\
-**Since {first[:10]} of 2026-03-02&#58; 1 part and 0 positions changed.**
+**Since {first[:10]} of 2026-03-02: 1 part and 0 positions changed.**
 
 | part | change | curve K | at °C | band K | at °C |
 | --- | --- | ---: | ---: | ---: | ---: |
 | Maker X-103 | edited | 0.000 |  | 0.000 |  |
 
-- Maker X-103: notes&#58; nothing → &#124; &#60;b&#62;&#64;all&#60;/b&#62; &#91;x&#93;(http&#58;//y) &#96;z&#96;
+- Maker X-103: notes: nothing → &#124; &#60;b&#62;&#64;all&#60;/b&#62; &#91;x&#93;(http&#58;//y) &#96;z&#96;
 """,
         "",
     )
