@@ -36,6 +36,8 @@ from builder.history import Past
 from builder.kept import Kept, Shelf, SiteFolder, digest
 from builder.pages.figures.axes import newly_drawn, recall
 from builder.pages.figures.scales import Scale
+from builder.pages.ledger_feed import FEED_LINK
+from builder.pages.ledger_page import PAGE as LEDGER
 from builder.pages.page import CopiedFile, DataFile, Heading, Page
 from builder.pages.site import site
 from builder.problems import count_text, errors, warnings
@@ -200,6 +202,7 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
             self._kept = Kept.beside(Path(self.config.records)) if self.config.cache else Kept()
             self._made = self._kept.below("site")
         self._read_records()
+        self._site_url = f"{config.site_url.rstrip('/')}/" if config.site_url else ""
         self._begin_site(config)
         names = sorted(asset.name for asset in ASSETS.iterdir())
         config.extra.setdefault("polyfills", []).append(f"assets/{SEARCH}")
@@ -249,7 +252,7 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
     def _site(self) -> Iterator[Page | DataFile | CopiedFile]:
         past = Past(Path(relpath(self.config.records)), self.config.changes)
         about, figures = self.config.about, self.config.figures
-        return site(self._checked, about=about, figures=figures, past=past, kept=self._made)
+        return site(self._checked, about=about, figures=figures, past=past, kept=self._made, site_url=self._site_url)
 
     def _file(self, item: Page | DataFile | CopiedFile, config: MkDocsConfig) -> File:
         if isinstance(item, CopiedFile):
@@ -374,6 +377,12 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         """Whether the records lie below the folder of mkdocs.yml, so that the web address of the project has them."""
         folder = Path(config.config_file_path).resolve().parent
         return Path(self.config.records).resolve().is_relative_to(folder)
+
+    def on_post_page(self, output: str, *, page: SitePage, **_: object) -> str:
+        """Have the Ledger's head name its feed, where readers of feeds look for it."""
+        if page.file.dest_uri != LEDGER:
+            return output
+        return output.replace("</head>", f"{FEED_LINK}</head>", 1)
 
     def on_post_template(self, output: str, *, template_name: str, config: MkDocsConfig) -> str:
         if template_name != "sitemap.xml":

@@ -4,19 +4,19 @@ from __future__ import annotations
 
 from collections import Counter
 from collections.abc import Mapping, Sequence
-from functools import partial
 from typing import Any
 
+from builder.pages.attention_section import attention_table
 from builder.pages.context import Context
 from builder.pages.doubts import rule_link
 from builder.pages.html import Html, joined, link, notice, table, tag
-from builder.pages.ledger import standing_badge
+from builder.pages.ledger import day_text, standing_badge
+from builder.pages.ledger_page import PAGE as LEDGER
+from builder.pages.ledger_page import ledger_sources
 from builder.pages.page import Heading, Page
 from builder.pages.paths import relative
 from builder.pages.tour_section import tour_section, tour_sources
 from builder.problems import Problem, count_text
-from builder.records import PartRecord
-from builder.records.part import Standing, StandingState
 
 HERE = "index.html"
 _NEWEST = 10
@@ -44,7 +44,7 @@ def home_page(context: Context) -> Page:
             repr((len(context.catalog.problems), len(context.catalog.positions))),
             repr([(record.maker, record.state) for record in context.catalog.parts]),
             repr([context.paths.maker(maker) for maker in {record.maker: None for record in context.catalog.parts}]),
-            repr(_newest_entries(context)),
+            *ledger_sources(context),
             *tour_sources(context),
         ),
     )
@@ -81,12 +81,12 @@ def _tiles(context: Context) -> Html:
 
 
 def _attention(context: Context) -> Html:
-    problems = context.catalog.problems
-    if not problems:
-        return tag("p", "Nothing: every record passes every check without a warning.")
+    problems, decisions = context.catalog.problems, attention_table(context)
+    if not problems and not decisions:
+        return tag("p", "Nothing: every record passes every check without a warning, and no review is due.")
     left = len(problems) - _MOST_DOUBTS
     more = tag("p", f"And {count_text(left, 'more warning')}; beadroll check shows all.") if left > 0 else ""
-    return joined([problems_table(problems[:_MOST_DOUBTS], HERE, context), more])
+    return joined([decisions, problems_table(problems[:_MOST_DOUBTS], HERE, context) if problems else "", more])
 
 
 def problem_sources(problems: Sequence[Problem], context: Context) -> tuple[str, ...]:
@@ -117,55 +117,24 @@ def _record_link(problem: Problem, pages: Mapping[str, tuple[str, str]], here: s
     return link(name, relative(path, here))
 
 
-def _newest_entries(context: Context) -> list[tuple[str, str, str, str, str, str, str, StandingState]]:
-    """The latest decisions: day, part and its page, position and its page, by, because, state."""
-    entries = []
-    for record in context.catalog.parts:
-        path = context.paths.part(record)
-        for on, state, by, because in context.of_record("standings", record, partial(_told_of, record)):
-            entries.append((on, record.number, path, "", "", by, because, state))
-    for place in context.catalog.positions:
-        at = place.position.position, context.paths.position(place)
-        for alternate, record in zip(place.position.alternates, context.alternates(place), strict=True):
-            path = context.paths.part(record)
-            entries += [
-                (on, record.number, path, *at, by, because, state)
-                for on, state, by, because in _told(alternate.standing)
-            ]
-    return sorted(entries, key=lambda entry: entry[0], reverse=True)[:_NEWEST]
-
-
-def _told_of(record: PartRecord) -> list[Any]:
-    return _told(record.part.standing)
-
-
-def _told(standings: Sequence[Standing]) -> list[Any]:
-    return [[entry.on.isoformat(), entry.state, entry.by, entry.because] for entry in standings]
-
-
 def _newest(context: Context) -> Html:
-    rows: list[tuple[Any, ...]] = [
-        (
-            on,
-            link(number, relative(path, HERE)),
-            link(place, relative(at, HERE)) if at else "",
-            standing_badge(state),
-            by,
-            because,
-        )
-        for on, number, path, place, at, by, because, state in _newest_entries(context)
-    ]
-    if not rows:
+    newest = context.entries[: -_NEWEST - 1 : -1]
+    if not newest:
         return tag("p", "Nobody has decided anything yet.")
-    return table(
-        ("day", "part", "at", "standing", "by", "because"),
-        rows,
-        caption="The latest decisions about parts and alternates",
-    )
-
-
-def _part_link(record: PartRecord, context: Context) -> Html:
-    return link(record.number, relative(context.paths.part(record), HERE))
+    rows = [
+        (
+            day_text(entry.standing.on),
+            link(entry.part.part.part, context.paths.part(entry.part)),
+            entry.position and link(entry.position.position.position, context.paths.position(entry.position)),
+            standing_badge(entry.standing.state),
+            entry.standing.by,
+            entry.standing.because,
+        )
+        for entry in newest
+    ]
+    headings = ("day", "part", "at", "standing", "by", "because")
+    shown = table(headings, rows, caption="The latest decisions about parts and alternates")
+    return joined([shown, tag("p", link("The whole ledger", LEDGER))])
 
 
 def _holds(context: Context) -> Html:

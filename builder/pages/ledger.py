@@ -38,9 +38,10 @@ def ledger_table(standing: Sequence[Standing], caption: str) -> Html:
             standing_badge(entry.state),
             entry.by,
             entry.because,
+            entry.document,
             ", ".join(entry.only_for),
             day_text(entry.review_due),
         )
         for entry in reversed(standing)
     ]
-    return table(("day", "standing", "by", "because", "only for", "review due"), rows, caption=caption)
+    return table(("day", "standing", "by", "because", "document", "only for", "review due"), rows, caption=caption)

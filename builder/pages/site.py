@@ -14,6 +14,8 @@ from builder.pages.context import Context
 from builder.pages.documents_section import document_files
 from builder.pages.families_page import families_page
 from builder.pages.home_page import home_page
+from builder.pages.ledger_feed import ledger_feed
+from builder.pages.ledger_page import ledger_csv, ledger_page
 from builder.pages.maker_page import maker_pages
 from builder.pages.page import CopiedFile, DataFile, Page
 from builder.pages.part_page import part_csv, part_page
@@ -33,11 +35,13 @@ def site(
     figures: bool = True,
     past: Past | None = None,
     kept: Kept | None = None,
+    site_url: str = "",
 ) -> Iterator[Page | DataFile | CopiedFile]:
     """Every generated page and file.
 
     `about` is what the home page says of the catalog; pages without figures cost less, for measuring what figures cost;
-    `past` has the revisions that the Changes page shows, `kept` what was computed for an earlier site.
+    `past` has the revisions that the Changes page shows, `kept` what was computed for an earlier site,
+    `site_url` is where the site will stand, for links from outside it.
     """
     context = Context(checked, about, figures, kept or Kept())
     yield home_page(context)
@@ -49,6 +53,9 @@ def site(
     yield positions_page(context)
     yield shortlist_page(context)
     yield shortlist_data(context)
+    yield ledger_page(context)
+    yield ledger_csv(context)
+    yield ledger_feed(context, site_url)
     yield changes_page(context, past)
     yield checks_page()
     yield from (rule_page(rule, context) for rule in RULES)

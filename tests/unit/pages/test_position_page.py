@@ -111,8 +111,8 @@ def test_the_fitted_part_shows_its_own_standing_and_an_alternate_the_one_it_has_
         ["PX-3", "Pellworm", "10 kΩ", "alternate", "no standing", "undecided", ""],
     ]
     assert rows(body, "Standings of PX-2 at this position") == [
-        ["2026-01-01", "withdrawn", "us", "good here"],
-        ["2026-01-01", "proposed", "us", "good here"],
+        ["2026-01-01", "withdrawn", "us", "good here", "sheet, revision C"],
+        ["2026-01-01", "proposed", "us", "good here", "sheet, revision C"],
     ]
 
 
