@@ -331,7 +331,7 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         axes: dict[Scale, str] = self._made.shelf("axes").get("all") or {}
         recall(axes)
         known = len(axes)
-        for file, (written, drawn) in zip(missing, shared_out(write, missing), strict=True):
+        for file, (written, drawn) in zip(missing, shared_out(write, missing, "Writing files"), strict=True):
             axes |= drawn
             if keys[file.dest_uri] is not None:
                 shelf.put(file.dest_uri, None, [keys[file.dest_uri], written])

@@ -5,8 +5,11 @@ from __future__ import annotations
 import os
 import sys
 import threading
-from collections.abc import Callable, Sequence
+from collections.abc import Callable, Iterator, Sequence
+from itertools import pairwise
 from typing import Any, TypeVar
+
+from builder.progress import Progress
 
 T = TypeVar("T")
 R = TypeVar("R")
@@ -20,29 +23,44 @@ _work: Callable[[Sequence[Any]], list[Any]] | None = None
 _items: Sequence[Any] = ()
 
 
-def shared_out(work: Callable[[Sequence[T]], list[R]], items: Sequence[T]) -> list[R]:
+def shared_out(work: Callable[[Sequence[T]], list[R]], items: Sequence[T], doing: str = "Working") -> list[R]:
     """What `work` gives for the items, one result an item, in their order.
 
-    `work` is called with a share of the items in each of several forked processes, or with all of them here: where
-    there are few items, one core, other threads (a fork copies their locks, not them), or no safe fork.
+    `work` is called with a share of the items in each of several forked processes, or with one after the other here:
+    where there are few items, one core, other threads (a fork copies their locks, not them), or no safe fork. A
+    terminal is shown how far it has come, and that it is `doing`.
     """
     count = min(_cores(), len(items) // _FEWEST_ITEMS + 1)
-    if count < 2 or sys.platform != "linux" or threading.active_count() > 1:
-        return work(items)
+    shares = count * _SHARES_EACH
+    ends = [len(items) * share // shares for share in range(shares + 1)]
+    progress, results = Progress(doing, len(items)), list[R]()
+    alone = count < 2 or sys.platform != "linux" or threading.active_count() > 1
+    for found in _done_here(work, items, ends) if alone else _done_by_processes(work, items, ends, count):
+        results += found
+        progress.show(len(results))
+    progress.end()
+    return results
+
+
+def _done_here(work: Callable[[Sequence[T]], list[R]], items: Sequence[T], ends: Sequence[int]) -> Iterator[list[R]]:
+    return (work(items[first:end]) for first, end in pairwise(ends) if first < end)
+
+
+def _done_by_processes(
+    work: Callable[[Sequence[T]], list[R]], items: Sequence[T], ends: Sequence[int], count: int
+) -> Iterator[list[R]]:
     # Imported here: that takes as long as many a command, which shares nothing out.
     import multiprocessing
     from concurrent.futures import ProcessPoolExecutor
 
     global _work, _items
     _work, _items = work, items
-    ends = [len(items) * share // (count * _SHARES_EACH) for share in range(count * _SHARES_EACH + 1)]
     try:
         # Unlike a Pool, it raises when a process is killed, instead of waiting for it for ever.
         with ProcessPoolExecutor(count, multiprocessing.get_context("fork")) as pool:
-            shares = list(pool.map(_share, ends[:-1], ends[1:]))
+            yield from pool.map(_share, ends[:-1], ends[1:])
     finally:
         _work, _items = None, ()
-    return [result for share in shares for result in share]
 
 
 def _share(first: int, end: int) -> list[Any]:

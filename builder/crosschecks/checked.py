@@ -98,7 +98,7 @@ def _findings_of_figures(
     """What the cross-checks find in the figures of each record, or have found in them."""
     missing = [record for record in records if shelf.get(record.digest) is None]
     subjects = [Subject(record, curves.get(record.source.file)) for record in missing]
-    for record, found in zip(missing, shared_out(_findings_of_share, subjects), strict=True):
+    for record, found in zip(missing, shared_out(_findings_of_share, subjects, "Checking records"), strict=True):
         shelf.put(record.digest, found)
     return [shelf.get(record.digest) for record in records]
 

@@ -3,27 +3,50 @@
 from __future__ import annotations
 
 from collections.abc import Hashable, Iterable, Mapping, Sequence
-from typing import Any, TypeVar
+from typing import Any, NamedTuple, TypeVar
 
 from builder.exports.curve_script import script_json
 from builder.exports.packed_curves import packed_curve
 from builder.part_curve import PartCurve
-from builder.records import Part, PartRecord
+from builder.records import Part
 
 _Value = TypeVar("_Value", bound=Hashable)
 
 
-def shortlist_script(
-    parts: Sequence[PartRecord], curves: Mapping[str, PartCurve], starts: Sequence[Mapping[str, Any]]
-) -> str:
+class ShortlistRow(NamedTuple):
+    """What the page is told of one part."""
+
+    curve: Any
+    extends: int
+    dissipation_mw_per_k: float | None
+    time_constant_s: float | None
+    qualification: tuple[str, ...]
+    only_for: tuple[str, ...]
+    withdrawn: str
+    untold: list[Any]
+
+
+def shortlist_row(part: Part, curve: PartCurve) -> ShortlistRow:
+    """The row of one part, from its record alone."""
+    return ShortlistRow(
+        packed_curve(curve),
+        int(curve.curve.extends),
+        part.limits.dissipation_mw_per_k,
+        part.limits.time_constant_s,
+        part.qualification,
+        _only_for(part),
+        _withdrawn(part),
+        _untold(curve),
+    )
+
+
+def shortlist_script(rows: Sequence[ShortlistRow], starts: Sequence[Mapping[str, Any]]) -> str:
     """The script: it sets `beadroll.shortlist`.
 
     Parameters
     ----------
-    parts : sequence of PartRecord
+    rows : sequence of ShortlistRow
         In the order of the list of parts; no unit.
-    curves : mapping of str to PartCurve
-        Each part's curve, by the file of its record; no unit.
     starts : sequence of mappings
         Positions as the page's form holds them; no unit.
 
@@ -32,23 +55,14 @@ def shortlist_script(
     str
         JavaScript, ASCII only; the same for the same records; no unit.
     """
-    qualifications = _places(record.part.qualification for record in parts)
-    only_for = _places(_only_for(record.part) for record in parts)
-    rows = [
-        [
-            packed_curve(curves[record.source.file]),
-            int(curves[record.source.file].curve.extends),
-            record.part.limits.dissipation_mw_per_k,
-            record.part.limits.time_constant_s,
-            qualifications[record.part.qualification],
-            only_for[_only_for(record.part)],
-            _withdrawn(record.part),
-            *_untold(curves[record.source.file]),
-        ]
-        for record in parts
+    qualifications = _places(row.qualification for row in rows)
+    only_for = _places(row.only_for for row in rows)
+    told = [
+        [*row[:4], qualifications[row.qualification], only_for[row.only_for], row.withdrawn, *row.untold]
+        for row in rows
     ]
     lists = {"qualifications": list(qualifications), "only_for": list(only_for), "starts": list(starts)}
-    lines = ",\n".join(map(script_json, rows))
+    lines = ",\n".join(map(script_json, told))
     return (
         "window.beadroll = window.beadroll || {};\n"
         f"beadroll.shortlist = {script_json(lists)};\nbeadroll.shortlist.rows = [\n{lines}\n];\n"

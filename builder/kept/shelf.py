@@ -4,7 +4,6 @@ from __future__ import annotations
 
 import contextlib
 import hashlib
-import json
 import os
 import pickle
 import time
@@ -14,6 +13,7 @@ from typing import Any
 
 _FIRST_LINE = b"beadroll keeps 1\n"
 _DIGEST_BYTES = 64
+_LENGTH_BYTES = 8
 # What a killed run has left behind; a running one needs its file for seconds.
 _LEFT_AFTER_S = 3600.0
 
@@ -26,8 +26,8 @@ def digest(data: bytes) -> str:
 class Shelf:
     """The values of one file, and those that are new; without a file they are kept for this run only.
 
-    The file begins with a first line, the digest of the code that made it and the digest of its index; then come the
-    index, as JSON, and the values, pickled. Whatever is not as it was written (damaged, cut short, of another version of
+    The file begins with a first line, the digest of the code that made it, and the digest and length of its index; then come the
+    index and the values, pickled. Whatever is not as it was written (damaged, cut short, of another version of
     the code) is not there. What nobody asks for from one saving to the next is dropped.
     """
 
@@ -50,7 +50,7 @@ class Shelf:
         self._used.add(key)
         if key not in self._values:
             pickled = self._new[key][1] if key in self._new else self._pickled(key)
-            self._values[key] = None if pickled is None else pickle.loads(pickled)
+            self._values[key] = pickle.loads(pickled) if pickled else None
         return self._values[key]
 
     def later(self, key: str) -> Callable[[], Any]:
@@ -60,13 +60,13 @@ class Shelf:
             value = self._values[key]
             return lambda: value
         entry, data = self._index.get(key), self._data
-        return lambda: None if (pickled := _checked(entry, data)) is None else pickle.loads(pickled)
+        return lambda: pickle.loads(pickled) if (pickled := _checked(entry, data)) else None
 
     def put(self, key: str, value: Any, head: Any = True) -> None:
-        """Keep a value, with what is to stand in the index beside it: anything but None that JSON can say."""
+        """Keep a value, with what is to stand in the index beside it; where the head says all, the value is None."""
         self._used.add(key)
         self._values[key] = value
-        self._new[key] = head, pickle.dumps(value, pickle.HIGHEST_PROTOCOL)
+        self._new[key] = head, b"" if value is None else pickle.dumps(value, pickle.HIGHEST_PROTOCOL)
 
     def _pickled(self, key: str) -> bytes | None:
         return _checked(self._index.get(key), self._data)
@@ -81,17 +81,19 @@ class Shelf:
         """
         wanted = {key for key in self._used if key in self._new or key in self._index}
         self._used.clear()
+        self._values = {key: value for key, value in self._values.items() if key in wanted}
+        if self._path is None:
+            self._new = {key: new for key, new in self._new.items() if key in wanted}
         if self._path is None or (not self._new and len(wanted) == len(self._index)):
             return
         index, pieces, start = {}, [], 0
         for key in sorted(wanted):
             head, pickled = self._new[key] if key in self._new else (self._index[key][0], self._pickled(key))
             if pickled is not None:
-                index[key] = (head, start, len(pickled), digest(pickled))
+                index[key] = (head, start, len(pickled), digest(pickled) if pickled else "")
                 pieces.append(pickled)
                 start += len(pickled)
         self._index, self._data, self._new = index, b"".join(pieces), {}
-        self._values = {key: value for key, value in self._values.items() if key in index}
         _write(self._path, self._code, index, self._data)
 
 
@@ -101,7 +103,7 @@ def _checked(entry: tuple[Any, int, int, str] | None, data: bytes) -> bytes | No
         return None
     _, start, length, expected = entry
     found = data[start : start + length]
-    return found if digest(found) == expected else None
+    return found if not length or digest(found) == expected else None
 
 
 def _opened(path: Path | None, code: str) -> tuple[dict[str, Any], bytes]:
@@ -113,9 +115,9 @@ def _opened(path: Path | None, code: str) -> tuple[dict[str, Any], bytes]:
     with contextlib.suppress(OSError), path.open("rb") as file:
         head = file.read(index_from)
         if head[: len(first)] == first:
-            index, data = file.readline(), file.read()
+            index = file.read(int.from_bytes(file.read(_LENGTH_BYTES), "big"))
             if digest(index).encode() == head[len(first) :]:
-                return json.loads(index), data
+                return pickle.loads(index), file.read()
     return {}, b""
 
 
@@ -126,10 +128,11 @@ def _write(path: Path, code: str, index: dict[str, Any], data: bytes) -> None:
         with contextlib.suppress(OSError):
             if time.time() - left.stat().st_mtime > _LEFT_AFTER_S:
                 left.unlink()
-    written = json.dumps(index, separators=(",", ":")).encode() + b"\n"
+    written = pickle.dumps(index, pickle.HIGHEST_PROTOCOL)
+    length = len(written).to_bytes(_LENGTH_BYTES, "big")
     part = path.with_name(f"{path.name}.{os.getpid()}.part")
     try:
-        part.write_bytes(b"".join((_FIRST_LINE, code.encode(), digest(written).encode(), written, data)))
+        part.write_bytes(b"".join((_FIRST_LINE, code.encode(), digest(written).encode(), length, written, data)))
         part.replace(path)
     finally:
         part.unlink(missing_ok=True)

@@ -111,7 +111,7 @@ class Context:
         found: list[list[tuple[Any, ...]]] | None = shelf.get(key)
         if found is None:
             nearest = NearestParts([self.curve(record) for record in self.catalog.parts])
-            found = shared_out(partial(_neighbours, nearest), range(len(self.catalog.parts)))
+            found = shared_out(partial(_neighbours, nearest), range(len(self.catalog.parts)), "Comparing parts")
             shelf.put(key, found)
         return [tuple(Neighbour(*each) for each in neighbours) for neighbours in found]
 
@@ -125,7 +125,7 @@ class Context:
         return self.of_record("curve-digest", record, made)
 
     def of_record(self, name: str, record: PartRecord | PositionRecord, make: Callable[[], T]) -> T:
-        """What one record alone gives, as it was made before if the record is as it was: what JSON can say, no tuples."""
+        """What one record alone gives, as it was made before if the record is as it was."""
         if not record.digest:
             return make()
         shelf = self.kept.shelf(name)

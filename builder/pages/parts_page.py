@@ -90,28 +90,27 @@ class Listed(NamedTuple):
 
 def _listed(context: Context) -> list[Listed]:
     return [
-        Listed._make(tuple(value) if isinstance(value, list) else value for value in values)
+        Listed._make(context.of_record("listed", record, partial(_values, record, context)))
         for record in context.catalog.parts
-        for values in (context.of_record("listed", record, partial(_values, record, context)),)
     ]
 
 
-def _values(record: PartRecord, context: Context) -> list[Any]:
+def _values(record: PartRecord, context: Context) -> tuple[Any, ...]:
     part, (b_k, mark) = record.part, curve_b(context.curve(record))
-    return [
+    return (
         part.part,
         part.own_number or "",
         part.maker,
-        [part.rated.resistance_ohm, part.rated.at_c],
+        (part.rated.resistance_ohm, part.rated.at_c),
         part.rated.tolerance_pct,
         b_k,
         mark,
-        [part.body.form, part.body.size_code or ""],
-        list(part.limits.operating_c) if part.limits.operating_c else None,
+        (part.body.form, part.body.size_code or ""),
+        part.limits.operating_c,
         part.state() or "no standing",
         part.lifecycle,
         _words(part),
-    ]
+    )
 
 
 def curve_b(curve: PartCurve) -> tuple[float | None, str]:

@@ -2,13 +2,17 @@
 
 from __future__ import annotations
 
-from builder.exports.shortlist_script import shortlist_script
+from functools import partial
+from typing import Any
+
+from builder.exports.shortlist_script import ShortlistRow, shortlist_row, shortlist_script
 from builder.pages.context import Context
 from builder.pages.html import Html, joined, link, notice, tag
 from builder.pages.page import DataFile, Heading, Page
 from builder.pages.parts_page import DATA as PARTS_DATA
 from builder.pages.position_page import CAUTION
 from builder.pages.shortlist_form import form, start_values
+from builder.records import PartRecord
 
 PAGE = "shortlist.html"
 DATA = "shortlist-data.js"
@@ -24,14 +28,35 @@ def shortlist_page(context: Context) -> Page:
         headings=(Heading("ranked", "Ranked"), Heading("out", "Out, and why")),
         search_text="choose a part, best fixed resistor, worst case, rank all parts, requirements, new position",
         in_nav=True,
+        made_from=_form_sources(context),
     )
+
+
+def _form_sources(context: Context) -> tuple[str, ...]:
+    """What the form offers to choose from."""
+    choices = {
+        context.of_record("shortlist-form", record, partial(_choices, record)) for record in context.catalog.parts
+    }
+    places = [place.position.position for place in context.catalog.positions]
+    return repr(places), *sorted(map(repr, choices))
+
+
+def _choices(record: PartRecord) -> tuple[Any, ...]:
+    return record.part.body.form, record.part.body.size_code, record.part.qualification
 
 
 def shortlist_data(context: Context) -> DataFile:
     """All parts' curves and the positions to start from, for this page alone."""
-    catalog, curves = context.catalog, context.checked.curves
-    starts = [start_values(place.position) for place in catalog.positions]
-    return DataFile(DATA, lambda: shortlist_script(catalog.parts, curves, starts))
+    starts = [start_values(place.position) for place in context.catalog.positions]
+    rows = [
+        ShortlistRow._make(context.of_record("shortlist", record, partial(_row, record, context)))
+        for record in context.catalog.parts
+    ]
+    return DataFile(DATA, lambda: shortlist_script(rows, starts), made_from=(repr(rows), repr(starts)))
+
+
+def _row(record: PartRecord, context: Context) -> tuple[Any, ...]:
+    return tuple(shortlist_row(record.part, context.curve(record)))
 
 
 def _body(context: Context) -> Html:

@@ -47,7 +47,7 @@ def site(
     yield home_page(context)
     yield parts_page(context)
     yield parts_data(context)
-    yield from maker_pages(context.catalog, checked.curves, context.paths)
+    yield from maker_pages(context)
     yield side_by_side_page()
     yield families_page(context)
     yield positions_page(context)

@@ -224,7 +224,9 @@ def _readings(reading: _Reading, paths: Sequence[Path], shelf: Shelf) -> Iterato
     """A reading for each file, in their order."""
     known = {path: read for path in paths if (read := _kept_reading(reading, path, shelf))}
     missing = [path for path in paths if path not in known]
-    for path, read in zip(missing, shared_out(partial(_read_share, reading.root), missing), strict=True):
+    for path, read in zip(
+        missing, shared_out(partial(_read_share, reading.root), missing, "Reading records"), strict=True
+    ):
         _keep(read, path, shelf)
         known[path] = read
     return (known[path] for path in paths)

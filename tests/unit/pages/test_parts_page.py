@@ -68,7 +68,7 @@ def data(catalog: Catalog) -> dict[str, Any]:
 
 
 def makers_pages(catalog: Catalog) -> list[Page]:
-    return list(maker_pages(catalog, curves(catalog), Paths(catalog)))
+    return list(maker_pages(context(catalog)))
 
 
 def only_b(catalog: Catalog) -> tuple[float | None, str]:
