@@ -115,9 +115,10 @@ def _opened(path: Path | None, code: str) -> tuple[dict[str, Any], bytes]:
     with contextlib.suppress(OSError), path.open("rb") as file:
         head = file.read(index_from)
         if head[: len(first)] == first:
-            index = file.read(int.from_bytes(file.read(_LENGTH_BYTES), "big"))
-            if digest(index).encode() == head[len(first) :]:
-                return pickle.loads(index), file.read()
+            rest = file.read()
+            end = _LENGTH_BYTES + int.from_bytes(rest[:_LENGTH_BYTES], "big")
+            if digest(rest[:end]).encode() == head[len(first) :]:
+                return pickle.loads(rest[_LENGTH_BYTES:end]), rest[end:]
     return {}, b""
 
 
@@ -129,10 +130,10 @@ def _write(path: Path, code: str, index: dict[str, Any], data: bytes) -> None:
             if time.time() - left.stat().st_mtime > _LEFT_AFTER_S:
                 left.unlink()
     written = pickle.dumps(index, pickle.HIGHEST_PROTOCOL)
-    length = len(written).to_bytes(_LENGTH_BYTES, "big")
+    written = len(written).to_bytes(_LENGTH_BYTES, "big") + written
     part = path.with_name(f"{path.name}.{os.getpid()}.part")
     try:
-        part.write_bytes(b"".join((_FIRST_LINE, code.encode(), digest(written).encode(), length, written, data)))
+        part.write_bytes(b"".join((_FIRST_LINE, code.encode(), digest(written).encode(), written, data)))
         part.replace(path)
     finally:
         part.unlink(missing_ok=True)
