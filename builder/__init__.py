@@ -13,7 +13,6 @@ if TYPE_CHECKING:
     from builder.crosschecks import checked_catalog
     from builder.decisions import best_resistor, shortlist, swap
     from builder.intake import record_text
-    from builder.part_curve import part_curve
     from builder.part_fit import fitted
     from builder.records import read_catalog
 
@@ -23,7 +22,6 @@ __all__ = [
     "compared",
     "families",
     "fitted",
-    "part_curve",
     "read_catalog",
     "record_text",
     "sentence",
@@ -38,7 +36,6 @@ _MODULES = {
     "compared": "comparisons",
     "families": "comparisons",
     "fitted": "part_fit",
-    "part_curve": "part_curve",
     "read_catalog": "records",
     "record_text": "intake",
     "sentence": "comparisons",

@@ -3,7 +3,9 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Sequence
 from dataclasses import dataclass
+from functools import partial
 
 from builder.circuit import Chain, thermistor
 from builder.circuit.budget import CLOSE_K
@@ -12,6 +14,7 @@ from builder.decisions.requirements import requirement_reasons
 from builder.decisions.resistors import best_value
 from builder.decisions.series import Series
 from builder.part_curve import whole_steps_c
+from builder.processes import shared_out
 from builder.records import Catalog, PartRecord, Position, PositionRecord
 from builder.units import range_text
 
@@ -67,34 +70,47 @@ def shortlist(position: PositionRecord, catalog: Catalog, series: Series = "E96"
     Shortlist
         Each part is in one of its two lists.
     """
-    found = [_judged(position.position, part, series) for part in catalog.parts]
-    ranked = [one for one in found if isinstance(one, Ranked)]
-    excluded = tuple(one for one in found if isinstance(one, Excluded))
-    return Shortlist(position, series, tuple(sorted(ranked, key=lambda one: one.worst_k)), excluded)
+    place, parts = position.position, catalog.parts
+    ranked, excluded = [], []
+    for part, found in zip(parts, shared_out(partial(_judgements, place, series), parts), strict=True):
+        if isinstance(found, _Found):
+            margin_k = place.limit_k - found.worst_k
+            ranked.append(Ranked(part, found.fixed_ohm, found.worst_k, margin_k, found.meets, found.missing))
+        else:
+            excluded.append(Excluded(part, found))
+    ranked.sort(key=lambda one: one.worst_k)
+    return Shortlist(position, series, tuple(ranked), tuple(excluded))
 
 
-def _judged(position: Position, part: PartRecord, series: Series) -> Ranked | Excluded:
-    reasons = tuple(requirement_reasons(position, part.part))
+@dataclass(frozen=True)
+class _Found:
+    """What is found of a part that can be fitted; light, since another process may hand it over."""
+
+    fixed_ohm: float
+    worst_k: float
+    meets: bool | None
+    missing: tuple[str, ...]
+
+
+def _judgements(place: Position, series: Series, parts: Sequence[PartRecord]) -> list[_Found | tuple[str, ...]]:
+    return [_judged(place, part, series) for part in parts]
+
+
+def _judged(place: Position, part: PartRecord, series: Series) -> _Found | tuple[str, ...]:
+    """What is found, or every reason why the part is out."""
+    reasons = tuple(requirement_reasons(place, part.part))
     against = tuple(reason.message for reason in reasons if reason.against)
     if against:
-        return Excluded(part, against)
+        return against
     fitted = thermistor(part)
     try:
-        fixed_ohm, worst_k = best_value(position, fitted, fitted.made, series)
+        fixed_ohm, worst_k = best_value(place, fitted, fitted.made, series)
     except ValueError as unusable:
-        return Excluded(part, (str(unusable),))
+        return (str(unusable),)
     if math.isinf(worst_k):
-        over = range_text(position.range_c)
-        return Excluded(part, (f"with no resistor of {series} every board has a reading over {over}",))
-    chain = Chain(position, fitted, fitted.made.curve, fixed_ohm)
-    known = gaps(chain, whole_steps_c(position.range_c, CLOSE_K))
+        return (f"with no resistor of {series} every board has a reading over {range_text(place.range_c)}",)
+    chain = Chain(place, fitted, fitted.made.curve, fixed_ohm)
+    known = gaps(chain, whole_steps_c(place.range_c, CLOSE_K))
     asked = tuple(field for reason in reasons for field in reason.missing)
-    meets = known.verdict(worst_k <= position.limit_k)
-    return Ranked(
-        part,
-        fixed_ohm,
-        worst_k,
-        position.limit_k - worst_k,
-        None if asked and meets else meets,
-        (*known.fields, *asked),
-    )
+    meets = known.verdict(worst_k <= place.limit_k)
+    return _Found(fixed_ohm, worst_k, None if asked and meets else meets, (*known.fields, *asked))

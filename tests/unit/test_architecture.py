@@ -32,7 +32,7 @@ MAY_IMPORT: dict[str, set[str]] = {
     "circuit": _ON_CURVES | {"records", "part_curve"},
     "crosschecks": _ON_PARTS | {"fits", "misprints", "ledger", "processes", "kept"},
     "ledger": {"units", "problems", "records"},
-    "decisions": _ON_CHECKS | {"ledger"},
+    "decisions": _ON_CHECKS | {"ledger", "processes"},
     "bills": {"units", "problems", "records", "ledger", "decisions"},
     "questions": _ON_CHECKS | {"intake"},
     "history": _ON_CHECKS | {"ledger", "decisions", "processes"},
