@@ -10,6 +10,7 @@ from pathlib import Path
 import click
 import pytest
 import yaml
+from click.testing import CliRunner
 
 from builder.cli import main
 
@@ -67,3 +68,18 @@ def test_continuous_integration_runs_the_readme_s_own_test_command() -> None:
 def test_the_command_lines_of_the_readme_are_those_of_the_program() -> None:
     named = set(re.findall(r"(?:^|[\s`/])beadroll ([a-z]+)\b", README))
     assert named and named <= set(main.list_commands(click.Context(main)))
+
+
+SHOWN = re.findall(
+    r"`\.venv/bin/beadroll ((?:compare|swap) [^`]*)`[^\n]*\n\n```text\n(.*?)```", README, flags=re.DOTALL
+)
+
+
+@pytest.mark.parametrize(("command", "shown"), SHOWN, ids=[command for command, _ in SHOWN])
+def test_what_the_readme_shows_is_what_the_command_answers(command: str, shown: str) -> None:
+    answered = CliRunner().invoke(main, [*command.split(), "--records", str(ROOT / "parts")])
+    assert answered.output.startswith(shown)
+
+
+def test_the_readme_shows_answers_of_compare_and_swap() -> None:
+    assert [command.split()[0] for command, _ in SHOWN] == ["compare", "swap"]
