@@ -14,7 +14,8 @@ window.beadroll = window.beadroll || {};
   const STEPS_K = [1000, 10, 2.5, 1, 0.5];
   const JUST_BEHIND_K = 1e-7;
   const NEAR_K = 1e-6; // a span's end is still within it
-  const ARRIVED_K = 1e-6, NEWTON_STEPS = 12, BISECTIONS = 40;
+  const ARRIVED_K = 1e-4, INVERTED_K = 1e-3; // the last step of Newton's method; it is then nearer by its square
+  const NEWTON_STEPS = 12, BISECTIONS = 40;
   const CLOSE_K = 0.5; // the worst case is looked for at these steps, as in circuit/budget.py
   const REFERENCE_C = 25; // where a resistor has its stated value
   const QUANTISATION_LSB = 0.5;
@@ -25,8 +26,8 @@ window.beadroll = window.beadroll || {};
   const MOST_FIRST = 5;
   const SPARSE = 3, HIGH_RATIO = 0.9, HIGH_K = 0.02; // 1.5 K falls into step with few tables
   const UNEVEN_STEP_K = 4; // in finer tables an error is uneven from one half degree to the next
-  const LITTLE_K = 0.05, COUNTS_K = 0.0005;
-  const WARM_K = 1; // from where on the resistors' tolerances may push a reading both ways
+  const LITTLE_K = 0.4, COUNTS_K = 0.0005;
+  const WARM_K = 4; // from where on the resistors' tolerances may push a reading both ways
 
   /* ---- Curves ---- */
 
@@ -173,12 +174,19 @@ window.beadroll = window.beadroll || {};
       this.slopeK = 0; // d ln R / d(1/T) where ln R was asked for last
     }
 
-    /* ln R at its lowest (0), nominal (1) or highest (2), in Ω. */
-    lnR(tC, edge) {
+    piece(tC) {
       const { pieces } = this, last = pieces.length - 1;
       let p = 0;
       while (p < last && tC >= pieces[p].behindC) p += 1;
-      const { nominal, edges } = pieces[p], lnR = nominal.at(tC);
+      return pieces[p];
+    }
+
+    /* How far it is to the next step or corner. */
+    roomK(tC) { return this.piece(tC).behindC - tC; }
+
+    /* ln R at its lowest (0), nominal (1) or highest (2), in Ω. */
+    lnR(tC, edge) {
+      const { nominal, edges } = this.piece(tC), lnR = nominal.at(tC);
       this.slopeK = nominal.slopeK;
       if (edge === 1) return lnR;
       const beside = edges[edge >> 1], off = beside.at(tC);
@@ -198,7 +206,7 @@ window.beadroll = window.beadroll || {};
         const miss = this.lnR(tC, 1) - lnR, xPerK = 1 / (tC - ZERO_C) - miss / this.slopeK;
         if (!(xPerK > 0)) return NaN;
         const next = 1 / xPerK + ZERO_C;
-        if (Math.abs(next - tC) < ARRIVED_K) return this.isKnown(next) ? next : NaN;
+        if (Math.abs(next - tC) < INVERTED_K) return this.isKnown(next) ? next : NaN;
         tC = next;
       }
       return NaN;
@@ -229,7 +237,8 @@ window.beadroll = window.beadroll || {};
 
   /* ---- The circuit as built: the divider, what warms the thermistor, the converter ---- */
 
-  const TIMES = [-1, 1], ONCE = { [-1]: [-1], 1: [1] };
+  const TIMES = [-1, 1];
+  const farther = (way, a, b) => (way > 0 ? Math.max(a, b) : Math.min(a, b));
   const share = (pct) => (pct ?? 0) / 100;
 
   /* Limits of a position, as circuit/sources.py has them; a figure that is not stated is nothing here. */
@@ -294,6 +303,7 @@ window.beadroll = window.beadroll || {};
       this.kPerW = part.dissipationMwPerK === null ? 0 : 1e3 / part.dissipationMwPerK;
       this.rOhm = columns(); // at the true temperatures: lowest, nominal, highest
       this.perK = columns(); // −d ln R/dT there
+      this.littleK = new Float64Array(count); // as far as that slope is to be followed
       this.isKnown = new Uint8Array(count);
       this.rowOhm = chain.rowC?.map((tC) => Math.exp(part.curve.lnR(tC, 1)));
       this.rowCode = chain.rowC && new Float64Array(chain.rowC.length);
@@ -308,6 +318,7 @@ window.beadroll = window.beadroll || {};
         this.rOhm[edge][j] = this.curve.resistance(tC, edge);
         this.perK[edge][j] = this.curve.slopeK / (tC - ZERO_C) ** 2;
       }
+      this.littleK[j] = Math.min(LITTLE_K, this.curve.roomK(tC));
       this.isKnown[j] = 1;
     }
 
@@ -360,8 +371,8 @@ window.beadroll = window.beadroll || {};
       if (this.kPerW === 0) return rOhm;
       const perK = this.perK[edge][j], warmingK = this.warmingK(rOhm), slope = this.balance(rOhm, warmingK, perK);
       const firstK = warmingK / slope;
-      if (!(firstK >= 0 && firstK < LITTLE_K)) return this.hotOhm(this.chain.tC[j], edge);
-      const firstOhm = rOhm * Math.exp(-perK * firstK);
+      if (!(firstK >= 0 && firstK < this.littleK[j])) return this.hotOhm(this.chain.tC[j], edge);
+      const tK = this.chain.tC[j] - ZERO_C, firstOhm = rOhm * Math.exp(-perK * firstK * tK / (tK + firstK));
       return firstOhm * (1 + perK * (firstK - this.warmingK(firstOhm)) / slope);
     }
 
@@ -396,34 +407,43 @@ window.beadroll = window.beadroll || {};
 
     /* The code of the board that reads highest (way 1) or lowest (way −1); not a number where it is at an end. */
     extremeCode(j, way, nominalOhm, warmingK) {
-      const { chain } = this, { limits } = chain, toCode = way * chain.codeSign, edge = way > 0 ? 0 : 2;
-      const bothWays = warmingK > WARM_K;
-      const fixeds = bothWays ? TIMES : ONCE[way], parallels = bothWays && limits.parallel ? TIMES : ONCE[-way];
-      const supplies = bothWays ? TIMES : this.supplies(j, way, nominalOhm, warmingK);
-      let extreme = -toCode * Infinity;
-      for (const fixed of fixeds) {
-        for (const parallel of parallels) {
-          for (const supply of supplies) {
-            this.set(fixed, parallel, supply, toCode);
-            const referenceV = chain.isRatiometric ? this.supplyV : chain.referenceV * (1 - toCode * limits.reference);
-            const code = this.junctionV(this.bodyOhm(j, edge)) / referenceV * chain.fullScale
-              * (1 + toCode * limits.gain) + toCode * limits.errorLsb;
-            extreme = toCode > 0 ? Math.max(extreme, code) : Math.min(extreme, code);
-          }
-        }
-      }
-      return extreme > 0 && extreme < chain.topCode ? extreme : NaN;
+      const { chain } = this, toCode = way * chain.codeSign;
+      const supply = this.supplySide(j, way, nominalOhm, warmingK);
+      let code;
+      if (warmingK > WARM_K) code = this.warmCode(j, way, toCode);
+      else if (supply) code = this.code(j, way, way, -way, supply);
+      else code = farther(toCode, this.code(j, way, way, -way, 1), this.code(j, way, way, -way, -1));
+      return code > 0 && code < chain.topCode ? code : NaN;
     }
 
-    /* Where the supply stands. Of a ratiometric reading a low one weighs the leakage more and warms the sensor less: both
-       lower the lowest reading, but of the highest one it is this against that, and both are tried where both count. */
-    supplies(j, way, nominalOhm, warmingK) {
+    warmCode(j, way, toCode) {
+      let code = -toCode * Infinity;
+      for (const fixed of TIMES) {
+        for (const parallel of TIMES) {
+          for (const supply of TIMES) code = farther(toCode, code, this.code(j, way, fixed, parallel, supply));
+        }
+      }
+      return code;
+    }
+
+    /* The code of one board; the thermistor and the converter push the reading one way. */
+    code(j, way, fixed, parallel, supply) {
+      const { chain } = this, { limits } = chain, toCode = way * chain.codeSign;
+      this.set(fixed, parallel, supply, toCode);
+      const referenceV = chain.isRatiometric ? this.supplyV : chain.referenceV * (1 - toCode * limits.reference);
+      const share = this.junctionV(this.bodyOhm(j, way > 0 ? 0 : 2)) / referenceV;
+      return share * chain.fullScale * (1 + toCode * limits.gain) + toCode * limits.errorLsb;
+    }
+
+    /* Where the supply stands: 1, −1, or 0 where either may be. Of a ratiometric reading a low one weighs the leakage more
+       and warms the sensor less: both lower the lowest reading, but of the highest one it is this against that. */
+    supplySide(j, way, nominalOhm, warmingK) {
       const { chain, fixedOhm } = this, { supply, leakageA } = chain.limits;
-      if (!chain.isRatiometric) return ONCE[way * chain.codeSign];
-      if (way < 0) return ONCE[-1];
+      if (!chain.isRatiometric) return way * chain.codeSign;
+      if (way < 0) return -1;
       const leakageK = leakageA * (nominalOhm + fixedOhm) / chain.place.supplyV / this.perK[1][j];
-      if (supply * Math.min(2 * warmingK, leakageK) > COUNTS_K) return TIMES;
-      return ONCE[2 * warmingK > leakageK ? 1 : -1];
+      if (supply * Math.min(2 * warmingK, leakageK) > COUNTS_K) return 0;
+      return 2 * warmingK > leakageK ? 1 : -1;
     }
 
     /* How far off the worst board is; infinite where some board has no reading. */

@@ -5,7 +5,7 @@
      shortlist.html#range_from_c=-30&limit_k=1.6&method=curve&qualification=UL+1434&take=TB3A-103F38 */
 window.beadroll = window.beadroll || {};
 (() => {
-  const FIRST_SLICE_MS = 18, SLICE_MS = 12, DRAW_EVERY_MS = 250;
+  const FIRST_SLICE_MS = 14, SLICE_MS = 12, DRAW_EVERY_MS = 250;
   const FACTORS = { R: 1, K: 1e3, M: 1e6 };
   const OHMS = ["parallel_ohm", "wire_ohm"];
   const MOST_BITS = 32;
@@ -92,7 +92,6 @@ window.beadroll = window.beadroll || {};
       thermistor: values.thermistor,
       rangeC: [values.range_from_c, values.range_to_c],
       ambientC: values.ambient_from_c === null ? null : [values.ambient_from_c, values.ambient_to_c],
-      limitK: values.limit_k,
       supplyV: values.supply_v,
       supplyTolerancePct: values.supply_tolerance_pct,
       fixedTolerancePct: values.fixed_tolerance_pct,
@@ -139,7 +138,7 @@ window.beadroll = window.beadroll || {};
         qualification: qualifications[qualification],
         onlyFor: onlyFor[places],
         order: pct ?? Infinity, // which parts to rank first, until it is known better
-        fixedOhm: NaN,
+        best: { fixedOhm: NaN },
       };
     });
   }
@@ -147,6 +146,13 @@ window.beadroll = window.beadroll || {};
   /* ---- What a position asks of a part by its record, as decisions/requirements.py words it ---- */
 
   const sameText = (a, b) => a.toLowerCase() === b.toLowerCase();
+  const isGrade = (text) => /^aec-q200 grade [0-4]$/.test(text);
+
+  /* A grade of AEC-Q200 holds the range of the next ones. */
+  function covers(stated, asked) {
+    const [has, wanted] = [stated.toLowerCase(), asked.toLowerCase()];
+    return has === wanted || (isGrade(has) && isGrade(wanted) && has < wanted);
+  }
 
   function* against(part, values) {
     const { size_code: footprint, range_from_c: low, range_to_c: high, time_constant_max_s: slowest } = values;
@@ -158,7 +164,7 @@ window.beadroll = window.beadroll || {};
       if (high > hottest) yield `operates to ${degrees(hottest)}, the range reaches ${degrees(high)}`;
     }
     for (const asked of values.qualification) {
-      if (part.qualification.some((stated) => sameText(stated, asked))) continue;
+      if (part.qualification.some((stated) => covers(stated, asked))) continue;
       yield `${asked} is required, it has ${part.qualification.join(", ") || "none"}`;
     }
     if (slowest !== null && part.timeConstantS > slowest) {
@@ -219,6 +225,7 @@ window.beadroll = window.beadroll || {};
     constructor(parts, values, { progress, done }) {
       Object.assign(this, { values, progress, done, gaps: gapsOf(values), ranked: [], out: [] });
       this.chain = beadroll.chain(placeFrom(values));
+      this.circuit = JSON.stringify(placeFrom(values)); // what a part's best resistor hangs on
       this.waiting = [];
       for (const part of parts) {
         const because = [...against(part, values)];
@@ -246,13 +253,20 @@ window.beadroll = window.beadroll || {};
 
     judge(part) {
       const { values, chain } = this;
-      const curve = beadroll.unpackedCurve(part.text, part.isExtended);
-      const { fixedOhm, worstK, atC } = chain.best({ curve, dissipationMwPerK: part.dissipationMwPerK }, part.fixedOhm);
-      if (Number.isNaN(worstK)) return this.out.push({ part, because: [this.unread(curve)] });
-      part.order = worstK;
-      part.fixedOhm = fixedOhm;
+      if (part.circuit !== this.circuit) this.rank(part);
+      const { fixedOhm, worstK, atC, unread } = part.best;
+      if (unread) return this.out.push({ part, because: [unread] });
       const found = { part, fixedOhm, worstK, atC, marginK: values.limit_k - worstK };
       return this.ranked.push({ ...found, ...verdict(part, worstK, values, this.gaps, chain.tC) });
+    }
+
+    /* The best resistor of the circuit before is where to look first. */
+    rank(part) {
+      const curve = beadroll.unpackedCurve(part.text, part.isExtended), { dissipationMwPerK } = part;
+      const best = this.chain.best({ curve, dissipationMwPerK }, part.best.fixedOhm);
+      part.circuit = this.circuit;
+      part.best = Number.isNaN(best.worstK) ? { fixedOhm: NaN, unread: this.unread(curve) } : best;
+      if (best.worstK >= 0) part.order = best.worstK;
     }
 
     unread(curve) {

@@ -57,7 +57,7 @@ def written(context: Context, folder: Path) -> Path:
     styles = "".join(f'<link rel="stylesheet" href="assets/{f.name}">' for f in sorted(assets.glob("*.css")))
     names = sorted(f.name for f in assets.glob("*.js") if f.name != "search.js")
     scripts = "".join(f'<script src="assets/{name}"></script>' for name in names)
-    files = (shortlist_data(context), parts_data(context.catalog, context.checked.curves, context.paths))
+    files = (shortlist_data(context), parts_data(context))
     for file in files:
         (folder / file.path).parent.mkdir(parents=True, exist_ok=True)
         (folder / file.path).write_text(file.content(), "utf-8")
