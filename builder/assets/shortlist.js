@@ -2,7 +2,8 @@
 
    The address holds every field of the form that is not as at first, by its name, with `find` (what the lists are
    searched for) and `take` (the part for the record):
-     shortlist.html#range_from_c=-30&limit_k=1.6&method=curve&qualification=UL+1434&take=TB3A-103F38 */
+     shortlist.html#range_from_c=-30&limit_k=1.6&method=curve&qualification=UL+1434&take=TB3A-103F38
+   With `start` alone, a position's name, it begins with that position's circuit. */
 window.beadroll = window.beadroll || {};
 (() => {
   const FIRST_SLICE_MS = 14, SLICE_MS = 12, DRAW_EVERY_MS = 250;
@@ -478,6 +479,8 @@ window.beadroll = window.beadroll || {};
     function restore() {
       const params = new URLSearchParams(location.hash.slice(1));
       fill((field, isTick) => (isTick ? params.getAll(field.name) : params.get(field.name) ?? firstValue(field)));
+      // A link may say no more than where to start from.
+      if ([...params.keys()].every((key) => !form.elements[key] || key === "start")) startFrom(params.get("start"));
       search.value = params.get("find") ?? "";
       state.take = params.get("take");
       state.lastField = null;

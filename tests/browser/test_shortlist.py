@@ -405,6 +405,13 @@ def test_a_position_is_started_from_and_its_record_comes_back(
     assert back.adc == position.adc.model_copy(update={"full_scale": position.adc.full_scale or 2**position.adc.bits})
 
 
+def test_a_link_that_names_only_the_start_fills_the_form(opened: Opened) -> None:
+    chosen, linked = opened(), opened("#start=dock-pack/RT1")
+    chosen.choose("start", "dock-pack/RT1")
+    assert linked.page.locator("[name=supply_v]").input_value() == "2.5"
+    assert linked.ranked() == chosen.ranked() and linked.said() == chosen.said()
+
+
 def test_firmware_that_the_page_does_not_know_is_said_with_the_command(opened: Opened) -> None:
     short = opened()
     short.choose("start", "charger-power/RT1")
