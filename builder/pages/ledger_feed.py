@@ -14,7 +14,8 @@ from builder.pages.page import DataFile
 _NEWEST = 100
 _NO_ENTRY = "1970-01-01"
 # For the head of the Ledger page, where readers of feeds look for it.
-FEED_LINK = f'<link rel="alternate" type="application/atom+xml" title="Ledger" href="{FEED}">'
+# Material takes every link whose rel is just "alternate" for a translation, and fetches a sitemap for it.
+FEED_LINK = f'<link rel="alternate feed" type="application/atom+xml" title="Ledger" href="{FEED}">'
 
 
 def ledger_feed(context: Context, site_url: str) -> DataFile:

@@ -231,7 +231,7 @@ def _differences(swap: Swap, context: Context) -> Html:
         (name, old, tag("b", new) if old != new else new, "differs" if old != new else "")
         for name, old, new in zip(FACT_NAMES, fitted, alternate, strict=True)
     ]
-    headings = ("", swap.fitted.part.part, swap.alternate.part.part, "")
+    headings = ("fact", swap.fitted.part.part, swap.alternate.part.part, "beside the fitted part")
     return table(headings, rows, caption="What the records state of the fitted part and of the alternate")
 
 
