@@ -44,12 +44,15 @@ def ledger_sources(context: Context) -> tuple[str, ...]:
     """Every entry and where its part and position stand, for the `made_from` of what shows them; reads no record anew."""
     paths = context.paths
     parts = [
-        (context.of_record("standings", part, partial(_told, part)), part.name, part.own_number, paths.part(part))
+        (
+            context.of_record("standings", part, partial(_told, part)),
+            (part.maker, part.number, part.own_number),
+            paths.part(part),
+        )
         for part in context.catalog.parts
     ]
     places = [
-        (place.position.fitted, place.position.board, place.position.alternates, paths.position(place))
-        for place in context.catalog.positions
+        (context.digest(place), place.position.board, place.position.alternates) for place in context.catalog.positions
     ]
     return (str(context.today), *map(repr, parts), *map(repr, places))
 

@@ -8,8 +8,11 @@ from __future__ import annotations
 
 import argparse
 import datetime
+import gzip
+import json
 import os
 import platform
+import re
 import shutil
 import subprocess
 import sys
@@ -25,7 +28,10 @@ import yaml
 HERE = Path(__file__).resolve().parent
 PROJECT = HERE.parents[1]
 PACKAGES = ("mkdocs", "mkdocs-material", "numpy", "pyyaml", "matplotlib", "pydantic")
-WHAT = ("reference", "build", "check", "curves")
+WHAT = ("reference", "build", "check", "curves", "browser")
+SPEED_PAGE = PROJECT / "docs" / "speed.md"
+WRITTEN_SIZES = [100, 1000, 4000, 10000]
+LOCAL_FILES = re.compile(r'(?:src|href)="(?!https?:|data:|#)([^"#?]+\.(?:js|css))"')
 MEBIBYTE = 2**20
 # ru_maxrss counts kibibytes on Linux, bytes on macOS.
 MAXRSS_UNIT_BYTES = 1 if sys.platform == "darwin" else 1024
@@ -49,12 +55,17 @@ class Run:
     folder: Path
     command: Sequence[str]
     prepare: Callable[[Path], None]
+    tells_cost: bool = False  # the process does more than is to be measured, and tells what that took
     costs: list[Cost] = field(default_factory=list)
 
     def measure(self) -> None:
         """Run once more."""
         self.prepare(self.folder)
-        self.costs.append(measured(self.command, self.folder))
+        cost = measured(self.command, self.folder)
+        if self.tells_cost:
+            wall_s, cpu_s = map(float, (self.folder / "log.txt").read_text("utf-8").split()[-2:])
+            cost = Cost(wall_s, cpu_s, cost.peak_mib)
+        self.costs.append(cost)
 
     @property
     def cost(self) -> Cost:
@@ -81,11 +92,19 @@ def measured(command: Sequence[str], folder: Path) -> Cost:
 
 
 BUILD = (sys.executable, "-m", "mkdocs", "build", "--quiet")
-CHECK = (str(Path(sys.executable).with_name("beadroll")), "check", "--records", "parts")
+SERVE = (sys.executable, str(HERE / "serve_edit.py"))
+BEADROLL = str(Path(sys.executable).with_name("beadroll"))
+CHECK = (BEADROLL, "check")
+
+
+def forget(folder: Path) -> None:
+    """Nothing is kept from an earlier run."""
+    shutil.rmtree(folder / ".beadroll-cache", ignore_errors=True)
 
 
 def remove_site(folder: Path) -> None:
     """A full build starts from nothing."""
+    forget(folder)
     shutil.rmtree(folder / "site", ignore_errors=True)
 
 
@@ -97,6 +116,13 @@ def edit_record(folder: Path) -> None:
 
 def leave(folder: Path) -> None:
     """Nothing to prepare."""
+
+
+def script_text(script: str) -> str:
+    """What one of the scripts beside this one prints."""
+    return subprocess.run(
+        [sys.executable, str(HERE / script)], check=True, stdout=subprocess.PIPE, text=True
+    ).stdout.strip()
 
 
 def run_script(script: str, *arguments: object) -> None:
@@ -126,10 +152,21 @@ def made_runs(chosen: argparse.Namespace) -> Iterator[Run]:
         run_script("make_catalog.py", *options, folder / "parts")
         write_config(folder, figures=chosen.figures == "yes")
         if "check" in chosen.only:
-            yield Run("check", parts, folder, CHECK, leave)
+            yield from command_runs(parts, folder)
         if "build" in chosen.only:
             yield Run("build", parts, folder, BUILD, remove_site)
             yield Run("one record edited", parts, folder, BUILD, edit_record)
+            yield Run("one record edited, serving", parts, folder, SERVE, leave, tells_cost=True)
+
+
+def command_runs(parts: int, folder: Path) -> Iterator[Run]:
+    """`check` of records never seen before, then commands on records that are as they were."""
+    yield Run("check", parts, folder, CHECK, forget)
+    yield Run("check, unchanged", parts, folder, CHECK, leave)
+    one, other = (path.stem for path in sorted((folder / "parts").glob("*/*.csv"))[:2])
+    commands = {"curve": (one,), "compare": (one, other), "swap": ("bench-000/RT1", other)}
+    for name, arguments in commands.items():
+        yield Run(f"{name}, unchanged", parts, folder, (BEADROLL, name, *arguments), leave)
 
 
 def table(header: Sequence[str], rows: Sequence[Sequence[str]]) -> str:
@@ -192,6 +229,34 @@ def sites_table(runs: Sequence[Run]) -> str:
     return table(("site", "parts or pages", "files", "size, MiB", "each, KiB", "search index, KiB"), rows)
 
 
+def views_table(runs: Sequence[Run]) -> str:
+    """What a browser loads for the first view of the pages that hold the whole catalog."""
+    rows = []
+    for run in (run for run in runs if run.name == "build"):
+        for page in ("parts/index.html", "side-by-side.html", "shortlist.html"):
+            html = run.folder / "site" / page
+            loaded = {html, *(html.parent / name for name in LOCAL_FILES.findall(html.read_text("utf-8")))}
+            contents = [path.read_bytes() for path in loaded if path.is_file()]
+            plain = sum(map(len, contents)) / 1024
+            packed = sum(len(gzip.compress(content, 6)) for content in contents) / 1024
+            rows.append((page, f"{run.parts}", f"{len(contents)}", f"{plain:.0f}", f"{packed:.0f}"))
+    return table(("page, with its scripts and styles", "parts", "files", "KiB", "KiB compressed"), rows)
+
+
+def keystrokes_table(runs: Sequence[Run]) -> str:
+    """How long the list of parts takes to answer a keystroke in Chromium."""
+    rows = []
+    for run in (run for run in runs if run.name == "build"):
+        done = subprocess.run(
+            [sys.executable, str(HERE / "keystrokes.py"), str(run.folder / "site")], capture_output=True, text=True
+        )
+        if done.returncode:
+            sys.exit(f"keystrokes.py failed:\n{done.stderr[-2000:]}")
+        told = json.loads(done.stdout)
+        rows.append((f"{run.parts}", *(f"{told[name]:.0f}" for name in ("ready_ms", "median_ms", "longest_ms"))))
+    return table(("parts", "Parts page ready, ms", "keystroke, median, ms", "keystroke, longest, ms"), rows)
+
+
 def processor() -> str:
     """The processor's name, where the system tells it."""
     info = Path("/proc/cpuinfo")
@@ -218,8 +283,8 @@ def say(message: str) -> None:
     print(message, file=sys.stderr, flush=True)
 
 
-def bench(chosen: argparse.Namespace) -> None:
-    """Make, run in turn, report."""
+def bench(chosen: argparse.Namespace) -> Iterator[str]:
+    """Make, run in turn, report: the pieces of the report as they are known."""
     load = os.getloadavg()[0]
     say("Making the records and pages")
     runs = list(made_runs(chosen))
@@ -231,19 +296,48 @@ def bench(chosen: argparse.Namespace) -> None:
                 f"Round {number} of {chosen.repeat}, {run.name}, {run.parts}: "
                 f"wall {cost.wall_s:.2f} s, CPU {cost.cpu_s:.2f} s, peak {cost.peak_mib:.0f} MiB"
             )
-    print(heading(chosen, load), flush=True)
+    yield heading(chosen, load)
     if runs:
-        print(f"\n{times_table(runs)}", flush=True)
+        yield times_table(runs)
     if any(run.name in ("reference", "build") for run in runs):
-        print(f"\n{sites_table(runs)}", flush=True)
+        yield sites_table(runs)
+    if "browser" in chosen.only and any(run.name == "build" for run in runs):
+        yield views_table(runs)
+        yield keystrokes_table(runs)
     if "curves" in chosen.only:
-        print(flush=True)
-        run_script("curve_speed.py")
+        yield script_text("curve_speed.py")
+
+
+def reported(chosen: argparse.Namespace) -> None:
+    """Print the report, and write the page of it where that is asked for."""
+    pieces = []
+    for piece in bench(chosen):
+        print(f"{piece}\n", flush=True)
+        pieces.append(piece)
+    if chosen.write:
+        SPEED_PAGE.write_text(SPEED_TEXT.format(report="\n\n".join(pieces)), "utf-8")
+
+
+SPEED_TEXT = """\
+---
+title: Speed
+description: What builds, checks and commands took when they were last measured, beside a reference on the same machine.
+---
+
+# Speed
+
+Times drift with the machine, so they are told beside a reference that was run in turn with them: MkDocs and Material
+alone, building as many Markdown pages with tables of the same size. `tests/bench/README.md` in the repository says what
+each run and each figure is; `python tests/bench/run.py --write` makes this page.
+
+{report}
+"""
 
 
 def main() -> None:
     parser = argparse.ArgumentParser(description=__doc__)
-    parser.add_argument("--sizes", type=int, nargs="+", default=[100, 1000, 4000], help="parts of the catalogs")
+    parser.add_argument("--sizes", type=int, nargs="+", help="parts of the catalogs; default 100 1000 4000")
+    parser.add_argument("--write", action="store_true", help="write docs/speed.md too; then 10000 parts as well")
     parser.add_argument("--reference", type=int, default=1000, metavar="PAGES", help="pages of the reference")
     parser.add_argument("--only", nargs="+", choices=WHAT, default=WHAT, help="what to measure")
     parser.add_argument("--repeat", type=int, default=1, metavar="ROUNDS", help="rounds; the shortest times count")
@@ -252,13 +346,14 @@ def main() -> None:
     parser.add_argument("--positions", type=int, default=20)
     parser.add_argument("--work", type=Path, help="an empty folder to work in and keep; default one that is removed")
     chosen = parser.parse_args()
+    chosen.sizes = chosen.sizes or (WRITTEN_SIZES if chosen.write else WRITTEN_SIZES[:-1])
     if chosen.work:
         chosen.work = chosen.work.resolve()
-        bench(chosen)
+        reported(chosen)
     else:
         with tempfile.TemporaryDirectory(prefix="beadroll-bench-") as folder:
             chosen.work = Path(folder)
-            bench(chosen)
+            reported(chosen)
 
 
 if __name__ == "__main__":
