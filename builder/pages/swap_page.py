@@ -274,7 +274,7 @@ def _sign(swap: Swap) -> Html:
     caption = f"{swap.alternate.part.part} at {swap.position.position.position}: {swap.verdict}"
     blank = tag("span")  # a column without anything would be left out
     lines = table(
-        ("", "name", "day", "signature"), [(role, blank, blank, blank) for role in _SIGNED_BY], caption=caption
+        ("role", "name", "day", "signature"), [(role, blank, blank, blank) for role in _SIGNED_BY], caption=caption
     )
     entry = "- {state: approved, on: 2026-01-31, by: …, because: …, document: {title: …, revision: …}}"
     paste = joined(
