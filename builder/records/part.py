@@ -7,6 +7,7 @@ from typing import Annotated, Literal, get_args
 
 from pydantic import Field, model_validator
 
+from builder.problems import clipped
 from builder.records.quantities import (
     BKelvin,
     Celsius,
@@ -259,6 +260,17 @@ class Part(RecordModel):
                 pair = "/".join(map(number_text, b.between_c))
                 cure = "Compare them with the data sheet, and leave one."
                 raise refusal("repeated-b-value", f"{values} are both stated for {pair} °C. {cure}", "b_values")
+        return self
+
+    @model_validator(mode="after")
+    def _names_each_document_once(self) -> Part:
+        seen = set()
+        for document in self.documents:
+            name = DocumentRevision(title=document.title, revision=document.revision)
+            if str(name).casefold() in seen:
+                cure = "Give the newer one its own revision, or leave one."
+                raise refusal("repeated-document", f"{clipped(str(name))} stands twice. {cure}", "documents")
+            seen.add(str(name).casefold())
         return self
 
     def b_values_at_rated(self) -> tuple[BValue, ...]:

@@ -183,6 +183,14 @@ SHAPES = {
     "one B-value twice": told_of(
         part("tolerance_pct: 1}\nlimits", "tolerance_pct: 1}\n  - {between_c: [85, 25], b_k: 3435}\nlimits"),
     ),
+    "one revision of a document twice": told_of(
+        part('revision: C, dated: 2025-03-11, link: "https://example.com/tb3a.pdf"}', "revision: C}\n  - {title: Data sheet, revision: c}"),
+        "9: documents: Data sheet, revision c stands twice. Give the newer one its own revision, or leave one.",
+    ),
+    "a document without revision twice": told_of(
+        part(', revision: C, dated: 2025-03-11, link: "https://example.com/tb3a.pdf"}', "}\n  - {title: data sheet, dated: 2026-01-07}"),
+        "9: documents: data sheet stands twice. Give the newer one its own revision, or leave one.",
+    ),
     "below absolute zero": pair(
         "[-300, 25]", "[0]: −300 °C is outside −273.14 to 1000 °C. Check the decimal point and the unit."
     ),
