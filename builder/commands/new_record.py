@@ -106,7 +106,9 @@ def _ask(question: str) -> str:
     click.echo(f"{question}: ", nl=False)
     try:
         line = sys.stdin.readline()
-    except UnicodeDecodeError:
+        # Where the locale is C, bytes that are not UTF-8 come as text that cannot be written.
+        line.encode()
+    except UnicodeError:
         stop("\nThe answers are not UTF-8. Save them as UTF-8. Nothing was written.", 2)
     if not line:
         raise click.Abort

@@ -121,7 +121,7 @@ class Interview:
             missing = not may_skip and any(
                 where == path for where, rule, _ in self._faults() if rule == "missing-field"
             )
-            enter = f"Enter for {known}." if known else "" if missing else _skips(path)
+            enter = f"Enter for {known}." if known else "" if missing else _skips(path, may_skip)
             answer = self._ask(f"{_question(field, allowed, path)} {enter}".strip() + f"\n{field_name(path)}").strip()
             if not answer and not known and not missing:
                 return False
@@ -186,10 +186,10 @@ def _on_one_line(where: Path, path: Path) -> bool:
     return all(a == b for a, b in zip(where, path, strict=False))
 
 
-def _skips(path: Path) -> str:
-    """What Enter does at an optional field; at the beginning of a list's later item it ends the list."""
+def _skips(path: Path, begins: bool) -> str:
+    """What Enter does at an optional field; where a list's later item begins it ends the list."""
     places = [step for step in path[-2:] if isinstance(step, int)]
-    return "Enter ends the list." if places and places[0] > 0 else "Enter skips."
+    return "Enter ends the list." if begins and places and places[0] > 0 else "Enter skips."
 
 
 def _question(field: Any, allowed: list[str], path: Path) -> str:

@@ -10,8 +10,8 @@ from builder.records.quantities import RecordModel
 from builder.records.yaml_text import Path, YamlText, read_yaml
 
 _LONGEST_LINE = 120
-# What other readers of YAML, with the meanings of version 1.1, take for a number, a time or a truth value.
-_BENT = re.compile(r"[-+.]?[0-9][-+0-9_.,:eExXa-fA-F]*|[yYnN]|(?i:yes|no|on|off)")
+# What other readers of YAML, with the meanings of version 1.1, take for a number, a time, a truth value or a sign of theirs.
+_BENT = re.compile(r"[-+.]?[0-9][-+0-9_.,:eExXa-fA-F]*|[yYnN]|(?i:yes|no|on|off)|=|<<")
 _DAY = re.compile("[0-9]{4}-[0-9]{2}-[0-9]{2}")
 
 

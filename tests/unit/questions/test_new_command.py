@@ -4,6 +4,8 @@
 """
 
 import os
+import subprocess
+import sys
 from pathlib import Path
 
 import click
@@ -126,6 +128,43 @@ def test_answers_that_are_not_utf_8_are_refused():
         2,
         "\nThe answers are not UTF-8. Save them as UTF-8. Nothing was written.\n",
     )
+
+
+def test_answers_that_are_not_utf_8_are_refused_in_the_c_locale_too():
+    """There Python takes such bytes for text that it cannot write."""
+    command = [sys.executable, "-c", "from builder.cli import main; main(['new'])"]
+    result = subprocess.run(command, input=b"XN4\nM\xfcller\n", capture_output=True, env=os.environ | {"LC_ALL": "C"})
+    assert (result.returncode, result.stderr.decode()) == (
+        2,
+        "\nThe answers are not UTF-8. Save them as UTF-8. Nothing was written.\n",
+    )
+
+
+def test_enter_ends_a_list_only_where_its_next_item_begins(monkeypatch):
+    answers = SHORT | {"documents[1].title": ["app note"], "qualification[0]": ["AEC-Q200"]}
+    asked = {}
+
+    def ask(question):
+        *_, text, field = question.splitlines()
+        asked.setdefault(field, text)
+        return answers.get(field, [""])[0]
+
+    monkeypatch.setattr("builder.commands.new_record._ask", ask)
+    assert CliRunner().invoke(main, ["new", "--today", "2026-06-01"]).exit_code == 0
+    assert [field for field, text in asked.items() if text.endswith("Enter ends the list.")] == [
+        "b_values[1].between_c",
+        "qualification[1]",
+        "documents[1].title",
+        "documents[2].title",
+    ]
+
+
+def test_a_document_that_is_named_twice_is_told_and_asked_for_again(told):
+    answers = {"documents[1].title": ["data sheet", "data sheet", ""], "documents[1].revision": ["c", "D"]}
+    result = told(SHORT | answers | {"documents[2].title": [""]})
+    said = "documents: data sheet, revision c stands twice. Give the newer one its own revision, or leave one."
+    assert result.exit_code == 0
+    assert result.stdout.splitlines().count(said) == 1
 
 
 def test_a_number_that_the_catalog_has_is_refused_at_once(told):
