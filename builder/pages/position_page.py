@@ -6,6 +6,7 @@ from typing import Any
 
 from builder.ledger import standing_of
 from builder.pages.budget_section import budget_section, codes_section, position_sources, verdict_line
+from builder.pages.cautions import CAUTION
 from builder.pages.context import Context
 from builder.pages.documents_section import rests_on
 from builder.pages.doubts import problem_notice
@@ -40,11 +41,6 @@ _HEADINGS = (
     ("resistor", "Best fixed resistor"),
     ("parts", "Fitted part and alternates"),
     ("requirements", "Requirements"),
-)
-CAUTION = (
-    "Where this reading protects people, a battery or property: a thermistor limit must not be the only protection unless "
-    "the whole circuit is assessed for it, an open or shorted sensor must lead to the safe state, and local codes and "
-    "licensed practice decide."
 )
 
 

@@ -3,10 +3,13 @@
 from __future__ import annotations
 
 import math
+from urllib.parse import quote
 
 from builder.decisions import Series, best_resistor
 from builder.pages.context import Context
-from builder.pages.html import Html, joined, table, tag
+from builder.pages.html import Html, joined, link, table, tag
+from builder.pages.paths import relative
+from builder.pages.shortlist_page import PAGE as SHORTLIST
 from builder.records import PositionRecord
 from builder.units import number_text, resistance_text, temperature_text
 
@@ -34,7 +37,14 @@ def resistor_section(record: PositionRecord, context: Context) -> Html:
     better = "The present resistor with its firmware is better than any of these."
     none_better = all(best.worst_k > budget.worst_k for best in found)
     shown = table(("fixed resistor", "value", "worst case", "at"), rows, caption="The worst case by the fixed resistor")
-    return joined([tag("p", _LEAD), shown, tag("p", better) if none_better else ""])
+    others = link("Every part of the catalog in this circuit", _shortlist_address(record, context))
+    return joined([tag("p", _LEAD), shown, tag("p", better) if none_better else "", tag("p", others)])
+
+
+def _shortlist_address(record: PositionRecord, context: Context) -> str:
+    """The Shortlist page, started from the position."""
+    page = relative(SHORTLIST, context.paths.position(record))
+    return f"{page}#start={quote(record.position.position)}"
 
 
 def _row(name: str, fixed_ohm: float, worst_k: float, at_c: float | None = None) -> tuple[str, ...]:

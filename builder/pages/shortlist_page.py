@@ -6,11 +6,11 @@ from functools import partial
 from typing import Any
 
 from builder.exports.shortlist_script import ShortlistRow, shortlist_row, shortlist_script
+from builder.pages.cautions import CAUTION
 from builder.pages.context import Context
 from builder.pages.html import Html, joined, link, notice, tag
 from builder.pages.page import DataFile, Heading, Page
 from builder.pages.parts_page import DATA as PARTS_DATA
-from builder.pages.position_page import CAUTION
 from builder.pages.shortlist_form import form, start_values
 from builder.records import PartRecord
 

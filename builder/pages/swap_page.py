@@ -11,6 +11,7 @@ from builder.circuit import Budget, TripBudget, firmware_part
 from builder.decisions import Reason, Swap
 from builder.exports.rows import Column, Row, csv_text, rounded
 from builder.ledger.standings import goes_by
+from builder.pages.cautions import CAUTION
 from builder.pages.context import Context
 from builder.pages.figures import Band, Limit, Line, Mark, reads_figure
 from builder.pages.figures.trips import trip_rows, trips_line
@@ -19,7 +20,6 @@ from builder.pages.ledger import ledger_table, standing_badge
 from builder.pages.page import DataFile, Heading, Page
 from builder.pages.part_facts import FACT_NAMES, part_facts
 from builder.pages.paths import relative
-from builder.pages.position_page import CAUTION
 from builder.pages.verdicts import MEANINGS, verdict_badge
 from builder.records import PartRecord, PositionRecord
 from builder.units import number_text, range_text, signed_text, temperature_text

@@ -223,3 +223,7 @@ def test_what_a_record_says_is_escaped_in_figures_too(tmp_path: Path) -> None:
         placed(tmp_path, PART | {"part": LEAST["part"]}, position="b<i>&/RT1", trips=[ALARM | {"name": "<s>"}])
     )
     assert "<i>" not in shown and "<s>" not in shown
+
+
+def test_the_shortlist_of_the_whole_catalog_starts_from_the_position(tmp_path: Path) -> None:
+    assert 'href="../shortlist.html#start=a%26b/RT%201"' in body(placed(tmp_path, position="a&b/RT 1"))

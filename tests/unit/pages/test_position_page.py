@@ -8,7 +8,8 @@ from typing import Any
 import pytest
 from small_site import LEAST_POSITION, SHEET, fact, only_position, read, rows, section
 
-from builder.pages.position_page import CAUTION, position_page
+from builder.pages.cautions import CAUTION
+from builder.pages.position_page import position_page
 
 TRIPS = [
     {"name": "alarm", "at_c": -15, "when": "rising", "within_k": 1.5},

@@ -12,8 +12,8 @@ import pytest
 from small_site import LEAST_POSITION, read, rows, section, text
 
 from builder.circuit import budget, thermistor
+from builder.pages.cautions import CAUTION
 from builder.pages.context import Context
-from builder.pages.position_page import CAUTION
 from builder.pages.swap_page import swap_csv, swap_page
 from builder.part_curve import part_curve
 from builder.records import PartRecord, PositionRecord
