@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 import datetime
-import pickle
 from collections import defaultdict
 from collections.abc import Callable, Mapping, Sequence
-from dataclasses import astuple, dataclass, field
+from dataclasses import astuple, dataclass, field, fields, is_dataclass
 from functools import cached_property, partial
 from typing import Any, TypeVar
+
+import numpy as np
 
 from builder.circuit import Budget, Thermistor, budget, firmware_part
 from builder.comparisons.nearest import NearestParts, Neighbour
@@ -120,7 +121,7 @@ class Context:
 
         def made() -> str:
             curve = self.curve(record)
-            return digest(pickle.dumps((curve.curve, curve.operating_c)))
+            return digest(_written((curve.curve, curve.operating_c)).encode())
 
         return self.of_record("curve-digest", record, made)
 
@@ -223,3 +224,12 @@ class Context:
 def _neighbours(nearest: NearestParts, places: Sequence[int]) -> list[list[tuple[Any, ...]]]:
     """The nearest parts of each of some parts, as plain tuples: these are kept, and come back ten times sooner."""
     return [[astuple(neighbour) for neighbour in nearest.of(place)] for place in places]
+
+
+def _written(value: Any) -> str:
+    """Numbers to the last digit, the same for equal values however they came about; a pickle is not."""
+    if isinstance(value, np.ndarray):
+        return repr(value.tolist())
+    if is_dataclass(value):
+        return f"{type(value).__name__}({', '.join(_written(getattr(value, field.name)) for field in fields(value))})"
+    return ", ".join(map(_written, value)) if isinstance(value, tuple) else repr(value)
