@@ -6,12 +6,14 @@ import datetime
 from collections.abc import Sequence
 
 from builder.ledger import Entry, may_stand
+from builder.ledger.standings import Verdict
 from builder.pages.context import Context
 from builder.pages.html import Html, joined, link, table
 from builder.pages.ledger_page import PAGE, SOON_DAYS, entry_anchor, review_state
 
 _LONG_DAYS = 90
 _MOST_NAMED = 5
+_POSITIONS = "positions/index.html"
 
 
 def attention_table(context: Context) -> Html:
@@ -19,16 +21,17 @@ def attention_table(context: Context) -> Html:
     long_ago = context.today - datetime.timedelta(days=_LONG_DAYS + 1)
     reviews = {kind: _reviews(context, kind) for kind in ("overdue", "soon")}
     groups = (
-        ("reviews overdue", "review=overdue", reviews["overdue"]),
-        (f"reviews due within {SOON_DAYS} days", "review=soon", reviews["soon"]),
+        ("reviews overdue", f"{PAGE}#review=overdue", reviews["overdue"]),
+        (f"reviews due within {SOON_DAYS} days", f"{PAGE}#review=soon", reviews["soon"]),
         (
             f"alternates proposed and undecided for over {_LONG_DAYS} days",
-            f"about=alternate&state=proposed&to={long_ago.isoformat()}&holds=yes",
+            f"{PAGE}#about=alternate&state=proposed&to={long_ago.isoformat()}&holds=yes",
             _undecided(context, long_ago),
         ),
-        ("parts fitted that are withdrawn", "state=withdrawn&holds=yes", _fitted_though_withdrawn(context)),
+        ("parts fitted that are withdrawn", f"{PAGE}#state=withdrawn&holds=yes", _fitted(context, "withdrawn")),
+        ("parts fitted that nobody approved", _POSITIONS, _fitted(context, "proposed", "undecided")),
     )
-    rows = [(link(what, f"{PAGE}#{filters}"), len(found), _named(found)) for what, filters, found in groups if found]
+    rows = [(link(what, address), len(found), _named(found)) for what, address, found in groups if found]
     return table(("what", "how many", "which"), rows, caption="Decisions to look at") if rows else Html()
 
 
@@ -55,10 +58,10 @@ def _entry_link(entry: Entry, context: Context) -> Html:
     return link(f"{entry.part.part.part}{at}", f"{PAGE}#{entry_anchor(entry, context)}")
 
 
-def _fitted_though_withdrawn(context: Context) -> list[Html]:
+def _fitted(context: Context, *verdicts: Verdict) -> list[Html]:
     parts = [(place, context.catalog.part(place.position.fitted)) for place in context.catalog.positions]
     return [
         link(f"{part.part.part} at {place.position.position}", context.paths.position(place))
         for place, part in parts
-        if may_stand(part, place).verdict == "withdrawn"
+        if may_stand(part, place).verdict in verdicts
     ]
