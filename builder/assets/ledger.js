@@ -1,6 +1,7 @@
 /* The Ledger page: filters held in the address, and only the rows that were scrolled to. */
 (() => {
   const BATCH = 200; // rows drawn at once; more as the end of the table comes near
+  const PLACES = [1, 2, 7]; // columns that name a part or a position, only for among them
 
   const TESTS = {
     find: (text) => {
@@ -22,7 +23,7 @@
     const end = root.appendChild(document.createElement("div"));
     const entries = [...body.rows].map((row) => ({
       row,
-      found: [row.cells[1].textContent, row.cells[2].textContent, row.dataset.own ?? ""].join(" ").toLowerCase(),
+      found: [...PLACES.map((i) => row.cells[i].textContent), row.dataset.own ?? ""].join(" ").toLowerCase(),
     }));
     let hits = entries, drawn = 0;
 

@@ -42,8 +42,8 @@ def _feed(context: Context, site_url: str) -> str:
 
 def _entry(entry: Entry, context: Context, site_url: str) -> Html:
     standing, place = entry.standing, entry.position.position.position if entry.position else ""
-    said = [standing.because, f"Document: {standing.document}." if standing.document else ""]
-    said += [f"Only for {', '.join(standing.only_for)}." if standing.only_for else ""]
+    said = [standing.because, f"document: {standing.document}" if standing.document else ""]
+    said += [f"only for {', '.join(standing.only_for)}" if standing.only_for else ""]
     return tag(
         "entry",
         # From what is decided about and its place in that ledger: the same in every build, whatever is appended.
@@ -52,7 +52,7 @@ def _entry(entry: Entry, context: Context, site_url: str) -> Html:
         tag("updated", f"{standing.on.isoformat()}T00:00:00Z"),
         tag("author", tag("name", standing.by)),
         _link(urljoin(site_url, f"{PAGE}#{entry_anchor(entry, context)}")),
-        tag("summary", " ".join(filter(None, said))),
+        tag("summary", " · ".join(filter(None, said))),
     )
 
 

@@ -116,7 +116,7 @@ def _body(context: Context) -> Html:
         return joined([tag("h1", "Ledger"), tag("p", "Nobody has decided anything yet."), tag("p", files)])
     head = tag("thead", tag("tr", *(tag("th", name, scope="col") for name in _COLUMNS)))
     rows = (_row(entry, context) for entry in reversed(entries))
-    shown = tag("table", tag("caption", "Every entry"), head, tag("tbody", *rows), class_="bd-table")
+    shown = tag("table", tag("caption", "Entries"), head, tag("tbody", *rows), class_="bd-table")
     return joined(
         [
             tag("h1", "Ledger"),
@@ -125,7 +125,7 @@ def _body(context: Context) -> Html:
             tag(
                 "section",
                 _filters(entries),
-                tag("div", shown, class_="bd-scroll", tabindex="0", role="group", aria_label="Every entry"),
+                tag("div", shown, class_="bd-scroll", tabindex="0", role="group", aria_label="Entries"),
                 id="bd-ledger",
                 class_="bd-ledger",
                 aria_label="Entries of the ledger",
@@ -137,7 +137,7 @@ def _body(context: Context) -> Html:
 def _row(entry: Entry, context: Context) -> Html:
     standing, part, anchor = entry.standing, entry.part.part, entry_anchor(entry, context)
     maker = tag("span", part.maker, class_="bd-ledger-maker")
-    at: Any = "everywhere"
+    at: Any = "see only for" if standing.only_for else "everywhere"
     if entry.position:
         at = link(entry.position.position.position, relative(context.paths.position(entry.position), PAGE))
     cells = (

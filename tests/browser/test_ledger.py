@@ -134,3 +134,21 @@ def test_of_a_long_ledger_only_what_was_scrolled_to_is_drawn(tmp_path: Path, pag
     assert rows.count() < len(standing)
     page.evaluate("dispatchEvent(new Event('beforeprint'))")
     assert rows.count() == len(standing) == count(page)[1]
+
+
+def test_a_position_finds_what_is_only_for_it(demo_site: Path, page: Page) -> None:
+    page.goto((demo_site / "ledger.html").as_uri())
+    restricted = page.locator("#bd-ledger tbody tr", has=page.locator("td:nth-child(8):not(:empty)"))
+    whole = restricted.count()
+    assert whole > 0
+    place = restricted.first.locator("td:nth-child(8)").inner_text().split(", ")[0]
+    assert restricted.first.locator("td:nth-child(3)").inner_text() == "see only for"
+    page.get_by_label("Part, maker or position").fill(place)
+    assert 0 < restricted.count() <= whole
+
+
+def test_a_filtered_ledger_says_on_paper_how_much_it_leaves_out(demo_site: Path, page: Page) -> None:
+    page.goto((demo_site / "ledger.html").as_uri() + "#state=withdrawn")
+    page.emulate_media(media="print")
+    assert page.locator("#bd-ledger [role=status]").is_visible()
+    assert not page.locator("#bd-ledger").get_by_label("Standing").is_visible()

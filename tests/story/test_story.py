@@ -112,7 +112,7 @@ def test_the_feed_has_every_entry_that_stands_the_newest_first(site):
 
 def test_the_ledger_page_has_every_entry_that_stands_the_newest_first(site):
     (body,) = re.findall(
-        "<caption>Every entry</caption>.*?<tbody>(.*?)</tbody>", (site / "ledger.html").read_text("utf-8"), re.DOTALL
+        "<caption>Entries</caption>.*?<tbody>(.*?)</tbody>", (site / "ledger.html").read_text("utf-8"), re.DOTALL
     )
     rows = [re.findall("<t[hd].*?</t[hd]>", row, re.DOTALL) for row in body.split("</tr>")[:-1]]
     told = [tuple(re.sub("<[^>]+>", "", cell) for cell in row[:4]) for row in rows]

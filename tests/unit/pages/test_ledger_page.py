@@ -133,7 +133,7 @@ def test_the_feed_says_what_was_decided_newest_first(tmp_path: Path) -> None:
     top = feed(of(tmp_path, PROPOSED, APPROVED))
     first, second, _ = top.findall(f"{ATOM}entry")
     assert (text(first, "title"), text(second, "title")) == ("PX-1 approved", "PX-2 proposed at board/RT1")
-    assert text(first, "summary") == "approved <b>& why Document: sheet, revision C."
+    assert text(first, "summary") == "approved <b>& why · document: sheet, revision C"
     assert text(top, "updated") == text(first, "updated") == "2026-02-05T00:00:00Z"
 
 
