@@ -27,7 +27,6 @@ def newest(*documents):
         ([sheet("B"), sheet("C")], "C"),
         ([sheet("B"), sheet("9", title="notice"), sheet("C", title="Data Sheet")], "C"),
         ([sheet("B"), sheet("C", title="notice")], "B"),
-        ([sheet("B", "2025-01-07"), sheet("b", "2026-01-07")], "B"),
     ],
 )
 def test_the_newest_revision_of_a_title_is_the_one_of_the_latest_date_else_the_last(documents, revision):
