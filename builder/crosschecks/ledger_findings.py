@@ -41,9 +41,15 @@ def _document(entry: Entry) -> Iterator[Problem]:
     elif named.revision is None and state in APPROVING:
         message = f"is missing: {state} on no revision of the {clipped(named.title)}. Name the one that was looked at."
         yield entry.problem(("document", "revision"), "approval-document", message)
-    elif named_document(entry.part.part, named) is None:
+    elif (document := named_document(entry.part.part, named)) is None:
         message = f"{clipped(str(named))} is not among the documents of {entry.part.name}.{_near(named, entry)}"
         yield entry.problem(("document",), "approval-document", message)
+    elif document.dated and document.dated > entry.standing.on:
+        message = (
+            f"{clipped(str(named))} is of {document.dated.isoformat()}, after the decision, {entry.standing.on.isoformat()}. "
+            "Correct one of the two days, or name the revision that was looked at."
+        )
+        yield entry.problem(("document",), "document-after-decision", message, "warning")
 
 
 def _near(named: DocumentRevision, entry: Entry) -> str:

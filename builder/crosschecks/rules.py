@@ -169,6 +169,12 @@ RULES = (
         acceptable=False,
     ),
     Rule(
+        "document-after-decision",
+        "An entry rests on a revision that is dated after its day: nobody can have looked at it then.",
+        "Approved on 2026-03-02 on revision C, which documents date 2026-05-04.",
+        "Correct the day that is wrong, or name the earlier revision. Where a draft was looked at, accept the finding and say so.",
+    ),
+    Rule(
         "revision-replaced",
         "The entry that holds for a part, or for an alternate at its position, rests on a revision that a newer one in documents has "
         "replaced. The newest is the one with the latest date; where a revision has no date, the last of that title.",

@@ -132,6 +132,16 @@ def test_other_entries_may_be_short(told: Told) -> None:
     assert told(a=part(APPROVED, WITHDRAWN.replace("no longer made", "not made"))) == []
 
 
+def test_a_document_that_is_dated_after_the_decision_is_told(told: Told) -> None:
+    """Revision C is of 2026-02-03."""
+    said = (
+        "parts/a.yaml:10: standing[0].document: data sheet, revision C is of 2026-02-03, after the decision, 2026-02-02. "
+        "Correct one of the two days, or name the revision that was looked at. [warning: document-after-decision]"
+    )
+    assert told(a=part(APPROVED.replace("03-02", "02-02"))) == [said]
+    assert told(a=part(APPROVED.replace("03-02", "02-03"))) == []
+
+
 def test_a_review_before_the_decision_is_an_error(told: Told) -> None:
     assert told(a=part(f"{APPROVED}, review_due: 2026-03-01", f"{APPROVED}, review_due: 2027-03-01")) == [
         "parts/a.yaml:10: standing[0].review_due: 2026-03-01 lies before the decision, 2026-03-02. Correct one of the two. "
