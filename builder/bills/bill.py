@@ -84,8 +84,10 @@ def read_bill(data: bytes, *, name: str, sheet: str | None = None, chosen: Mappi
     found, heading, read = _headed(_sheets(data, name, sheet), chosen or {})
     if read.doubt:
         raise Unreadable(read.doubt, heading.line)
-    rows = [row for row in found.rows if row.line > heading.line]
-    return Bill(tuple(_lines(rows, read)), "reference" in read.of)
+    lines = tuple(_lines([row for row in found.rows if row.line > heading.line], read))
+    if not lines:
+        raise Unreadable("no line of parts follows the headings. Export the bill again.", heading.line)
+    return Bill(lines, "reference" in read.of)
 
 
 def _sheets(data: bytes, name: str, sheet: str | None) -> list[Sheet | Unreadable]:

@@ -225,6 +225,10 @@ def test_what_is_no_bill_is_refused_in_a_sentence(content, line, message):
     assert refusal(content) == (line, message)
 
 
+def test_headings_without_lines_are_no_bill():
+    assert refusal("Ref,MPN,Qty\n,,\n") == (1, "no line of parts follows the headings. Export the bill again.")
+
+
 def test_a_heading_that_was_chosen_must_be_there():
     assert refusal(text(), chosen={"number": "Type", "maker": "Who"}) == (
         None,
