@@ -45,6 +45,11 @@ class _Ledger:
         """The same for one ledger in every state."""
         return self.source.file, self.about
 
+    @property
+    def is_own(self) -> bool:
+        """Whether it is the part's own, not an alternate's."""
+        return self.path == ("standing",)
+
     def problem(self, path: Path, rule: str, message: str) -> Problem:
         """A problem of one of its fields."""
         return self.source.problem((*self.path, *path), rule, message)
@@ -72,15 +77,16 @@ def ledger_slips(states: Sequence[State], now: State) -> tuple[Problem, ...]:
     """
     kept: dict[tuple[str, str], _Ledger] = {}
     unsigned: list[Problem] = []
-    settled: set[str] = set()
+    settled: set[tuple[str, str]] = set()
     for state in states:
         parts = list(_matched(part_pairs(state, now), now.catalog.parts))
         renamed = {before.name: part.name for before, part in parts if part is not None}
-        for ledger in (*_of_parts(state, parts), *_of_alternates(state, now, renamed)):
+        ledgers = [*_of_parts(state, parts), *_of_alternates(state, now, renamed)]
+        for ledger in ledgers:
             known = kept.get(ledger.key)
             if known is None or ledger.before[: len(known.before)] == known.before:
                 kept[ledger.key] = ledger
-        unsigned += _unsigned(state, parts, settled)
+        unsigned += _unsigned(parts, ledgers, settled)
     return in_order([*(problem for ledger in kept.values() for problem in _slips(ledger)), *unsigned])
 
 
@@ -105,8 +111,13 @@ def _of_alternates(state: State, now: State, renamed: Mapping[str, str]) -> Iter
     for before, place in _matched(position_pairs(state, now), now.catalog.positions):
         record = place or before
         found = _alternates(place, now.catalog, {}) if place else {}
+        fitted = _name(place.position.fitted, now.catalog, {}) if place else ""
         for part, (_, alternate) in _alternates(before, state.catalog, renamed).items():
-            i, same = found.get(part, (None, None))
+            # What is fitted now cannot be its own alternate; its part's ledger decides from then on.
+            if part == fitted:
+                continue
+            # A part that has left the catalog goes by the number typed.
+            i, same = found.get(part) or found.get(alternate.part.casefold()) or (None, None)
             path: Path = ("alternates",) if i is None else ("alternates", i, "standing")
             what = f"the alternate {alternate.part} at {record.position.position}"
             entries = same.standing if same else None
@@ -142,12 +153,13 @@ def _slips(ledger: _Ledger) -> Iterator[Problem]:
 
 
 def _gone(ledger: _Ledger) -> Iterator[Problem]:
-    """A whole ledger that is no longer there; one that never approved anything may go."""
-    if any(entry.state in APPROVING for entry in ledger.before):
+    """A whole ledger that is no longer there; one that only ever proposed may go."""
+    if any(entry.state != "proposed" for entry in ledger.before):
         entries = ", ".join(_entry(entry) for entry in ledger.before)
+        is_withdrawn = ledger.before[-1].state == "withdrawn"
+        cure = "Put it back." if is_withdrawn else "Put it back, and append an entry that withdraws it."
         message = (
-            f"{clipped(ledger.what, 100)} is gone, whose ledger stood in revision {ledger.revision}: {entries}. "
-            "Put it back, and append an entry that withdraws it."
+            f"{clipped(ledger.what, 100)} is gone, whose ledger stood in revision {ledger.revision}: {entries}. {cure}"
         )
         yield ledger.problem((), "ledger-removed", message)
 
@@ -176,26 +188,34 @@ def _entry(entry: Standing) -> str:
 
 
 def _unsigned(
-    state: State, matched: Iterable[tuple[PartRecord, PartRecord | None]], settled: set[str]
+    parts: Iterable[tuple[PartRecord, PartRecord | None]], ledgers: Iterable[_Ledger], settled: set[tuple[str, str]]
 ) -> Iterator[Problem]:
-    """Parts whose last entry stood in a state already, and whose curve is not the one that it had there.
+    """Approvals whose last entry stood in a state already, of parts whose curve is not the one that it had there.
 
-    The first state that has the last entry settles a part: what it shows is what was approved.
+    The first state that has the last entry settles an approval: what the part shows there is what was approved.
     """
-    for before, now in matched:
-        if now is None or now.source.file in settled or now.part.state() not in APPROVING:
+    curves = {now.name: (before, now) for before, now in parts if now is not None}
+    for ledger in ledgers:
+        entries = ledger.now
+        if not entries or ledger.about not in curves or ledger.key in settled or len(ledger.before) < len(entries):
             continue
-        if len(before.part.standing) >= len(now.part.standing):
-            settled.add(now.source.file)
+        before, now = curves[ledger.about]
+        if _signs(ledger, entries, now):
+            settled.add(ledger.key)
             moved = shift(before, now) if before is not now else None
             if moved is not None and moved.moved:
-                path = ("standing", len(now.part.standing) - 1)
-                yield now.source.problem(path, "curve-moved-unsigned", _moved_text(moved, now, state))
+                yield ledger.problem((len(entries) - 1,), "curve-moved-unsigned", _moved_text(moved, ledger, entries))
 
 
-def _moved_text(moved: Shift, record: PartRecord, state: State) -> str:
+def _signs(ledger: _Ledger, entries: Standings, part: PartRecord) -> bool:
+    """Whether a ledger approves a part: its own, or an alternate's where the part has no approval of its own."""
+    return entries[-1].state in APPROVING and (ledger.is_own or part.part.state() not in APPROVING)
+
+
+def _moved_text(moved: Shift, ledger: _Ledger, entries: Standings) -> str:
+    who = "the part" if ledger.is_own else clipped(ledger.what, 100)
     cure = "Append an entry that approves it as it is, or restore the figures."
-    return f"{_shift_text(moved)} since revision {state.name}, where the part stood as {record.part.state()} already. {cure}"
+    return f"{_shift_text(moved)} since revision {ledger.revision}, where {who} stood as {entries[-1].state} already. {cure}"
 
 
 def _shift_text(moved: Shift) -> str:

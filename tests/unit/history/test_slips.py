@@ -137,6 +137,48 @@ def test_an_alternate_whose_part_was_renamed_keeps_its_ledger(kept):
     assert len(findings(first)) == 1
 
 
+def test_an_alternate_that_is_the_fitted_part_now_has_left_the_list_rightly(kept):
+    first = kept.commit("one", x=part(), y=other_part(), place=appended(position(), APPROVED))
+    fitted = position(("fitted: X-103", "fitted: maker y-103"))
+    kept.write(place=fitted[: fitted.index("alternates:")])
+    assert findings(first) == []
+
+
+def test_an_alternate_whose_part_left_the_catalog_is_still_in_its_list(kept):
+    first = kept.commit("one", x=part(), y=other_part(), place=appended(position(), APPROVED))
+    kept.write(y=None)
+    assert findings(first) == []
+
+
+def test_a_refusal_may_not_go_with_its_record(kept):
+    first = kept.commit("one", x=part(), y=appended(other_part(), WITHDRAWN))
+    kept.write(y=None)
+    (finding,) = findings(first)
+    assert "the record of Maker Y-103 is gone, whose ledger stood in revision" in finding
+    assert finding.endswith("proposed on 2026-01-12 by sensors, withdrawn on 2026-04-01 by quality. Put it back.")
+
+
+def test_a_curve_that_is_approved_as_an_alternate_only_does_not_move_without_a_new_entry(kept):
+    there = appended(position(), APPROVED)
+    first = kept.commit("one", x=part(), y=other_part(), place=there)
+    kept.commit("move", y=other_part().replace("3960", "3900"))
+    # 1/(1/298.15 + 3900/3960·(1/378.15 − 1/298.15)) − 378.15, by hand
+    assert findings(first) == [
+        "parts/place.yaml:20: alternates[0].standing[1]: the curve moved by −1.531 K at 105 °C since revision "
+        f"{first[:10]}, where the alternate Y-103 at board/RT1 stood as approved already. "
+        "Append an entry that approves it as it is, or restore the figures."
+    ]
+    kept.write(place=appended(there, SECOND))
+    assert findings(first) == []
+
+
+def test_of_a_part_with_an_approval_of_its_own_that_one_signs_for_its_alternates(kept):
+    own = appended(other_part(), APPROVED)
+    first = kept.commit("one", x=part(), y=own, place=appended(position(), APPROVED))
+    kept.write(y=appended(own.replace("3960", "3900"), SECOND))
+    assert findings(first) == []
+
+
 def test_an_alternate_that_was_never_approved_may_go(kept):
     first = kept.commit("one", x=part(), y=other_part(), place=position())
     text = position()
