@@ -18,12 +18,15 @@ _LAST_OF_NAME = ("maker", "position")  # once it is answered, the record's file 
 def refusals(catalog: Catalog, records: Path, out: Path | None) -> Refusal:
     """What an interview asks beside the model's own checks."""
     taken = {record.part.part.casefold(): record.source.file for record in (*catalog.parts, *catalog.curveless)}
+    buys = {n.casefold(): r.name for r in catalog.parts for n in (r.number, r.own_number) if n}
     places = {record.position.position.casefold(): record.source.file for record in catalog.positions}
 
     def refused(path: yaml_text.Path, held: Mapping[str, Any], value: Any) -> str:
         name, file = str(path[-1]), ""
         if path in (("part",), ("position",)):
             file = (taken if name == "part" else places).get(value.casefold(), "")
+        elif path == ("own_number",):
+            return _bought(buys.get(value.casefold()), value)
         elif name == "fitted" or path == ("firmware", "part"):
             return _unknown(catalog, value)
         if file:
@@ -34,6 +37,14 @@ def refusals(catalog: Catalog, records: Path, out: Path | None) -> Refusal:
         return ""
 
     return refused
+
+
+def _bought(other: str | None, own: str) -> str:
+    if other is None:
+        return ""
+    return (
+        f"{clipped(own)} is a number of {other} already. Give another, or leave it out; add by hand what buys either."
+    )
 
 
 def _unknown(catalog: Catalog, name: str) -> str:

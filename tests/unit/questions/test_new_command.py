@@ -174,6 +174,18 @@ def test_a_number_that_the_catalog_has_is_refused_at_once(told):
     assert result.stdout.splitlines()[0] == said
 
 
+@pytest.mark.parametrize("taken", ["hs-1", "tb3a-103f38"])
+def test_an_own_number_that_buys_another_part_is_refused_at_once(told, taken):
+    Path("parts/tarnbrook/TB3A-103F38.yaml").write_text(f"{PART}own_number: HS-1\n", "utf-8")
+    result = told(SHORT | {"own_number": [taken, "HS-2"]})
+    said = (
+        f"own_number: {taken} is a number of Tarnbrook Ceramics TB3A-103F38 already. Give another, or leave it out; "
+        "add by hand what buys either."
+    )
+    assert result.exit_code == 0
+    assert result.stdout.splitlines()[0] == said
+
+
 def test_a_file_that_is_there_is_told_as_soon_as_its_name_is_known(told):
     there = Path("parts/exemplar-ceramics/XN4-103F.yaml")
     there.parent.mkdir()
