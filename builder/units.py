@@ -20,6 +20,7 @@ FIGURE = re.compile(r"[-+]?([0-9]+\.?[0-9]*|\.[0-9]+)([eE][-+]?[0-9]+)?")
 # IEC 60062 also has L (1e-3), G and T; a thermistor record has no use for them, and L is a tolerance letter too.
 _MULTIPLIERS = {"R": Decimal(1), "K": Decimal(1_000), "M": Decimal(1_000_000)}
 _CODE = re.compile("([0-9]{0,12})([RrKkM])([0-9]{0,12})")
+_ALL_DIGITS = 17  # of a float: more tell nothing
 _PREFIXES = ((1e6, "MΩ"), (1e3, "kΩ"), (1.0, "Ω"))
 
 
@@ -172,6 +173,33 @@ def number_text(value: float, digits: int = 6) -> str:
         mantissa, exponent = f"{value:.{digits - 1}e}".split("e")
         text = f"{mantissa.rstrip('0').rstrip('.')}e{int(exponent)}"
     return "0" if text in ("-0", "0") else text.replace("-", "−")
+
+
+def compared_text(value: float, limit: float, digits: int) -> str:
+    """A number beside a limit, with as many more digits as keep it on its side of the limit.
+
+    Parameters
+    ----------
+    value : float
+        Any number; no unit.
+    limit : float
+        What it is compared with; no unit.
+    digits : int
+        Significant digits kept where these tell; no unit.
+
+    Returns
+    -------
+    str
+        Such as `1.6004`.
+
+    Examples
+    --------
+    >>> compared_text(1.6004, 2.0, 3), compared_text(1.6004, 1.6, 3), compared_text(1.598, 1.5985, 3)
+    ('1.6', '1.6004', '1.598')
+    """
+    while digits < _ALL_DIGITS and (float(f"{value:.{digits}g}") <= limit) != (value <= limit):
+        digits += 1
+    return number_text(value, digits)
 
 
 def resistance_text(r_ohm: float, digits: int = 5) -> str:

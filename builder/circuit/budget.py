@@ -83,17 +83,18 @@ def budget(position: Position, fitted: Thermistor, firmware_curve: PartCurve, st
     at_rows = np.searchsorted(t_c, rows_c)
     largest_k = np.maximum(-worst_min_k, worst_max_k)
     worst = int(largest_k.argmax())  # the first that is not a number, if there is one
-    known = gaps(chain, t_c)
-    spans = trip_spans(chain)
+    known, spans = gaps(chain, t_c), trip_spans(chain)
+    # A trip may stand outside the range, where less of the part is stated.
+    of_trips = [gaps(chain, np.array([span.trip.at_c])) for span in spans]
     return Budget(
         position,
         budget_rows(chain, rows_c, worst_min_k[at_rows], worst_max_k[at_rows]),
         float(largest_k[worst]),
         float(t_c[worst]),
         known.verdict(bool(largest_k[worst] <= position.limit_k)),
-        tuple(_trip(span, position.limit_k, known) for span in spans),
+        tuple(_trip(span, position.limit_k, own) for span, own in zip(spans, of_trips, strict=True)),
         *margins_codes(chain, lowest.code, highest.code),
-        known.fields,
+        tuple(dict.fromkeys(field for each in (known, *of_trips) for field in each.fields)),
         (*_range_notes(chain, t_c, np.isnan(largest_k)), *_trip_notes(spans, position.range_c)),
     )
 

@@ -35,7 +35,7 @@ class Band:
 
     From the first of these that applies at a temperature: minimum and maximum columns; an accuracy in kelvin,
     carried through the curve; the tolerances of the rated resistance and of the B-value nearest by pair, widened
-    by the shape allowance of a curve from a single B-value.
+    by the shape allowance of a curve from a single B-value. Without a rated tolerance the outermost accuracies go on.
     """
 
     curve: Curve
@@ -65,9 +65,9 @@ class Band:
         with np.errstate(over="ignore"):  # near absolute zero the edges are beyond a float
             low, high = self._factors(t_c)
             low_ohm, high_ohm = nominal_ohm * low, nominal_ohm * high
-        known = np.isfinite(nominal_ohm)
+        known, stated_c = np.isfinite(nominal_ohm), self._with_accuracy_c(t_c)
         for stated in self._accuracy_widest_first():
-            inside = known & _within(stated, t_c)
+            inside = known & _within(stated, stated_c)
             low_ohm = np.where(inside, self.curve.extended_resistance_ohm(t_c + stated.within_k), low_ohm)
             high_ohm = np.where(inside, self.curve.extended_resistance_ohm(t_c - stated.within_k), high_ohm)
         return low_ohm, high_ohm
@@ -126,6 +126,14 @@ class Band:
         for stated in self.accuracy:
             mask &= ~_within(stated, t_c)
         return mask
+
+    def _with_accuracy_c(self, t_c: Array) -> Array:
+        """The temperatures, each beyond all accuracies at their end where no rated tolerance takes over from them."""
+        if self.rated_tolerance_pct is not None or not self.accuracy:
+            return t_c
+        # Else a body that its own power warms beyond the end would have no tolerance there.
+        coldest_c, hottest_c = zip(*(stated.between_c for stated in self.accuracy), strict=True)
+        return np.clip(t_c, min(coldest_c), max(hottest_c))
 
     def _accuracy_widest_first(self) -> list[AccuracyRange]:
         # Ranges may overlap (±0.2 K from 0 to 70 °C, ±0.5 K everywhere): the tightest statement holds.

@@ -14,7 +14,7 @@ from builder.ledger import standing_at
 from builder.ledger.standings import goes_by
 from builder.part_curve import part_curve
 from builder.records import Catalog, PartRecord, Position, PositionRecord
-from builder.units import number_text, range_text, temperature_text
+from builder.units import compared_text, number_text, range_text, temperature_text
 
 Verdict = Literal["fits", "fits with new firmware", "does not fit", "undecided"]
 FIRMWARE_CURES: tuple[About, ...] = ("error", "trips")
@@ -125,7 +125,7 @@ def _new_firmware_reasons(after: Budget, new_firmware: Budget | None) -> Iterato
 
 
 def _error_reason(found: Budget) -> Reason:
-    worst = f"worst case {number_text(found.worst_k, 3)} K at {temperature_text(found.worst_at_c)}"
+    worst = f"worst case {compared_text(found.worst_k, found.position.limit_k, 3)} K at {temperature_text(found.worst_at_c)}"
     limit = f"±{number_text(found.position.limit_k)} K"
     if math.isnan(found.worst_k):
         worst = f"some boards have no reading at {temperature_text(found.worst_at_c)}"

@@ -8,7 +8,7 @@ from typing import Any
 
 from builder.circuit import Budget, TripBudget
 from builder.exports.rows import Column, Row, rounded
-from builder.units import number_text, signed_text, temperature_text
+from builder.units import compared_text, number_text, signed_text, temperature_text
 
 _ARRAYS = ("t_c", "code", "bias_k", "worst_min_k", "worst_max_k", "expanded_k", "codes_per_k")
 
@@ -130,12 +130,9 @@ def trip_answer(trip: TripBudget) -> Row:
 def budget_sentences(budget: Budget) -> Iterator[str]:
     """What stands below the table: verdict, trips, margins, and what to know beside them."""
     limit = f"±{number_text(budget.position.limit_k)} K"
-    yield f"Worst case {_worst(budget)}; the limit of {limit} {_VERDICTS[budget.meets_limit]}."
+    yield f"{_worst(budget)}; the limit of {limit} {_VERDICTS[budget.meets_limit]}."
     for trip in budget.trips:
-        yield (
-            f"{trip.name}, {temperature_text(trip.at_c)}: acts from {_degrees(trip.acts_from_c)} to "
-            f"{_degrees(trip.acts_to_c)}: {_NEARNESS[trip.ok]}."
-        )
+        yield f"{trip.name}, {temperature_text(trip.at_c)}: {_acts(trip)}: {_NEARNESS[trip.ok]}."
     yield (
         f"Codes left for telling an open sensor {number_text(budget.open_margin_codes)}, "
         f"a shorted one {number_text(budget.short_margin_codes)}."
@@ -145,12 +142,21 @@ def budget_sentences(budget: Budget) -> Iterator[str]:
     yield from budget.notes
 
 
-_VERDICTS = {True: "is met", False: "is exceeded", None: "is undecided: a figure is missing"}
+_VERDICTS = {True: "is met", False: "is not met", None: "is undecided: a figure is missing"}
 _NEARNESS = {True: "near enough", False: "too far off", None: "undecided, a figure is missing"}
 
 
 def _worst(budget: Budget) -> str:
-    return f"{number_text(budget.worst_k, 4)} K at {temperature_text(budget.worst_at_c)}"
+    where = temperature_text(budget.worst_at_c)
+    if math.isnan(budget.worst_k):
+        return f"Some boards have no reading at {where}"
+    return f"Worst case {compared_text(budget.worst_k, budget.position.limit_k, 4)} K at {where}"
+
+
+def _acts(trip: TripBudget) -> str:
+    if math.isnan(trip.acts_from_c + trip.acts_to_c):
+        return "does not act on every board"
+    return f"acts from {_degrees(trip.acts_from_c)} to {_degrees(trip.acts_to_c)}"
 
 
 def _degrees(t_c: float) -> str:

@@ -18,7 +18,7 @@ from builder.pages.paths import relative
 from builder.part_curve import whole_steps_c
 from builder.problems import count_text
 from builder.records import PositionRecord
-from builder.units import number_text, temperature_text
+from builder.units import compared_text, number_text, temperature_text
 
 _VERDICTS = {
     True: ("good", "Limit met"),
@@ -40,9 +40,11 @@ def position_sources(record: PositionRecord, context: Context) -> tuple[str, ...
 def verdict_line(budget: Budget) -> Html:
     """Whether limit and trips are met, how far off the worst case is and where, and what is missing to tell."""
     kind, words = _VERDICTS[budget.meets_limit]
-    far = [trip.name for trip in budget.trips if trip.ok is False]
+    far, left_open = ([trip.name for trip in budget.trips if trip.ok is ok] for ok in (False, None))
     if far:
         kind, words = "bad", f"{words}, but too far off: {', '.join(far)}"
+    elif left_open and budget.meets_limit:
+        kind, words = "open", f"{words}, but undecided: {', '.join(left_open)}"
     said = joined([tag("strong", words), *_reasons(budget)], " ")
     return tag("p", said, class_=f"bd-outcome bd-outcome-{kind}")
 
@@ -54,7 +56,8 @@ def _reasons(budget: Budget) -> Iterator[Html]:
         yield Html(f"At {where} some boards have no reading; limit ±{number_text(limit_k)} K.")
     else:
         left = f", {number_text(limit_k - budget.worst_k, 2)} K left" if budget.worst_k <= limit_k else ""
-        yield Html(f"Worst case {number_text(budget.worst_k, 3)} K at {where}, limit ±{number_text(limit_k)} K{left}.")
+        worst = compared_text(budget.worst_k, limit_k, 3)
+        yield Html(f"Worst case {worst} K at {where}, limit ±{number_text(limit_k)} K{left}.")
     if budget.missing:
         fields = joined([tag("code", field) for field in budget.missing], ", ")
         leaves = ", so the error may be larger" if budget.meets_limit is None else ""

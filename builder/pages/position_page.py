@@ -124,7 +124,7 @@ def _circuit(position: Position) -> Html:
                 "Across the thermistor",
                 _resistor(parallel.resistance_ohm, parallel.tolerance_pct) if parallel else "nothing",
             ),
-            ("Wire", _stated(circuit.wire_ohm, "Ω")),
+            ("Wire", f"{number_text(circuit.wire_ohm)} Ω" if circuit.wire_ohm else "nothing"),
             ("Supply", f"{number_text(circuit.supply_v)} V, {_plus_minus(circuit.supply_tolerance_pct, '%')}"),
             ("Reference", _reference(position)),
         ]

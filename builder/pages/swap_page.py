@@ -22,7 +22,7 @@ from builder.pages.part_facts import FACT_NAMES, part_facts
 from builder.pages.paths import relative
 from builder.pages.verdicts import MEANINGS, verdict_badge
 from builder.records import PartRecord, PositionRecord
-from builder.units import number_text, range_text, signed_text, temperature_text
+from builder.units import compared_text, number_text, range_text, signed_text, temperature_text
 
 # On paper the figures of one page; the CSV has every row of the budget.
 _MOST_ROWS = 14
@@ -116,7 +116,7 @@ def _part_link(part: PartRecord, context: Context, here: str) -> Html:
 def _worst(budget: Budget) -> str:
     if not np.isfinite(budget.worst_k):
         return f"no reading at {temperature_text(budget.worst_at_c)}"
-    return f"{number_text(budget.worst_k, 3)} K at {temperature_text(budget.worst_at_c)}"
+    return f"{compared_text(budget.worst_k, budget.position.limit_k, 3)} K at {temperature_text(budget.worst_at_c)}"
 
 
 def _reasons(swap: Swap) -> Html:

@@ -7,6 +7,7 @@ import pytest
 
 from builder.units import (
     celsius,
+    compared_text,
     kelvin,
     number_text,
     ohms_from_text,
@@ -105,3 +106,18 @@ def test_temperatures_have_a_true_minus_and_their_unit():
 )  # fmt: skip
 def test_a_difference_has_its_sign_unless_it_is_zero(difference_k, text):
     assert signed_text(difference_k) == text
+
+
+@pytest.mark.parametrize(
+    ("value", "limit", "text"),
+    [
+        (1.6004, 1.6, "1.6004"),
+        (1.598, 1.5985, "1.598"),
+        (1.6, 1.6, "1.6"),
+        (1.59999, 1.6, "1.6"),
+        (np.nextafter(1.6, 2), 1.6, "1.6000000000000003"),
+        (math.nan, 1.6, "–"),
+    ],
+)
+def test_number_beside_a_limit_stays_on_its_side(value, limit, text):
+    assert compared_text(value, limit, 3) == text

@@ -9,7 +9,7 @@ import numpy as np
 from builder.circuit import Budget
 from builder.pages.figures import Band, Limit, Line, Mark, reads_figure, stack_figure
 from builder.pages.figures.scales import FloatArray
-from builder.units import number_text, range_text, temperature_text
+from builder.units import compared_text, number_text, range_text, temperature_text
 
 # As many layers as hatching keeps apart.
 _MOST_LAYERS = 6
@@ -28,7 +28,7 @@ def budget_figure(budget: Budget) -> str:
     ]
     title = f"Error of the reading at {position.position} from {range_text(position.range_c)}"
     described = (
-        f"Worst case {number_text(budget.worst_k, 3)} K at {temperature_text(budget.worst_at_c)}, "
+        f"Worst case {compared_text(budget.worst_k, position.limit_k, 3)} K at {temperature_text(budget.worst_at_c)}, "
         f"limit ±{number_text(position.limit_k)} K."
     )
     return reads_figure(title, described, marks)

@@ -1,6 +1,7 @@
 """A budget as rows, sentences and JSON."""
 
 import json
+from dataclasses import replace
 
 import pytest
 from circuit_records import plain_thermistor, position, real_position, real_thermistor
@@ -74,3 +75,17 @@ def test_missing_figures_are_said():
     first, _, missing = budget_rows.budget_sentences(found)
     assert first.endswith("; the limit of ±1 K is undecided: a figure is missing.")
     assert missing == "Not stated: adc.leakage_na."
+
+
+def test_reading_that_some_boards_lack_is_said_in_words():
+    fitted = plain_thermistor()
+    trips = [{"name": "warm", "at_c": 5, "when": "rising"}]
+    found = budget(position(range_c=[0, 50], reference={"volts": 2.0}, trips=trips), fitted, fitted.made)
+    first, trip, *_ = budget_rows.budget_sentences(found)
+    assert first == "Some boards have no reading at 0 °C; the limit of ±1 K is not met."
+    assert trip == "warm, 5 °C: does not act on every board: too far off."
+
+
+def test_worst_case_just_beyond_its_limit_is_not_rounded_onto_it(made):
+    first, *_ = budget_rows.budget_sentences(replace(made, worst_k=3.0004, worst_at_c=50.0, meets_limit=False))
+    assert first == "Worst case 3.0004 K at 50 °C; the limit of ±3 K is not met."

@@ -75,3 +75,21 @@ def test_parts_own_tolerances_are_missed(rated, b_tolerance_pct, fields):
 def test_parts_tolerances_are_not_missed_where_kelvin_are_stated():
     stated = plain_thermistor(rated={"resistance_ohm": "10k"}, accuracy=[{"between_c": [0, 70], "within_k": 0.5}])
     assert budget_of(stated).missing == ()
+
+
+def test_trip_outside_what_kelvin_are_stated_for_stays_open_and_the_limit_does_not():
+    stated = plain_thermistor(rated={"resistance_ohm": "10k"}, accuracy=[{"between_c": [0, 70], "within_k": 0.5}])
+    trips = [{"name": "hot", "at_c": 90, "when": "rising"}, {"name": "warm", "at_c": 40, "when": "rising"}]
+    found = budget(position(range_c=[0, 70], limit_k=5.0, trips=trips), stated, stated.made)
+    assert found.missing == ("rated.tolerance_pct",)
+    assert (found.meets_limit, [trip.ok for trip in found.trips]) == (True, [None, True])
+
+
+def test_body_warmed_beyond_what_kelvin_are_stated_for_keeps_that_tolerance():
+    # 0.27 K of self-heating at 70 °C, where the stated kelvin end.
+    stated = plain_thermistor(
+        rated={"resistance_ohm": "10k"}, accuracy=[{"between_c": [0, 70], "within_k": 0.5}], dissipation_mw_per_k=0.5
+    )
+    rows = budget(position(range_c=[0, 70]), stated, stated.made).rows
+    assert rows.worst_max_k[-1] - rows.bias_k[-1] > 0.5
+    assert rows.worst_min_k[-1] - rows.bias_k[-1] < -0.5

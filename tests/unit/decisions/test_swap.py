@@ -1,6 +1,7 @@
 """An alternate in place of the fitted part: its budgets, its verdict and every reason."""
 
 import math
+import re
 
 import numpy as np
 import pytest
@@ -247,3 +248,10 @@ def test_rows_stand_at_the_step_asked_for():
     fitted, alternate = part(), part("X2")
     found = swap(place(), alternate, catalog(fitted, alternate), step_k=20)
     assert found.after.rows.t_c.tolist() == found.new_firmware.rows.t_c.tolist() == [0, 20, 40, 60]
+
+
+def test_worst_case_just_beyond_the_limit_is_not_told_as_the_limit():
+    worst_k = swapped().after.worst_k
+    ((_, message),) = [reason for reason in told(swapped(limit_k=worst_k - 1e-5), True) if "with new" not in reason[1]]
+    worst, limit = re.findall(r"[0-9.]+(?= K)", message)
+    assert float(worst) > float(limit)

@@ -17,6 +17,7 @@ from builder.circuit import budget, thermistor
 from builder.decisions import best_resistor
 from builder.pages.budget_section import budget_csv, margin_sentences, verdict_line
 from builder.pages.context import Context
+from builder.pages.figures.budgets import budget_figure
 from builder.pages.position_page import position_page
 from builder.units import resistance_text
 
@@ -227,3 +228,18 @@ def test_what_a_record_says_is_escaped_in_figures_too(tmp_path: Path) -> None:
 
 def test_the_shortlist_of_the_whole_catalog_starts_from_the_position(tmp_path: Path) -> None:
     assert 'href="../shortlist.html#start=a%26b/RT%201"' in body(placed(tmp_path, position="a&b/RT 1"))
+
+
+def test_a_worst_case_just_beyond_the_limit_is_not_shown_as_the_limit(tmp_path: Path) -> None:
+    context = placed(tmp_path)
+    made = thermistor(context.catalog.parts[0])
+    found = replace(budget(context.catalog.positions[0].position, made, made.made), worst_k=3.0004, meets_limit=False)
+    assert "Worst case 3.0004 K" in verdict_line(found)
+    assert "Worst case 3.0004 K" in budget_figure(found)
+
+
+def test_a_trip_left_open_beside_a_limit_that_is_met_is_said_first(tmp_path: Path) -> None:
+    part = {**PART, "rated": {"resistance_ohm": 1e4}, "accuracy": [{"between_c": [-12, 60], "within_k": 0.5}]}
+    shown = body(placed(tmp_path, part, trips=[ALARM | {"name": "hot", "at_c": 65, "within_k": 10}]))
+    assert "Limit met, but undecided: hot Worst case" in text(shown)
+    assert "bd-outcome-open" in shown

@@ -29,6 +29,7 @@ def test_the_least_possible_record_has_a_whole_page(tmp_path: Path) -> None:
     assert fact(body, "Offset") == "not stated"
     assert "The firmware acts on no threshold here." in section(body, "trips")
     assert "None beyond range and limit." in section(body, "requirements")
+    assert fact(body, "Wire") == "nothing"
 
 
 def test_a_record_with_every_field_shows_each(tmp_path: Path) -> None:
