@@ -95,6 +95,10 @@ class Repository:
 
     @property
     def _advice(self) -> str:
+        if not self._line("rev-parse", "--verify", "--quiet", "HEAD"):
+            return "It has no commit yet: make one with the records."
+        if not self._line("rev-parse", "--verify", "--quiet", "HEAD^{commit}"):
+            return "The commit checked out is missing; git fsck says what is damaged."
         if self.is_shallow:
             return "The history of this clone is not deep enough, or the name is wrong: git fetch --deepen=100"
         return "git log --oneline shows the revisions."

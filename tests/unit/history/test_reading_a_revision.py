@@ -165,7 +165,7 @@ def test_a_revision_without_the_folder_is_refused(kept):
 
 @pytest.mark.usefixtures("kept")
 def test_a_repository_without_a_commit_is_refused():
-    assert refusal() == "HEAD is no revision of this repository. git log --oneline shows the revisions."
+    assert refusal() == "HEAD is no revision of this repository. It has no commit yet: make one with the records."
 
 
 @pytest.mark.usefixtures("kept")
@@ -191,6 +191,16 @@ def test_a_repository_of_somebody_else_is_refused(kept, monkeypatch):
 
 def objects(folder: Path) -> list[Path]:
     return [path for path in sorted((folder / ".git" / "objects").glob("??/*")) if path.is_file()]
+
+
+def test_a_commit_that_is_checked_out_and_missing_is_told(kept):
+    kept.commit("one", x=part())
+    for file in objects(kept.root):
+        file.unlink()
+    assert (
+        refusal()
+        == "HEAD is no revision of this repository. The commit checked out is missing; git fsck says what is damaged."
+    )
 
 
 def test_a_content_that_is_missing_is_told(kept):
