@@ -8,17 +8,23 @@ from functools import partial
 
 import numpy as np
 
-from builder.comparisons import Comparison, compared, sentence
+from builder.comparisons import Comparison, NoCommonRange, common_range_c, compared, sentence
+from builder.kept import digest
 from builder.pages.context import Context
 from builder.pages.html import Html, joined, link, tag
 from builder.pages.side_by_side_page import side_by_side_address
+from builder.part_curve import PartCurve
 from builder.records import Part, PartRecord
 
 # Below this a pair is no lesson.
 _LEAST_K = 1.0
 _PAIR_C = (25.0, 85.0)
 
+_ROWS = 34
+
 Pair = tuple[PartRecord, PartRecord, Comparison]
+# How far apart in K, and the places in the group of the part that the firmware was made for and of the other.
+_Farthest = tuple[float, int, int]
 
 
 def tour_section(context: Context) -> Html:
@@ -47,9 +53,14 @@ def _lesson(reference: PartRecord, other: PartRecord, comparison: Comparison, co
 
 def largest_pair(context: Context) -> Pair | None:
     """Reference, other and their comparison; None where no two parts that agree on paper differ by a kelvin."""
-    pairs = [pair for group in _alike_on_paper(context) if (pair := _farthest(group, context))]
-    found = max(pairs, key=lambda pair: abs(pair[2].reads_k[0]), default=None)
-    return found if found and abs(found[2].reads_k[0]) > _LEAST_K else None
+    pairs = [(pair, group) for group in _alike_on_paper(context) if (pair := _kept_farthest(group, context))]
+    if not pairs:
+        return None
+    (apart_k, *places), group = max(pairs, key=lambda found: found[0][0])
+    reference, other = (group[place] for place in places)
+    span_c = np.linspace(*common_range_c(*map(context.curve, group)), _ROWS)
+    found = compared(context.curve(reference), context.curve(other), span_c)
+    return (reference, other, found) if apart_k > _LEAST_K else None
 
 
 def tour_sources(context: Context) -> tuple[str, ...]:
@@ -80,15 +91,26 @@ def _stated_b_k(part: Part) -> float | None:
     return next((b.b_k for b in part.b_values if tuple(sorted(b.between_c)) == _PAIR_C), None)
 
 
-def _farthest(group: list[PartRecord], context: Context) -> Pair | None:
-    """The two of a group that are farthest apart at the coldest temperature that all are made for."""
-    curves = [context.curve(record) for record in group]
-    low_c, high_c = max(c.operating_c[0] for c in curves), min(c.operating_c[1] for c in curves)
-    if low_c >= high_c:
+def _kept_farthest(group: list[PartRecord], context: Context) -> _Farthest | None:
+    """As found before, if no curve of the group is another."""
+    shelf = context.kept.shelf("farthest")
+    key = digest(repr([context.curve_digest(record) for record in group]).encode())
+    kept: list[_Farthest | None] | None = shelf.head(key)
+    if kept is None:
+        kept = [_farthest([context.curve(record) for record in group])]
+        shelf.put(key, None, kept)
+    return kept[0]
+
+
+def _farthest(curves: list[PartCurve]) -> _Farthest | None:
+    """The two that are farthest apart at the coldest temperature that all are made for."""
+    try:
+        coldest_c, _ = common_range_c(*curves)
+    except NoCommonRange:
         return None
-    r_ohm = np.array([float(c.curve.resistance_ohm(low_c)) for c in curves])
+    r_ohm = np.array([float(curve.curve.resistance_ohm(coldest_c)) for curve in curves])
     if not np.isfinite(r_ohm).all():
         return None
     least, most = int(r_ohm.argmin()), int(r_ohm.argmax())
-    comparison = compared(curves[least], curves[most], np.linspace(low_c, high_c, 34))
-    return group[least], group[most], comparison
+    apart_k = abs(float(compared(curves[least], curves[most], [coldest_c]).reads_k[0]))
+    return (apart_k, least, most) if np.isfinite(apart_k) else None
