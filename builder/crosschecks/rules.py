@@ -179,7 +179,9 @@ RULES = (
         "The entry that holds for a part, or for an alternate at its position, rests on a revision that a newer one in documents has "
         "replaced. The newest is the one with the latest date; where a revision has no date, the last of that title.",
         "Approved on revision B of the data sheet; documents have revision C too.",
-        "Compare both revisions, then append an entry that rests on the newer one, or withdraws.",
+        "Compare both revisions, then append an entry that rests on the newer one, or withdraws. It cannot be accepted: that would "
+        "silence every later revision too.",
+        acceptable=False,
     ),
     Rule(
         "approval-of-errors",

@@ -25,6 +25,8 @@ from builder.processes import shared_out
 from builder.records import Catalog, PartRecord, PositionRecord
 
 SAMPLE_STEP_K = 1.0
+# Each costs three error budgets.
+_FEWEST_SWAPS = 4
 T = TypeVar("T")
 
 
@@ -195,14 +197,26 @@ class Context:
 
     def verdict(self, record: PositionRecord, alternate: PartRecord) -> Verdict:
         """Whether an alternate may be fitted at a position; as found before, if no record that it rests on has changed."""
+        return self._verdicts[record.source.file, alternate.source.file]
+
+    @cached_property
+    def _verdicts(self) -> Mapping[tuple[str, str], Verdict]:
+        """Of every alternate at every position: nearly all the work of the whole matrix, so it is shared out."""
+        swaps = [(place, part) for place in self.catalog.positions for part in self.alternates(place)]
+        keys, shelf = [self._swap_key(*swap) for swap in swaps], self.kept.shelf("verdicts")
+        missing = [(key, swap) for key, swap in zip(keys, swaps, strict=True) if shelf.head(key) is None]
+        found = shared_out(self._found_verdicts, [swap for _, swap in missing], "Weighing swaps", _FEWEST_SWAPS)
+        for (key, _), verdict in zip(missing, found, strict=True):
+            shelf.put(key, None, verdict)
+        places = ((place.source.file, part.source.file) for place, part in swaps)
+        return dict(zip(places, map(shelf.head, keys), strict=True))
+
+    def _swap_key(self, record: PositionRecord, alternate: PartRecord) -> str:
         named = [self.catalog.part(name) for name in record.position.named_parts().values()]
-        key = digest(repr([record.digest, alternate.digest, *(part.digest for part in named)]).encode())
-        shelf = self.kept.shelf("verdicts")
-        found: Verdict | None = shelf.head(key)
-        if found is None:
-            found = self.swap(record, alternate).verdict
-            shelf.put(key, None, found)
-        return found
+        return digest(repr([record.digest, alternate.digest, *(part.digest for part in named)]).encode())
+
+    def _found_verdicts(self, swaps: Sequence[tuple[PositionRecord, PartRecord]]) -> list[Verdict]:
+        return [self.swap(place, part).verdict for place, part in swaps]
 
     @cached_property
     def _problems_by_file(self) -> Mapping[str, tuple[Problem, ...]]:

@@ -113,10 +113,11 @@ def test_a_later_document_without_a_revision_replaces_too(told: Told) -> None:
     ]
 
 
-def test_a_replaced_revision_can_be_accepted(told: Told) -> None:
+def test_a_replaced_revision_cannot_be_accepted_for_good(told: Told) -> None:
     on_b = APPROVED.replace("revision: C", "revision: B")
     accepted = "accepted: [{rule: revision-replaced, because: revision C corrects the address}]\n"
-    assert told(a=part(on_b, more=accepted)) == []
+    (refused,) = (said for said in told(a=part(on_b, more=accepted)) if "accepted[0].rule" in said)
+    assert "revision-replaced" in refused and refused.endswith("[error: wrong-choice]")
 
 
 @pytest.mark.parametrize("reason", ['"-"', "obsolete", "n/a", '"— !"'])
