@@ -42,7 +42,8 @@ def verdict_line(budget: Budget) -> Html:
     kind, words = _VERDICTS[budget.meets_limit]
     far, left_open = ([trip.name for trip in budget.trips if trip.ok is ok] for ok in (False, None))
     if far:
-        kind, words = "bad", f"{words}, but too far off: {', '.join(far)}"
+        joins = "and" if budget.meets_limit is False else "but"
+        kind, words = "bad", f"{words}, {joins} too far off: {', '.join(far)}"
     elif left_open and budget.meets_limit:
         kind, words = "open", f"{words}, but undecided: {', '.join(left_open)}"
     said = joined([tag("strong", words), *_reasons(budget)], " ")

@@ -7,7 +7,7 @@ from typing import Any
 
 import numpy as np
 
-from builder.circuit import Budget, TripBudget, firmware_part
+from builder.circuit import Budget, firmware_part
 from builder.decisions import Reason, Swap
 from builder.exports.rows import Column, Row, csv_text, rounded
 from builder.ledger.standings import goes_by
@@ -20,6 +20,7 @@ from builder.pages.ledger import ledger_table, standing_badge
 from builder.pages.page import DataFile, Heading, Page
 from builder.pages.part_facts import FACT_NAMES, part_facts
 from builder.pages.paths import relative
+from builder.pages.trips_section import acts_text
 from builder.pages.verdicts import MEANINGS, verdict_badge
 from builder.records import PartRecord, PositionRecord
 from builder.units import compared_text, number_text, range_text, signed_text, temperature_text
@@ -206,7 +207,7 @@ def _trips(swap: Swap, context: Context) -> Html:
     if not swap.after.trips:
         return tag("p", "The firmware acts on no threshold here.")
     rows = [
-        (before.name, temperature_text(before.at_c), _acts(before), _acts(after), _NEAR[after.ok])
+        (before.name, temperature_text(before.at_c), acts_text(before), acts_text(after), _NEAR[after.ok])
         for before, after in zip(swap.before.trips, swap.after.trips, strict=True)
     ]
     headings = ("trip", "set to", "acts before", "acts after", "after")
@@ -216,13 +217,6 @@ def _trips(swap: Swap, context: Context) -> Html:
 
 
 _NEAR = {True: "near enough", False: "too far off", None: "undecided: a figure is missing"}
-
-
-def _acts(trip: TripBudget) -> str:
-    low, high = (
-        f"{t_c:.2f}".replace("-", "−") if np.isfinite(t_c) else "?" for t_c in (trip.acts_from_c, trip.acts_to_c)
-    )
-    return f"{low} to {high} °C"
 
 
 def _differences(swap: Swap, context: Context) -> Html:

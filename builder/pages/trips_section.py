@@ -26,6 +26,14 @@ def trips_section(budget: Budget, *, figures: bool) -> Html:
     return joined([tag("p", lead), drawn, tag("div", shown, class_="bd-dense")])
 
 
+def acts_text(found: TripBudget) -> str:
+    """Between which true temperatures a trip acts, in words where one of them was not found."""
+    low_c, high_c = found.acts_from_c, found.acts_to_c
+    if np.isnan(low_c + high_c):
+        return "not on every board"
+    return range_text((round(low_c, 2), round(high_c, 2)))
+
+
 def _row(trip: Trip, found: TripBudget, limit_k: float) -> tuple[Any, ...]:
     ends_c = (found.acts_from_c, found.acts_to_c)
     farthest_k = float(np.max(np.abs(np.array(ends_c) - trip.at_c)))
@@ -35,7 +43,7 @@ def _row(trip: Trip, found: TripBudget, limit_k: float) -> tuple[Any, ...]:
         temperature_text(trip.at_c),
         trip.when,
         within,
-        tag("span", range_text((round(ends_c[0], 2), round(ends_c[1], 2))), class_="bd-whole"),
-        f"{number_text(farthest_k, 3)} K",
+        tag("span", acts_text(found), class_="bd-whole"),
+        "–" if np.isnan(farthest_k) else f"{number_text(farthest_k, 3)} K",
         WORDS[found.ok],
     )

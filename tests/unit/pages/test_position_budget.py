@@ -243,3 +243,12 @@ def test_a_trip_left_open_beside_a_limit_that_is_met_is_said_first(tmp_path: Pat
     shown = body(placed(tmp_path, part, trips=[ALARM | {"name": "hot", "at_c": 65, "within_k": 10}]))
     assert "Limit met, but undecided: hot Worst case" in text(shown)
     assert "bd-outcome-open" in shown
+
+
+def test_a_trip_that_some_boards_miss_is_said_in_words(tmp_path: Path) -> None:
+    shown = body(
+        placed(tmp_path, limit_k=0.5, trips=[ALARM | {"at_c": -12}], reference={"volts": 2.0, "tolerance_pct": 0})
+    )
+    assert "Limit exceeded, and too far off: alarm" in text(shown)
+    (row,) = rows(shown, "Thresholds")
+    assert row[4:] == ["not on every board", "–", "too far off"]

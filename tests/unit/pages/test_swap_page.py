@@ -135,3 +135,9 @@ def test_a_review_stands_below_its_position(tmp_path: Path) -> None:
     page = swap_page(place, part, context)
     assert (page.path, page.record) == ("positions/board-rt1/pellworm/px-2.html", place.source.below)
     assert LEAST_POSITION["position"] in page.title
+
+
+def test_a_trip_that_some_boards_miss_is_said_in_words(tmp_path: Path) -> None:
+    context, place, part = reviewed(tmp_path, trips=[TRIPS[0] | {"at_c": -30}], reference={"volts": 2.0})
+    (row,) = rows(swap_page(place, part, context).body(), "True temperatures between")
+    assert row[2:] == ["not on every board", "not on every board", "too far off"]
