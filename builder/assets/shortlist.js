@@ -45,7 +45,8 @@ window.beadroll = window.beadroll || {};
     const value = numberFrom(text, OHMS.includes(field.name));
     if (Number.isNaN(value)) return { value: null, wrong: `“${text}” is not a number` };
     if (value < Number(low) || value > Number(high)) {
-      return { value: null, wrong: `${numberText(value)} is outside ${numberText(Number(low))} to ${numberText(Number(high))}` };
+      const said = Number.isFinite(value) ? numberText(value) : `“${text}”`; // more digits than a number holds
+      return { value: null, wrong: `${said} is outside ${numberText(Number(low))} to ${numberText(Number(high))}` };
     }
     return { value };
   }

@@ -480,6 +480,7 @@ def test_a_figure_that_is_left_out_leaves_the_limit_undecided(opened: Opened) ->
         ("supply_v", "", "supply, V: is needed."),
         ("supply_v", "3.3V", "supply, V: “3.3V” is not a number."),
         ("supply_v", "0", "supply, V: 0 is outside 0.1 to 1000."),
+        ("supply_v", "1e999", "supply, V: “1e999” is outside 0.1 to 1000."),
         ("bits", "40", "bits: 40 is outside 4 to 32."),
         ("bits", "0", "bits: 0 is outside 4 to 32."),
         ("bits", "10.5", "bits: a whole number is needed."),
