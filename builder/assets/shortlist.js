@@ -6,7 +6,7 @@
    With `start` alone, a position's name, it begins with that position's circuit. */
 window.beadroll = window.beadroll || {};
 (() => {
-  const FIRST_SLICE_MS = 14, SLICE_MS = 12, DRAW_EVERY_MS = 250;
+  const FIRST_SLICE_MS = 6, SLICE_MS = 12, DRAW_EVERY_MS = 250;
   const FACTORS = { R: 1, K: 1e3, M: 1e6 };
   const OHMS = ["parallel_ohm", "wire_ohm"];
   const MOST_BITS = 32;
