@@ -78,7 +78,7 @@ def checked_catalog(root: Path, *, today: datetime.date, kept: Kept | None = Non
 def _problems(
     catalog: Catalog, curves: Mapping[str, PartCurve], today: datetime.date, shelf: Shelf
 ) -> tuple[Problem, ...]:
-    of_ledger = _by_file(ledger_findings(catalog, today))
+    of_ledger = _by_file(ledger_findings(catalog, today, shelf))
     found: list[Problem] = []
     records = [*catalog.parts, *catalog.curveless]
     for record, of_figures in zip(records, _findings_of_figures(records, curves, shelf), strict=True):

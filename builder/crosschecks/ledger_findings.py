@@ -8,26 +8,44 @@ from collections.abc import Iterable, Iterator, Sequence
 from itertools import pairwise
 
 from builder.crosschecks.fitting_findings import fitting_findings
+from builder.kept import Shelf
 from builder.ledger import APPROVING, Entry, alternate_ledgers, named_document, part_ledger, replaced_since
 from builder.problems import Problem, clipped, count_text, errors, nearest
-from builder.records import Catalog, LooseTable, PartRecord
+from builder.records import Catalog, PartRecord, Source
 from builder.records.part import DocumentRevision
 
 _FEWEST_WORDS = 2
 
 
-def ledger_findings(catalog: Catalog, today: datetime.date) -> Iterator[Problem]:
-    """What is wrong or doubtful in the ledgers of a catalog, and in who is fitted where."""
-    ledgers = [part_ledger(part) for part in (*catalog.parts, *catalog.curveless)]
-    ledgers += [ledger for place in catalog.positions for ledger in alternate_ledgers(place, catalog)]
-    for ledger in ledgers:
-        for entry in ledger:
-            for check in (_document, _replaced, _reason, _review_before):
-                yield from check(entry)
-            yield from _dates(entry, today)
-        yield from _out_of_order(ledger)
-    yield from fitting_findings(catalog, [entry for ledger in ledgers for entry in ledger if entry.holds])
+def ledger_findings(catalog: Catalog, today: datetime.date, shelf: Shelf) -> Iterator[Problem]:
+    """What is wrong or doubtful in the ledgers of a catalog, and in who is fitted where.
+
+    What the shelf has of a part's own ledger is not looked for again, and the part not fetched.
+    """
+    holding: list[Entry] = []
+    for part in (*catalog.parts, *catalog.curveless):
+        key = f"{part.digest} ledger {today}"
+        if shelf.head(key) is None:
+            ledger = part_ledger(part)
+            names_places = bool(ledger and ledger[-1].standing.only_for)
+            shelf.put(key, None, (tuple(_of_ledger(ledger, today)), names_places))
+        found, names_places = shelf.head(key)
+        yield from found
+        holding += part_ledger(part)[-1:] if names_places else ()
+    for place in catalog.positions:
+        for ledger in alternate_ledgers(place, catalog):
+            yield from _of_ledger(ledger, today)
+            holding += ledger[-1:]
+    yield from fitting_findings(catalog, holding)
     yield from _shared_own_numbers(catalog)
+
+
+def _of_ledger(ledger: Sequence[Entry], today: datetime.date) -> Iterator[Problem]:
+    for entry in ledger:
+        for check in (_document, _replaced, _reason, _review_before):
+            yield from check(entry)
+        yield from _dates(entry, today)
+    yield from _out_of_order(ledger)
 
 
 def _document(entry: Entry) -> Iterator[Problem]:
@@ -128,15 +146,19 @@ def approvals_of_errors(catalog: Catalog, problems: Iterable[Problem]) -> Iterat
     # What is wrong with the ledger itself says so.
     faulty = Counter(p.file for p in errors(problems) if not p.field.startswith("standing"))
     parts = (*catalog.parts, *catalog.curveless)
-    with_tables: list[PartRecord | LooseTable] = [*parts, *catalog.loose_tables]
-    tables = {r.source.file: r.table.file for r in with_tables if r.table}
-    holding = [(r.source, len(r.part.standing) - 1, r.part.standing[-1]) for r in parts if r.part.standing]
-    holding += [(loose.source, loose.index, loose.standing) for loose in catalog.loose_standings]
+    tables = {r.source.file: r.table_file for r in parts}
+    tables |= {loose.source.file: loose.table.file for loose in catalog.loose_tables}
+
+    def count(source: Source) -> int:
+        return sum(faulty[file] for file in {source.file, tables.get(source.file) or source.file})
+
+    # Only what has errors is fetched.
+    holding = [(r.source, len(r.part.standing) - 1, r.part.standing[-1]) for r in parts if r.state and count(r.source)]
+    holding += [(loose.source, loose.index, loose.standing) for loose in catalog.loose_standings if count(loose.source)]
     for source, index, standing in holding:
-        count = sum(faulty[file] for file in {source.file, tables.get(source.file, source.file)})
-        if count and standing.state in APPROVING:
+        if standing.state in APPROVING:
             message = (
                 f"the part is {standing.state} since {standing.on.isoformat()}, and its record has "
-                f"{count_text(count, 'error')}. Correct what is wrong; where a figure changes, append an entry that says who looked at it."
+                f"{count_text(count(source), 'error')}. Correct what is wrong; where a figure changes, append an entry that says who looked at it."
             )
             yield source.problem(("standing", index), "approval-of-errors", message, "warning")
