@@ -4,12 +4,13 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterator, Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from builder.bills.headings import Columns, Role, columns
 from builder.bills.marks import Marks
 from builder.bills.references import references
 from builder.bills.sheet import Row, Sheet
+from builder.bills.spelling import word_key
 from builder.bills.text_file import text_sheets
 from builder.bills.unreadable import Unreadable
 from builder.bills.workbook import COMPOUND_FILE, ZIP, workbook_sheets
@@ -21,12 +22,16 @@ _TITLE_ROWS = 100
 _LONGEST_REFERENCES = 10_000
 _MOST_REFERENCES = 200_000
 _IN_ORDER: tuple[Role, ...] = ("reference", "number", "own-number", "maker", "quantity")
+_NO_NUMBER = frozenset(("", "na", "no", "none"))
 _QUANTITY = re.compile(r"([0-9]{1,9})(?:[.,]0+)?\s?(?:x|×|pcs?\.?|pieces?|ea\.?|stk\.?|stück|pi?è?ces?|uds?\.?)?", re.I)
 
 
 @dataclass(frozen=True)
 class BillLine:
-    """What one line says; `line` is the line of the file, or the row of the sheet."""
+    """What one line says; `line` is the line of the file, or the row of the sheet.
+
+    `seconds` is the line once more for each second source that it names, with the heading of that one's `column`.
+    """
 
     line: int
     references: tuple[str, ...] = ()
@@ -36,11 +41,18 @@ class BillLine:
     quantity: str = ""
     description: str = ""
     is_marked_fitted: bool = True
+    column: str = ""
+    seconds: tuple[BillLine, ...] = ()
 
     @property
     def is_fitted(self) -> bool:
         """Whether anything is fitted: it is not marked otherwise, and the quantity is not 0."""
         return self.is_marked_fitted and self.count != 0
+
+    @property
+    def is_numbered(self) -> bool:
+        """Whether it has a number of its own, beside those of second sources."""
+        return bool(self.number or self.own_number)
 
     @property
     def count(self) -> int | None:
@@ -159,7 +171,7 @@ def _lines(rows: Sequence[Row], read: Columns) -> Iterator[BillLine]:
                 f"more than {_MOST_REFERENCES} references are no bill. Export the bill of one board.", row.line
             )
         # A description without so much as a quantity is a title.
-        if line.references or line.number or line.own_number or (line.quantity and line.description):
+        if line.references or line.is_numbered or line.seconds or (line.quantity and line.description):
             yield line
 
 
@@ -172,4 +184,13 @@ def _line(row: Row, read: Columns, marks: Marks) -> BillLine:
         raise Unreadable(message, row.line)
     description = ", ".join(filter(None, map(row.cell, read.descriptions)))
     fitted = marks.say_fitted(row)
-    return BillLine(row.line, references(reference), number, own_number, maker, quantity, description, fitted)
+    line = BillLine(row.line, references(reference), number, own_number, maker, quantity, description, fitted)
+    seconds = tuple(_seconds(line, row, read))
+    return replace(line, seconds=seconds) if seconds else line
+
+
+def _seconds(line: BillLine, row: Row, read: Columns) -> Iterator[BillLine]:
+    for second in read.seconds:
+        number = row.cell(second.number)
+        if word_key(number) not in _NO_NUMBER:
+            yield replace(line, number=number, own_number="", maker=row.cell(second.maker), column=second.heading)

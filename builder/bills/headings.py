@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping, Sequence
+import re
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from typing import Literal, get_args
 
@@ -87,6 +88,14 @@ _HEADINGS: Mapping[Role, tuple[frozenset[str], ...]] = {
         words("amount count pieces pcs unidades"),
     ),
 }
+# What a heading says of a second source's column: "MPN 2", "Alternate MPN", "2nd source P/N".
+_SECOND = re.compile(
+    r"[0-9]+(?:st|nd|rd|th)?|alternat(?:e|ive|iv|if|ivo|iva)?s?|alt|second(?:ary|source)?|source|substitute|ersatz|zweite?"
+)
+_ANY_NUMBER = _HEADINGS["number"][0] | _PLAIN_NUMBER | _HEADINGS["own-number"][0]
+_SECOND_NUMBER = words(
+    "alternate alternates alternative alternatives alternativen secondsource secondsources 2ndsource zweitquelle"
+)
 _DESCRIPTION = words(
     "description desc descr partdescription value comment comments remark remarks note notes category"
     " beschreibung bezeichnung benennung wert kommentar bemerkung"
@@ -103,10 +112,20 @@ NOT_FITTED = words(
 
 
 @dataclass(frozen=True)
+class SecondSource:
+    """The columns of a second source: its number's heading and place, and the place of its maker, if it has one."""
+
+    heading: str
+    number: int
+    maker: int | None
+
+
+@dataclass(frozen=True)
 class Columns:
     """The columns of a bill by what they hold, counted from 0."""
 
     of: Mapping[Role, int]
+    seconds: tuple[SecondSource, ...]
     descriptions: tuple[int, ...]
     fitted: tuple[int, ...]
     not_fitted: tuple[int, ...]
@@ -120,7 +139,7 @@ class Columns:
     @property
     def count(self) -> int:
         """How many columns were recognised."""
-        return len(self.of) + len(self.descriptions) + len(self.fitted) + len(self.not_fitted)
+        return len(self.of) + len(self.seconds) + len(self.descriptions) + len(self.fitted) + len(self.not_fitted)
 
 
 def columns(headings: Sequence[str], chosen: Mapping[Role, str]) -> Columns | None:
@@ -139,7 +158,22 @@ def columns(headings: Sequence[str], chosen: Mapping[Role, str]) -> Columns | No
             of[role] = found[0]
     others = (_places(keys, kind, of.values()) for kind in (_DESCRIPTION, _FITTED, NOT_FITTED))
     descriptions, fitted, not_fitted = map(tuple, others)
-    return Columns(of, descriptions, fitted, not_fitted, " ".join(doubts))
+    # Who chooses the column of the numbers has the others left alone.
+    seconds = () if "number" in chosen else tuple(_seconds(headings, keys, of.values()))
+    return Columns(of, seconds, descriptions, fitted, not_fitted, " ".join(doubts))
+
+
+def _seconds(headings: Sequence[str], keys: Sequence[str], taken: Iterable[int]) -> Iterator[SecondSource]:
+    """The columns that a heading calls a second source's; number and maker belong together by their count."""
+    plain = {i: _SECOND.sub("", key) for i, key in enumerate(keys) if i not in taken and _SECOND.search(key)}
+    makers = {_counted(keys[i]): i for i, key in plain.items() if key in _HEADINGS["maker"][0]}
+    for i, key in plain.items():
+        if key in _ANY_NUMBER or keys[i] in _SECOND_NUMBER:
+            yield SecondSource(" ".join(headings[i].split()), i, makers.get(_counted(keys[i])))
+
+
+def _counted(key: str) -> str:
+    return "".join(filter(str.isdigit, key))
 
 
 def _places(keys: Sequence[str], meant: frozenset[str], taken: Iterable[int]) -> list[int]:

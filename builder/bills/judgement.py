@@ -38,8 +38,8 @@ class Judgement:
 def restricted_parts(bill: Bill, catalog: Catalog) -> tuple[PartRecord, ...]:
     """The parts on a bill that are approved for some places only: without its board nobody can say whether for this."""
     numbers = Numbers(catalog.parts)
-    parts = (recognised(line, numbers, None).part for line in bill.lines if line.is_fitted)
-    held = {part: standing_of(part) for part in parts if part is not None}
+    items = (recognised(line, numbers, None) for line in bill.lines if line.is_fitted)
+    held = {each.part: standing_of(each.part) for item in items for each in item.sources if each.part is not None}
     return tuple(part for part, standing in held.items() if standing is not None and standing.only_for)
 
 
@@ -70,10 +70,11 @@ def _of_line(
     if not item.line.is_fitted:
         yield from _not_fitted(item, board, holders)
         return
-    if item.part is None:
-        yield from _unknown(item, numbers)
-    else:
-        yield from _of_part(item, item.part, board)
+    for source in item.sources:
+        if source.part is None:
+            yield from _unknown(source, numbers)
+        else:
+            yield from _of_part(source, source.part, board)
     if item.is_thermistor:
         yield from _quantity(item)
     yield from _repeated(item, holders)
@@ -83,7 +84,9 @@ def _found(item: Recognised, kind: Kind, severity: Severity, message: str, where
     line = item.line
     listed = ", ".join(line.references) if where is None else where
     part = item.part.part.part if item.part else None
-    return Finding(line.line, one_line(listed), one_line(line.number or line.own_number), part, kind, severity, message)
+    number = one_line(line.number or line.own_number)
+    told = f"{clipped(line.column)}: {message}" if line.column else message
+    return Finding(line.line, one_line(listed), number, part, kind, severity, told)
 
 
 def _not_fitted(item: Recognised, board: Board | None, holders: Mapping[str, list[Recognised]]) -> Iterator[Finding]:
