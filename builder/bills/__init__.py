@@ -4,7 +4,7 @@ from builder.bills.bill import Bill, BillLine, read_bill
 from builder.bills.boards import Board, UnknownBoard, boards, guessed_board, named_board
 from builder.bills.finding import Finding
 from builder.bills.headings import Role
-from builder.bills.judgement import Judgement, judgement, restricted_parts
+from builder.bills.judgement import Judgement, judgement
 from builder.bills.unreadable import Unreadable
 
 __all__ = [
@@ -21,5 +21,4 @@ __all__ = [
     "judgement",
     "named_board",
     "read_bill",
-    "restricted_parts",
 ]

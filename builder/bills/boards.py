@@ -65,17 +65,19 @@ def named_board(known: Sequence[Board], name: str) -> Board:
 
 
 def guessed_board(known: Sequence[Board], references: Iterable[str]) -> Board | None:
-    """The one board that has all the references that any board has; None where no board has any.
+    """The one board that has all the references that any board has; None where there are no boards.
 
     Raises
     ------
     UnknownBoard
-        Several boards have them, or no single one has them all.
+        Several boards have them, no single one has them all, or no board has any.
     """
+    if not known:
+        return None
     anywhere = {name for board in known for name in board.at}
     wanted = {name.casefold() for name in references} & anywhere
     if not wanted:
-        return None
+        raise UnknownBoard("no reference of the bill is one of the catalog's positions.")
     found = [board for board in known if wanted <= board.at.keys()]
     if len(found) == 1:
         return found[0]

@@ -13,7 +13,6 @@ from builder.bills.numbers import Numbers, is_maker
 from builder.bills.placement import placement
 from builder.bills.recognition import Recognised, recognised
 from builder.bills.spelling import word_key
-from builder.ledger import standing_of
 from builder.problems import clipped, count_text, one_line
 from builder.records import Catalog, PartRecord
 
@@ -33,14 +32,6 @@ class Judgement:
     def count(self, severity: Severity) -> int:
         """How many findings have a severity."""
         return sum(finding.severity == severity for finding in self.findings)
-
-
-def restricted_parts(bill: Bill, catalog: Catalog) -> tuple[PartRecord, ...]:
-    """The parts on a bill that are approved for some places only: without its board nobody can say whether for this."""
-    numbers = Numbers(catalog.parts)
-    items = (recognised(line, numbers, None) for line in bill.lines if line.is_fitted)
-    held = {each.part: standing_of(each.part) for item in items for each in item.sources if each.part is not None}
-    return tuple(part for part, standing in held.items() if standing is not None and standing.only_for)
 
 
 def judgement(bill: Bill, catalog: Catalog, board: Board | None) -> Judgement:

@@ -20,7 +20,6 @@ from builder.bills import (
     judgement,
     named_board,
     read_bill,
-    restricted_parts,
 )
 from builder.bills.bill import LARGEST_BYTES
 from builder.commands import reading
@@ -115,7 +114,4 @@ def _board(bill: Bill, catalog: Catalog, name: str | None) -> Board | None:
         raise click.UsageError(str(unknown) if name else f"{unknown} {_NAME_IT}") from None
     if found is not None and not bill.has_references:
         raise click.UsageError("no column of the bill is headed as references. Name it with --reference HEADING.")
-    restricted = restricted_parts(bill, catalog) if known and found is None else ()
-    if restricted:
-        raise click.UsageError(f"{restricted[0].name} is approved for some places only. {_NAME_IT}")
     return found

@@ -114,20 +114,28 @@ def test_the_board_is_found_by_its_references_or_must_be_named(run):
     )
 
 
-def test_a_part_for_some_places_only_needs_the_board(run):
-    bill = HEADINGS + "TH1,NV10-3435,,,1\n"
-    assert run(bill) == (2, "", f"{USAGE}Nordvell Elements NV10-3435 is approved for some places only. {NAME_IT}\n")
-    code, out, _ = run(bill, "--no-board")
+def test_a_bill_without_any_position_s_reference_needs_the_board_or_no_board(run):
+    for bill in (HEADINGS + "TH1,YC2-103H,,,1\n", "MPN\nYC2-103H\n"):
+        message = f"no reference of the bill is one of the catalog's positions. {NAME_IT}"
+        assert run(bill) == (2, "", f"{USAGE}{message}\n")
+
+
+def test_a_part_for_some_places_only_blocks_without_a_board(run):
+    code, out, _ = run(HEADINGS + "TH1,NV10-3435,,,1\n", "--no-board")
     assert (code, out.splitlines()[1].split()[:3]) == (1, ["2", "blocks", "restricted"])
 
 
-def test_without_positions_the_parts_alone_are_looked_at(run):
-    assert run(HEADINGS + "TH1,YC2-103H,,,1\n")[:2] == (
+def test_without_positions_the_parts_alone_are_looked_at(run, tmp_path):
+    answer = (
         0,
         "line  severity  finding   reference  number\n"
         "   2  ok        approved  TH1        YC2-103H  YC2-103H is approved since 2026-04-07.\n"
         "No board named: 1 line of thermistors, 0 other lines; nothing blocks, 0 warnings.\n",
     )
+    bill = HEADINGS + "TH1,YC2-103H,,,1\n"
+    assert run(bill, "--no-board")[:2] == answer
+    shutil.copytree(ROOT / "parts", tmp_path / "parts", ignore=shutil.ignore_patterns("boards"))
+    assert run(bill, records="parts")[:2] == answer
 
 
 @pytest.mark.parametrize(
@@ -194,7 +202,7 @@ def test_a_folder_and_a_file_that_is_not_there_exit_2(tmp_path):
 
 
 def test_a_bill_is_read_from_standard_input():
-    command = [sys.executable, "-c", "from builder.cli import main; main()", "bom", "-"]
+    command = [sys.executable, "-c", "from builder.cli import main; main()", "bom", "-", "--no-board"]
     for bill, code, said in (
         (f"{HEADINGS}TH1,YC2-103H,,,1\n", 0, ""),
         ("", 2, "standard input: it is empty. Export the bill again.\n"),

@@ -3,7 +3,7 @@
 import pytest
 from factory import changed, part, position
 
-from builder.bills import UnknownBoard, boards, guessed_board, judgement, named_board, read_bill, restricted_parts
+from builder.bills import UnknownBoard, boards, guessed_board, judgement, named_board, read_bill
 from builder.bills.numbers import Numbers
 
 STANDING = "standing:\n  - {state: proposed, on: 2026-01-12, by: sensors, because: first samples}\n"
@@ -380,7 +380,7 @@ def test_a_name_of_several_boards_is_told(records):
 def test_the_board_is_the_one_that_has_all_the_references_that_any_board_has(catalog):
     known = boards(catalog)
     assert guessed_board(known, ["RT1", "rt2", "R9"]).short_name == "coolbox-main"
-    assert guessed_board(known, ["R1", "R9"]) is None
+    assert guessed_board((), ["RT1"]) is None
 
 
 @pytest.mark.parametrize(
@@ -388,18 +388,11 @@ def test_the_board_is_the_one_that_has_all_the_references_that_any_board_has(cat
     [
         (["RT1"], "RT1 may stand on several boards: charger, coolbox-main."),
         (["RT2", "RT9"], "RT2, RT9 may stand on no single board of the catalog."),
+        (["R1", "R9"], "no reference of the bill is one of the catalog's positions."),
+        ([], "no reference of the bill is one of the catalog's positions."),
     ],
 )
 def test_a_board_is_not_guessed_where_several_may_be_meant(catalog, references, message):
     with pytest.raises(UnknownBoard) as unknown:
         guessed_board(boards(catalog), references)
     assert str(unknown.value) == message
-
-
-def test_parts_for_some_places_only_are_known_before_the_board_is(catalog):
-    def restricted(lines):
-        bill = read_bill(f"{HEADINGS}{lines}".encode(), name="bill.csv")
-        return [part.name for part in restricted_parts(bill, catalog)]
-
-    assert restricted("X1;TB3A-103J38\nX2;TB3A-103F38\n") == ["Tarnbrook Ceramics TB3A-103J38"]
-    assert restricted("X1;TB3A-103J38;;;;;DNP\n") == []
