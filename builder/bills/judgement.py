@@ -135,7 +135,7 @@ def _of_part(item: Recognised, part: PartRecord, board: Board | None) -> Iterato
         yield _found(item, "own-number-differs", "warning", f"{shown} Correct it in the bill or in the record.")
     if line.maker and not is_maker(line.maker, part):
         shown = f"{clipped(line.maker)} is not the maker on record, {part.part.maker}."
-        yield _found(item, "maker-differs", "warning", f"{shown} Check whose part it is.")
+        yield _found(item, "maker-differs", "blocks", f"{shown} Fit that maker's part, or correct the bill.")
     for name in line.references or ("",):
         yield _found(item, *placement(part, name, board), name)
 

@@ -2,14 +2,22 @@
 
 from __future__ import annotations
 
+import re
 from collections import defaultdict
 from collections.abc import Iterable, Iterator
 
+from builder.bills.headings import words
 from builder.bills.spelling import number_key, word_key
 from builder.records import PartRecord
 
 # Shorter numbers are one slip away from too many others, longer ones are no numbers.
 _SHORTEST_ALIKE, _LONGEST_ALIKE = 5, 80
+_BETWEEN_WORDS = re.compile(r"[\s,_\-\u2010-\u2015]+")
+_ARTICLES = words("the die der das la le el")
+_LEGAL_FORMS = words(
+    "ab ag as bv co company corp corporation gmbh inc incorporated kg kgaa limited llc llp ltd nv oy oyj plc pte pty"
+    " sa sarl sas se sl spa srl"
+)
 _BEFORE_A_SUFFIX = "-/_.,+#( "
 
 
@@ -73,13 +81,15 @@ def _shortened(key: str) -> Iterator[str]:
 
 
 def is_maker(name: str, part: PartRecord) -> bool:
-    """Whether a maker's name on a bill may be the record's: one of the two has the first word of the other.
+    """Whether a maker's name on a bill is the record's, whole or its first word; a name without letters says nothing.
 
-    A later word, such as what kind of company it is, is shared by many.
+    Case, spaces, punctuation, an article and the legal form do not matter; a later word is shared by many makers.
     """
-    typed, known = _name_words(name), _name_words(part.part.maker)
-    return bool(typed and known) and (typed[0] in known or known[0] in typed)
+    return not (typed := _spellings(name)) or bool(typed & _spellings(part.part.maker))
 
 
-def _name_words(name: str) -> list[str]:
-    return [key for word in name.split() if (key := word_key(word))]
+def _spellings(name: str) -> set[str]:
+    """The first word of a maker's name and its words in one, without article and legal form."""
+    keys = [key for word in _BETWEEN_WORDS.split(name) if (key := word_key(word)) and key not in _ARTICLES]
+    plain = keys[:1] + [key for key in keys[1:] if key not in _LEGAL_FORMS]
+    return {plain[0], "".join(plain)} if plain else set()
