@@ -153,8 +153,8 @@ def _slips(ledger: _Ledger) -> Iterator[Problem]:
 
 
 def _gone(ledger: _Ledger) -> Iterator[Problem]:
-    """A whole ledger that is no longer there; one that only ever proposed may go."""
-    if any(entry.state != "proposed" for entry in ledger.before):
+    """A whole ledger that is no longer there; one without entries may go."""
+    if ledger.before:
         entries = ", ".join(_entry(entry) for entry in ledger.before)
         is_withdrawn = ledger.before[-1].state == "withdrawn"
         cure = "Put it back." if is_withdrawn else "Put it back, and append an entry that withdraws it."
@@ -166,10 +166,12 @@ def _gone(ledger: _Ledger) -> Iterator[Problem]:
 
 def _edited_or_removed(ledger: _Ledger, now: Standings) -> Iterator[Problem]:
     before = ledger.before
-    for _, first, end, first_now, end_now in SequenceMatcher(None, before, now, autojunk=False).get_opcodes():
+    missing = Counter(before) - Counter(now)
+    for what, first, end, first_now, end_now in SequenceMatcher(None, before, now, autojunk=False).get_opcodes():
         for i, at in zip(range(first, end), count(first_now)):
-            if before[i] in now:
+            if what == "equal" or not missing[before[i]]:
                 continue
+            missing[before[i]] -= 1
             if at < end_now:
                 message = f"the entry {_entry(before[i])} stood otherwise in revision {ledger.revision}: {_edits(before[i], now[at])}. {_APPEND}"
                 yield ledger.problem((at,), "ledger-edited", message)

@@ -79,13 +79,40 @@ def test_how_an_entry_is_typed_may_change(kept):
     assert findings(first) == []
 
 
-def test_a_part_that_is_gone_with_its_approval_is_told(kept):
+def test_a_part_that_is_gone_with_its_ledger_is_told_whatever_stood_there(kept):
     first = kept.commit("one", x=approved(), y=other_part())
     kept.write(x=None, y=None)
     assert findings(first) == [
         f"parts/x.yaml:11: standing: the record of Maker X-103 is gone, whose ledger stood in revision {first[:10]}: "
         "proposed on 2026-01-12 by sensors, approved on 2026-02-10 by components. "
-        "Put it back, and append an entry that withdraws it."
+        "Put it back, and append an entry that withdraws it.",
+        f"parts/y.yaml:11: standing: the record of Maker Y-103 is gone, whose ledger stood in revision {first[:10]}: "
+        "proposed on 2026-01-12 by sensors. Put it back, and append an entry that withdraws it.",
+    ]
+
+
+def test_a_part_that_nobody_has_decided_about_may_go(kept):
+    text = other_part()
+    first = kept.commit("one", x=part(), y=text[: text.index("standing:")])
+    kept.write(y=None)
+    assert findings(first) == []
+
+
+def test_a_position_that_is_gone_is_told_for_each_ledger_of_its_alternates(kept):
+    first = kept.commit("one", x=part(), y=other_part(), place=position())
+    kept.write(place=None)
+    assert findings(first) == [
+        "parts/place.yaml:16: alternates: the alternate Y-103 at board/RT1 is gone, whose ledger stood in revision "
+        f"{first[:10]}: proposed on 2026-01-13 by purchasing. Put it back, and append an entry that withdraws it."
+    ]
+
+
+def test_one_of_two_equal_entries_that_was_removed_is_told(kept):
+    first = kept.commit("one", x=appended(part(), APPROVED, APPROVED))
+    kept.write(x=approved())
+    assert findings(first) == [
+        "parts/x.yaml:11: standing: the entry approved on 2026-02-10 by components stood in revision "
+        f"{first[:10]} and is gone. Restore it, and append what holds now as a new entry."
     ]
 
 
@@ -145,7 +172,8 @@ def test_an_alternate_that_is_the_fitted_part_now_has_left_the_list_rightly(kept
 
 
 def test_an_alternate_whose_part_left_the_catalog_is_still_in_its_list(kept):
-    first = kept.commit("one", x=part(), y=other_part(), place=appended(position(), APPROVED))
+    text = other_part()
+    first = kept.commit("one", x=part(), y=text[: text.index("standing:")], place=appended(position(), APPROVED))
     kept.write(y=None)
     assert findings(first) == []
 
@@ -179,11 +207,14 @@ def test_of_a_part_with_an_approval_of_its_own_that_one_signs_for_its_alternates
     assert findings(first) == []
 
 
-def test_an_alternate_that_was_never_approved_may_go(kept):
+def test_an_alternate_that_is_gone_though_only_proposed_is_told(kept):
     first = kept.commit("one", x=part(), y=other_part(), place=position())
     text = position()
     kept.write(place=text[: text.index("alternates:")])
-    assert findings(first) == []
+    assert findings(first) == [
+        "parts/place.yaml:1: alternates: the alternate Y-103 at board/RT1 is gone, whose ledger stood in revision "
+        f"{first[:10]}: proposed on 2026-01-13 by purchasing. Put it back, and append an entry that withdraws it."
+    ]
 
 
 def test_an_entry_that_came_and_went_in_between_is_told(kept):
