@@ -3,7 +3,8 @@
 
    beadroll.unpackedCurve(text, extends)            a part's curve, or null where it has none
    beadroll.chain(place)                            a position: what of it is the same for every part
-   chain.best(part, guessOhm)                       { fixedOhm, worstK, atC } of a part { curve, dissipationMwPerK }
+   chain.best(part, guessOhm)                       { fixedOhm, worstK, atC, warmestK } of a part
+                                                    { curve, dissipationMwPerK }; warmestK: how far its body is warmed
 
    Two corners of the limits are enough, where Python tries all: each source pushes the reading one way. Only the supply
    may push both ways (it warms the sensor and weighs the leakage), and where a sensor is warmed by much, the resistors. */
@@ -376,6 +377,13 @@ window.beadroll = window.beadroll || {};
       return firstOhm * (1 + perK * (firstK - this.warmingK(firstOhm)) / slope);
     }
 
+    /* How far the body of the nominal board is warmed. */
+    nominalWarmingK(j) {
+      if (!this.isKnown[j]) this.know(j);
+      this.set(0, 0, 0, 0);
+      return this.warmingK(this.bodyOhm(j, 1));
+    }
+
     /* d(body − T − warming)/d(body) */
     balance(rOhm, warmingK, perK) {
       return 1 + warmingK * (this.seenOhm - rOhm) / (this.seenOhm + rOhm) * perK;
@@ -501,8 +509,10 @@ window.beadroll = window.beadroll || {};
       const start = this.start(guessOhm);
       this.tried(start);
       for (const way of TIMES) this.walk(start, way);
-      const { found } = this;
-      return found.worstK < Infinity ? found : { fixedOhm: NaN, worstK: NaN, atC: NaN };
+      const { found, board } = this;
+      if (found.worstK === Infinity) return { fixedOhm: NaN, worstK: NaN, atC: NaN };
+      board.fit(found.fixedOhm);
+      return { ...found, warmestK: Math.max(...this.chain.tC.map((_, j) => board.nominalWarmingK(j))) };
     }
 
     /* A value that promises much: the guess or one of a few, and from there downhill. */

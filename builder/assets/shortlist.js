@@ -10,6 +10,7 @@ window.beadroll = window.beadroll || {};
   const FACTORS = { R: 1, K: 1e3, M: 1e6 };
   const OHMS = ["parallel_ohm", "wire_ohm"];
   const MOST_BITS = 32;
+  const WARMTH_COUNTS = 0.1; // from this share of the limit on, as in circuit/gaps.py
 
   /* ---- Texts, as Python writes them ---- */
 
@@ -188,7 +189,8 @@ window.beadroll = window.beadroll || {};
     if (lifecycle && !["active", "obsolete"].includes(part.lifecycle)) yield `the part is ${part.lifecycle}`;
   }
 
-  /* Figures that the form leaves empty, as circuit/gaps.py names them; whether one of them decides. */
+  /* Figures that the form leaves empty, as circuit/gaps.py names them; whether one of them decides of every part, and
+     whether one does of parts that are warmed by much. */
   function gapsOf(values) {
     const isOwn = values.reference === "own";
     const fields = [
@@ -202,12 +204,15 @@ window.beadroll = window.beadroll || {};
       ["gain_pct", "adc.gain_pct"],
       ["nonlinearity_lsb", "adc.nonlinearity_lsb"],
     ].filter(([name]) => values[name] === null);
-    // Of a ratiometric reading the supply changes the self-heating only.
-    const decide = fields.some(([name]) => isOwn || name !== "supply_tolerance_pct");
-    return { fields: fields.map(([, field]) => field), decide };
+    const onlyWarms = ([name]) => !isOwn && name === "supply_tolerance_pct";
+    return {
+      fields: fields.map(([, field]) => field),
+      decide: fields.some((one) => !onlyWarms(one)),
+      decideWhereWarm: fields.some(onlyWarms),
+    };
   }
 
-  function verdict(part, worstK, values, gaps, tC) {
+  function verdict(part, { worstK, warmestK }, values, gaps, tC) {
     const covers = (t) => part.covered.some(([low, high]) => t >= low && t <= high);
     const ofPart = part.lacking.length && !tC.every(covers) ? [...part.lacking] : [];
     if (part.dissipationMwPerK === null) ofPart.push("limits.dissipation_mw_per_k");
@@ -217,7 +222,9 @@ window.beadroll = window.beadroll || {};
     ];
     const within = worstK <= values.limit_k;
     // Self-heating reads high: without it a reading too low is not proven.
-    const isOpen = within ? gaps.decide || ofPart.length + asked.length > 0 : part.dissipationMwPerK === null;
+    const warms = gaps.decideWhereWarm && warmestK > WARMTH_COUNTS * values.limit_k;
+    const lacks = ofPart.length + asked.length > 0 || warms;
+    const isOpen = within ? gaps.decide || lacks : part.dissipationMwPerK === null;
     return { meets: isOpen ? null : within, missing: [...gaps.fields, ...ofPart, ...asked] };
   }
 
@@ -259,7 +266,7 @@ window.beadroll = window.beadroll || {};
       const { fixedOhm, worstK, atC, unread } = part.best;
       if (unread) return this.out.push({ part, because: [unread] });
       const found = { part, fixedOhm, worstK, atC, marginK: values.limit_k - worstK };
-      return this.ranked.push({ ...found, ...verdict(part, worstK, values, this.gaps, chain.tC) });
+      return this.ranked.push({ ...found, ...verdict(part, part.best, values, this.gaps, chain.tC) });
     }
 
     /* The best resistor of the circuit before is where to look first. */

@@ -83,25 +83,29 @@ def budget(position: Position, fitted: Thermistor, firmware_curve: PartCurve, st
     at_rows = np.searchsorted(t_c, rows_c)
     largest_k = np.maximum(-worst_min_k, worst_max_k)
     worst = int(largest_k.argmax())  # the first that is not a number, if there is one
-    known, spans = gaps(chain, t_c), trip_spans(chain)
+    known, spans = gaps(chain, t_c, position.limit_k), trip_spans(chain)
     # A trip may stand outside the range, where less of the part is stated.
-    of_trips = [gaps(chain, np.array([span.trip.at_c])) for span in spans]
+    of_trips = [gaps(chain, np.array([span.trip.at_c]), _allowed_k(span, position)) for span in spans]
     return Budget(
         position,
         budget_rows(chain, rows_c, worst_min_k[at_rows], worst_max_k[at_rows]),
         float(largest_k[worst]),
         float(t_c[worst]),
         known.verdict(bool(largest_k[worst] <= position.limit_k)),
-        tuple(_trip(span, position.limit_k, own) for span, own in zip(spans, of_trips, strict=True)),
+        tuple(_trip(span, _allowed_k(span, position), own) for span, own in zip(spans, of_trips, strict=True)),
         *margins_codes(chain, lowest.code, highest.code),
         tuple(dict.fromkeys(field for each in (known, *of_trips) for field in each.fields)),
         (*_range_notes(chain, t_c, np.isnan(largest_k)), *_trip_notes(spans, position.range_c)),
     )
 
 
-def _trip(span: TripSpan, limit_k: float, known: Gaps) -> TripBudget:
+def _allowed_k(span: TripSpan, position: Position) -> float:
+    return span.trip.within_k or position.limit_k
+
+
+def _trip(span: TripSpan, allowed_k: float, known: Gaps) -> TripBudget:
     trip = span.trip
-    ok = known.verdict(span.off_k <= (trip.within_k or limit_k))
+    ok = known.verdict(span.off_k <= allowed_k)
     return TripBudget(trip.name, trip.at_c, span.acts_from_c, span.acts_to_c, ok)
 
 

@@ -14,20 +14,26 @@ from builder.units import Array
 class Gaps:
     """The fields that lack a figure, and what that leaves open.
 
-    `one_way` says that the error can only be larger than computed; `decide` that a limit met as computed may not be.
+    A limit that is met as computed may not be: `of_position` says so of whichever part is fitted, `of_part` of this one.
+    `one_way` says that the error can only be larger than computed.
     """
 
     fields: tuple[str, ...]
-    decide: bool
+    of_position: bool
+    of_part: bool
     one_way: bool
 
     def verdict(self, within: bool) -> bool | None:
         """Whether a limit is met, from whether it is as computed; None where the gaps leave it open."""
-        open_question = self.decide if within else not self.one_way
+        open_question = self.of_position or self.of_part if within else not self.one_way
         return None if open_question else within
 
 
-def gaps(chain: Chain, t_c: Array) -> Gaps:
+# A supply within ±10 %, of which nobody speaks, changes the warmth by a fifth: that is then below a fiftieth of the limit.
+_WARMTH_COUNTS = 0.1
+
+
+def gaps(chain: Chain, t_c: Array, limit_k: float) -> Gaps:
     """What is not stated.
 
     Parameters
@@ -36,18 +42,29 @@ def gaps(chain: Chain, t_c: Array) -> Gaps:
         The position with its thermistor; no unit.
     t_c : array
         True temperatures at which the reading matters. [°C]
+    limit_k : float
+        How far off it may be there. [K]
 
     Returns
     -------
     Gaps
         Fields of the position, then of the part, by their place in the record.
     """
-    of_position = [source for source in chain.sources if source.limit is None]
+    missing = [source for source in chain.sources if source.limit is None]
     of_part = tuple(_of_part(chain.thermistor, t_c))
-    fields = (*(source.field for source in of_position), *of_part)
+    warms = any(source.only_warms for source in missing) and _warming_k(chain, t_c) > _WARMTH_COUNTS * limit_k
     # Self-heating reads high: without it a reading too low is not proven.
     one_way = chain.thermistor.dissipation_mw_per_k is not None
-    return Gaps(fields, bool(of_part) or any(source.decides for source in of_position), one_way)
+    return Gaps(
+        (*(source.field for source in missing), *of_part),
+        of_position=any(not source.only_warms for source in missing),
+        of_part=bool(of_part) or warms,
+        one_way=one_way,
+    )
+
+
+def _warming_k(chain: Chain, t_c: Array) -> float:
+    return float((chain.signal(t_c).body_c - t_c).max())
 
 
 def _of_part(thermistor: Thermistor, t_c: Array) -> Iterator[str]:

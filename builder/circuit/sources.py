@@ -34,13 +34,13 @@ Offsets = Mapping[str, Array]
 class Source:
     """One limit ±: a share of the value, or in the unit of the record's field. None: the record does not state it.
 
-    `decides` is False where a circuit is made so that the limit hardly shows.
+    `only_warms` is True of what shows in nothing but the body's warmth.
     """
 
     name: str
     field: str
     limit: float | None
-    decides: bool = True
+    only_warms: bool = False
 
 
 def sources(position: Position) -> tuple[Source, ...]:
@@ -52,10 +52,7 @@ def sources(position: Position) -> tuple[Source, ...]:
         Source("fixed resistor", "circuit.fixed.tolerance_pct", _share(fixed.tolerance_pct)),
         Source("fixed resistor tempco", "circuit.fixed.tempco_ppm_per_k", _drift(position)),
         *_parallel(position),
-        # Of a ratiometric reading the supply changes the self-heating only.
-        Source(
-            "supply", "circuit.supply_tolerance_pct", _share(position.circuit.supply_tolerance_pct), own is not None
-        ),
+        Source("supply", "circuit.supply_tolerance_pct", _share(position.circuit.supply_tolerance_pct), own is None),
         *([Source("reference", "reference.tolerance_pct", _share(own.tolerance_pct))] if own else []),
         Source("leakage", "adc.leakage_na", None if adc.leakage_na is None else adc.leakage_na * 1e-9),
         Source("offset", "adc.offset_lsb", adc.offset_lsb),

@@ -110,7 +110,7 @@ def _judged(place: Position, part: PartRecord, series: Series) -> _Found | tuple
     if math.isinf(worst_k):
         return (f"with no resistor of {series} every board has a reading over {range_text(place.range_c)}",)
     chain = Chain(place, fitted, fitted.made.curve, fixed_ohm)
-    known = gaps(chain, whole_steps_c(place.range_c, CLOSE_K))
+    known = gaps(chain, whole_steps_c(place.range_c, CLOSE_K), place.limit_k)
     asked = tuple(field for reason in reasons for field in reason.missing)
     meets = known.verdict(worst_k <= place.limit_k)
     return _Found(fixed_ohm, worst_k, None if asked and meets else meets, (*known.fields, *asked))

@@ -474,6 +474,15 @@ def test_a_figure_that_is_left_out_leaves_the_limit_undecided(opened: Opened) ->
     assert re.fullmatch(r"0 of 56 parts within ±1 K, \d+ undecided; \d+ ranked, \d+ out\.", short.said())
 
 
+def test_an_unstated_supply_decides_where_the_part_is_warmed_by_much(opened: Opened) -> None:
+    place = next(one for one in DEMO.catalog.positions if one.position.position == "coolbox-main/RT1")
+    circuit = place.position.circuit.model_copy(update={"supply_v": 12.0, "supply_tolerance_pct": None})
+    position = rankable(place.position).model_copy(update={"circuit": circuit, "limit_k": 4.0})
+    told = opened(fragment(position)).table()
+    check_against(told, shortlist(PositionRecord(position, place.source), DEMO.catalog))
+    assert {row["meets_limit"] for row in told} >= {"yes", "undecided"}
+
+
 @pytest.mark.parametrize(
     ("name", "text", "said"),
     [
