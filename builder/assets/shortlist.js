@@ -225,7 +225,8 @@ window.beadroll = window.beadroll || {};
     const warms = gaps.decideWhereWarm && warmestK > WARMTH_COUNTS * values.limit_k;
     const lacks = ofPart.length + asked.length > 0 || warms;
     const isOpen = within ? gaps.decide || lacks : part.dissipationMwPerK === null;
-    return { meets: isOpen ? null : within, missing: [...gaps.fields, ...ofPart, ...asked] };
+    const meets = isOpen ? null : within;
+    return { meets, missing: [...gaps.fields, ...ofPart, ...asked], isIncomplete: isOpen && lacks };
   }
 
   /* ---- Ranking, in slices that leave the page free ---- */
@@ -286,7 +287,7 @@ window.beadroll = window.beadroll || {};
 
     sorted() {
       const { ranked } = this;
-      ranked.sort((a, b) => a.worstK - b.worstK);
+      ranked.sort((a, b) => a.isIncomplete - b.isIncomplete || a.worstK - b.worstK);
       ranked.forEach((one, i) => { one.place = i + 1; });
       return ranked;
     }

@@ -23,7 +23,8 @@ from builder.units import range_text
 class Ranked:
     """A part that can be fitted: its best fixed resistor, its worst case with that, and what is left to the limit.
 
-    `meets` is None where a figure is missing that decides; `missing` names the fields.
+    `meets` is None where a figure is missing that decides; `missing` names the fields. `is_incomplete` where that is so of
+    this part and not of every part there: its worst case is then not to be held against those of others.
     """
 
     part: PartRecord
@@ -32,6 +33,7 @@ class Ranked:
     margin_k: float
     meets: bool | None
     missing: tuple[str, ...]
+    is_incomplete: bool
 
 
 @dataclass(frozen=True, eq=False)
@@ -44,7 +46,10 @@ class Excluded:
 
 @dataclass(frozen=True, eq=False)
 class Shortlist:
-    """The parts of a catalog at a position, the smallest worst case first, and those that are out."""
+    """The parts of a catalog at a position, and those that are out.
+
+    The smallest worst case stands first, but parts that are incomplete stand behind all others.
+    """
 
     position: PositionRecord
     series: Series
@@ -75,10 +80,12 @@ def shortlist(position: PositionRecord, catalog: Catalog, series: Series = "E96"
     for part, found in zip(parts, shared_out(partial(_judgements, place, series), parts), strict=True):
         if isinstance(found, _Found):
             margin_k = place.limit_k - found.worst_k
-            ranked.append(Ranked(part, found.fixed_ohm, found.worst_k, margin_k, found.meets, found.missing))
+            ranked.append(
+                Ranked(part, found.fixed_ohm, found.worst_k, margin_k, found.meets, found.missing, found.is_incomplete)
+            )
         else:
             excluded.append(Excluded(part, found))
-    ranked.sort(key=lambda one: one.worst_k)
+    ranked.sort(key=lambda one: (one.is_incomplete, one.worst_k))
     return Shortlist(position, series, tuple(ranked), tuple(excluded))
 
 
@@ -90,6 +97,7 @@ class _Found:
     worst_k: float
     meets: bool | None
     missing: tuple[str, ...]
+    is_incomplete: bool
 
 
 def _judgements(place: Position, series: Series, parts: Sequence[PartRecord]) -> list[_Found | tuple[str, ...]]:
@@ -113,4 +121,7 @@ def _judged(place: Position, part: PartRecord, series: Series) -> _Found | tuple
     known = gaps(chain, whole_steps_c(place.range_c, CLOSE_K), place.limit_k)
     asked = tuple(field for reason in reasons for field in reason.missing)
     meets = known.verdict(worst_k <= place.limit_k)
-    return _Found(fixed_ohm, worst_k, None if asked and meets else meets, (*known.fields, *asked))
+    if asked and meets:
+        meets = None
+    is_incomplete = meets is None and (known.of_part or bool(asked))
+    return _Found(fixed_ohm, worst_k, meets, (*known.fields, *asked), is_incomplete)

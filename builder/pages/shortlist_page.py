@@ -128,6 +128,6 @@ _RESULT = Html("""\
 </table>
 <p class="bd-short-assumed">The worst case has every source of error at the end that pushes the reading the same way, looked
 for every 0.5 K over the range, with firmware made for each part and its resistor. The fixed resistor is the value of the
-series that makes it smallest. A figure that is left out leaves the limit undecided, unless it is missed anyway. Trips are
-not looked at. See <a href="method.html#fixed-resistor-and-shortlist">Method</a>.</p>
+series that makes it smallest. A figure that is left out leaves the limit undecided, unless it is missed anyway; a part that lacks one itself
+stands behind all others. Trips are not looked at. See <a href="method.html#fixed-resistor-and-shortlist">Method</a>.</p>
 """)

@@ -214,6 +214,9 @@ def check_against(told: list[dict[str, str]], ours: Shortlist) -> None:
     """The page's rows against Python's: the same parts, worst cases, verdicts and reasons."""
     expected = {str(row["part"]): row for row in csv_rows(ours)}
     assert {row["part"] for row in told} == set(expected)
+    incomplete = {one.part.part.part for one in ours.ranked if one.is_incomplete}
+    places = [(row["part"] in incomplete, float(row["worst_k"])) for row in told if not row["because"]]
+    assert places == sorted(places)
     for row in told:
         wanted = expected[row["part"]]
         assert row["because"] == wanted.get("because", ""), row["part"]

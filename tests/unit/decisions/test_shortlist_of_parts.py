@@ -105,3 +105,36 @@ def test_limit_that_no_part_can_meet_ranks_them_all_the_same():
 def test_empty_catalog_gives_an_empty_list():
     found = listed()
     assert (found.ranked, found.excluded) == ((), ())
+
+
+def test_part_whose_own_missing_figure_decides_stands_behind_all_others():
+    rated = {"resistance_ohm": "10k"}
+    rough_b = [{"between_c": [25, 85], "b_k": 3950, "tolerance_pct": 2}]
+    lacking = part("C", rated=rated, b_values=rough_b), part("D", rated=rated)
+    rough = part("A", rated={"resistance_ohm": "10k", "tolerance_pct": 5})
+    found = listed(*lacking, rough, part("B"))
+    assert names(found) == ["B", "A", "D", "C"]
+    assert [one.meets for one in found.ranked] == [True, False, None, None]
+    assert found.ranked[2].worst_k < found.ranked[0].worst_k
+
+
+def test_requirement_that_cannot_be_judged_stands_behind_too():
+    found = listed(
+        part("A", limits={"operating_c": None}), part("B", rated={"resistance_ohm": "10k", "tolerance_pct": 2})
+    )
+    assert names(found) == ["B", "A"]
+
+
+def test_figure_that_the_position_lacks_puts_no_part_behind():
+    fine, rough = part("A"), part("B", rated={"resistance_ohm": "10k", "tolerance_pct": 5})
+    found = listed(rough, fine, adc={"leakage_na": None})
+    assert [(one.part.part.part, one.meets) for one in found.ranked] == [("A", None), ("B", False)]
+
+
+def test_supply_that_decides_of_a_warmed_part_puts_it_behind():
+    warm = part("A", limits={"dissipation_mw_per_k": 0.5})
+    cool = part("B", rated={"resistance_ohm": "10k", "tolerance_pct": 3}, limits={"dissipation_mw_per_k": 20})
+    unstated = {"supply_v": 5, "supply_tolerance_pct": None}
+    found = listed(warm, cool, circuit=unstated)
+    assert [(one.part.part.part, one.meets) for one in found.ranked] == [("B", True), ("A", None)]
+    assert found.ranked[1].worst_k < found.ranked[0].worst_k

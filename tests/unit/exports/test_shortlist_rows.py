@@ -25,9 +25,9 @@ def part(number: str) -> PartRecord:
 def found():
     place = PositionRecord(real_position(range_c=[0, 60], limit_k=2.0), Source("p.yaml", "p.yaml", {}))
     ranked = (
-        Ranked(part("A"), 10700.0, 1.25, 0.75, True, ()),
-        Ranked(part("B"), 4.99e4, 1.5, 0.5, None, ("rated.tolerance_pct", "limits.operating_c")),
-        Ranked(part("C"), 330.0, 2.125, -0.125, False, ()),
+        Ranked(part("A"), 10700.0, 1.25, 0.75, True, (), False),
+        Ranked(part("B"), 4.99e4, 1.5, 0.5, None, ("rated.tolerance_pct", "limits.operating_c"), True),
+        Ranked(part("C"), 330.0, 2.125, -0.125, False, (), False),
     )
     return Shortlist(place, "E96", ranked, (Excluded(part("D"), ("it is a lug", "it is obsolete")),))
 
