@@ -49,6 +49,10 @@ log = get_plugin_logger("beadroll")
 ASSETS = Path(__file__).with_name("assets")
 SEARCH = "search.js"  # must run before Material's own script starts its worker
 BODY_ID = "page-body"
+NO_DIRECTORY_URLS = (
+    "Set use_directory_urls: false in mkdocs.yml: links must work from files, and with MkDocs' default, true, pages come out "
+    "empty. The site is left as it was."
+)
 
 
 def slot(name: str) -> str:
@@ -197,6 +201,8 @@ class BeadrollPlugin(BasePlugin[Options]):  # type: ignore[no-untyped-call]
         self._shell: Callable[[str, bool, bool, bool], Shell]
 
     def on_config(self, config: MkDocsConfig) -> MkDocsConfig:
+        if config.use_directory_urls:
+            raise PluginError(NO_DIRECTORY_URLS)
         asked = self.config.records, self.config.cache
         if self._kept_for != asked:  # while serving, what is in memory goes on to the next build
             self._kept_for = asked

@@ -264,6 +264,23 @@ def test_a_link_from_markdown_to_a_missing_part_fails_a_strict_build(project: Pr
         project.build()
 
 
+@pytest.mark.parametrize("line", ["", "use_directory_urls: true\n"])
+def test_directory_urls_are_refused_and_the_old_site_stays(
+    project: Project, caplog: pytest.LogCaptureFixture, line: str
+) -> None:
+    project.build()
+    old = {path: path.read_bytes() for path in project.folder.rglob("site/**/*.*")}
+    (project.folder / "mkdocs.yml").write_text(MKDOCS_YML.replace("use_directory_urls: false\n", line))
+    (project.folder / "docs" / "method.md").write_text("# Method\n")
+    with pytest.raises(Abort):
+        project.build()
+    assert [record.message for record in caplog.records if record.levelno == logging.ERROR] == [
+        "Set use_directory_urls: false in mkdocs.yml: links must work from files, and with MkDocs' default, true, pages come out "
+        "empty. The site is left as it was."
+    ]
+    assert {path: path.read_bytes() for path in project.folder.rglob("site/**/*.*")} == old
+
+
 def test_bad_records_are_all_told_and_the_old_site_stays(project: Project, caplog: pytest.LogCaptureFixture) -> None:
     project.build()
     project.problems = (problem("error"), problem("warning", "parts/b.yaml"), problem("error", "parts/c.yaml"))
