@@ -5,7 +5,7 @@ import io
 import zipfile
 
 import openpyxl
-from hypothesis import given, settings
+from hypothesis import assume, given, settings
 from hypothesis import strategies as st
 
 from builder.bills import Bill, Unreadable, read_bill
@@ -89,10 +89,11 @@ CELLS = st.text(st.characters(codec="utf-8", exclude_categories=("Cc", "Cs")), m
 @seeded
 @given(st.lists(st.tuples(CELLS, CELLS), min_size=1, max_size=8), st.sampled_from(",;\t|"))
 def test_what_a_csv_writer_wrote_comes_back(rows, delimiter):
+    plain = [tuple(" ".join(cell.split()) for cell in row) for row in rows]
+    assume(any(map(any, plain)))  # a bill without a line is refused
     out = io.StringIO()
     csv.writer(out, delimiter=delimiter, quoting=csv.QUOTE_ALL).writerows([("MPN", "Internal number"), *rows])
     read = [(line.number, line.own_number) for line in read_bill(out.getvalue().encode(), name="bill.csv").lines]
-    plain = [tuple(" ".join(cell.split()) for cell in row) for row in rows]
     assert read == [row for row in plain if any(row)]
 
 
