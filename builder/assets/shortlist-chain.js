@@ -3,8 +3,9 @@
 
    beadroll.unpackedCurve(text, extends)            a part's curve, or null where it has none
    beadroll.chain(place)                            a position: what of it is the same for every part
-   chain.best(part, guessOhm)                       { fixedOhm, worstK, atC, warmestK } of a part
-                                                    { curve, dissipationMwPerK }; warmestK: how far its body is warmed
+   chain.best(part, guessOhm)                       { fixedOhm, worstK, atC, warmestK, overload } of a part
+                                                    { curve, dissipationMwPerK, maxPowerMw }; warmestK: how far its body
+                                                    is warmed; overload: { powerMw, atC }, or null where that is allowed
 
    Two corners of the limits are enough, where Python tries all: each source pushes the reading one way. Only the supply
    may push both ways (it warms the sensor and weighs the leakage), and where a sensor is warmed by much, the resistors. */
@@ -301,6 +302,7 @@ window.beadroll = window.beadroll || {};
       const count = chain.tC.length, columns = () => [0, 1, 2].map(() => new Float64Array(count));
       this.chain = chain;
       this.curve = part.curve;
+      this.maxPowerMw = part.maxPowerMw ?? Infinity;
       this.kPerW = part.dissipationMwPerK === null ? 0 : 1e3 / part.dissipationMwPerK;
       this.rOhm = columns(); // at the true temperatures: lowest, nominal, highest
       this.perK = columns(); // −d ln R/dT there
@@ -362,8 +364,38 @@ window.beadroll = window.beadroll || {};
       return this.supplyV * (this.chain.isHigh ? 1 - branch : branch) + this.leakageA * this.rf * branch;
     }
 
-    warmingK(rOhm) {
-      return this.openV * this.openV * rOhm / ((rOhm + this.seenOhm) * (rOhm + this.seenOhm)) * this.kPerW;
+    powerW(rOhm) { return this.openV * this.openV * rOhm / ((rOhm + this.seenOhm) * (rOhm + this.seenOhm)); }
+
+    warmingK(rOhm) { return this.powerW(rOhm) * this.kPerW; }
+
+    /* The largest power in the part on any board, and where; null where no more than is allowed. */
+    overload() {
+      let found = { powerMw: this.maxPowerMw, atC: null };
+      for (const fixed of TIMES) {
+        for (const parallel of TIMES) {
+          for (const supply of TIMES) {
+            for (const leakage of TIMES) {
+              this.set(fixed, parallel, supply, leakage);
+              found = this.largerPower(found);
+            }
+          }
+        }
+      }
+      return found.atC === null ? null : found;
+    }
+
+    /* Of the resistance that it sees a part takes the most: mostly that is allowed, and no temperature is looked at. */
+    largerPower(found) {
+      let larger = found;
+      if (!(this.powerW(this.seenOhm) * 1e3 > found.powerMw)) return larger;
+      this.chain.tC.forEach((tC, j) => {
+        if (!this.isKnown[j]) this.know(j);
+        for (const edge of [0, 2]) {
+          const powerMw = this.powerW(this.bodyOhm(j, edge)) * 1e3;
+          if (powerMw > larger.powerMw) larger = { powerMw, atC: tC };
+        }
+      });
+      return larger;
     }
 
     /* Resistance of the body, warmed by its own power; by little, along the curve's slope. */
@@ -512,7 +544,8 @@ window.beadroll = window.beadroll || {};
       const { found, board } = this;
       if (found.worstK === Infinity) return { fixedOhm: NaN, worstK: NaN, atC: NaN };
       board.fit(found.fixedOhm);
-      return { ...found, warmestK: Math.max(...this.chain.tC.map((_, j) => board.nominalWarmingK(j))) };
+      const warmestK = Math.max(...this.chain.tC.map((_, j) => board.nominalWarmingK(j)));
+      return { ...found, warmestK, overload: board.overload() };
     }
 
     /* A value that promises much: the guess or one of a few, and from there downhill. */

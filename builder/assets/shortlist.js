@@ -25,6 +25,13 @@ window.beadroll = window.beadroll || {};
     return `${numberText(ohm / (factor || 1), 5)} ${unit}`;
   }
 
+  /* With as many more digits as keep it on its side of a limit. */
+  function comparedText(value, limit, fewest) {
+    let digits = fewest;
+    while (digits < 17 && (Number(value.toPrecision(digits)) <= limit) !== (value <= limit)) digits += 1;
+    return numberText(value, digits);
+  }
+
   const signed = (value) => `${value < 0 ? "−" : "+"}${Math.abs(value).toFixed(3)}`;
 
   /* ---- The form ---- */
@@ -122,7 +129,7 @@ window.beadroll = window.beadroll || {};
 
   function partsFrom(list, { rows, qualifications, only_for: onlyFor }) {
     return list.rows.map(([number, own, maker, rated, tolerance, , , body, range, standing, lifecycle, , file], i) => {
-      const [text, extended, dissipation, timeConstant, qualification, places, withdrawn, lacking = [], covered = []] = rows[i];
+      const [text, extended, dissipation, maxPower, timeConstant, qualification, places, withdrawn, lacking = [], covered = []] = rows[i];
       const [makerName, folder] = list.makers[maker], [, , ohm, at] = list.rated[rated];
       const [form, size] = list.bodies[body], [pct, pctText] = list.tolerances[tolerance];
       const said = [pct === null ? ohm : `${ohm} ${pctText}`, at, `${form} ${size}`.trim(), list.standings[standing]];
@@ -137,6 +144,7 @@ window.beadroll = window.beadroll || {};
         lifecycle: list.lifecycles[lifecycle],
         isExtended: extended === 1,
         dissipationMwPerK: dissipation,
+        maxPowerMw: maxPower,
         timeConstantS: timeConstant,
         qualification: qualifications[qualification],
         onlyFor: onlyFor[places],
@@ -212,6 +220,12 @@ window.beadroll = window.beadroll || {};
     };
   }
 
+  /* As circuit/power.py words it. */
+  function overloadText({ maxPowerMw }, { fixedOhm, overload: { powerMw, atC } }) {
+    return `with its best resistor, ${ohmText(fixedOhm)}, it takes up to ${comparedText(powerMw, maxPowerMw, 3)} mW `
+      + `at ${degrees(atC)}, at most ${numberText(maxPowerMw)} mW is allowed`;
+  }
+
   function verdict(part, { worstK, warmestK }, values, gaps, tC) {
     const covers = (t) => part.covered.some(([low, high]) => t >= low && t <= high);
     const ofPart = part.lacking.length && !tC.every(covers) ? [...part.lacking] : [];
@@ -264,16 +278,17 @@ window.beadroll = window.beadroll || {};
     judge(part) {
       const { values, chain } = this;
       if (part.circuit !== this.circuit) this.rank(part);
-      const { fixedOhm, worstK, atC, unread } = part.best;
+      const { fixedOhm, worstK, atC, unread, overload } = part.best;
       if (unread) return this.out.push({ part, because: [unread] });
+      if (overload) return this.out.push({ part, because: [overloadText(part, part.best)] });
       const found = { part, fixedOhm, worstK, atC, marginK: values.limit_k - worstK };
       return this.ranked.push({ ...found, ...verdict(part, part.best, values, this.gaps, chain.tC) });
     }
 
     /* The best resistor of the circuit before is where to look first. */
     rank(part) {
-      const curve = beadroll.unpackedCurve(part.text, part.isExtended), { dissipationMwPerK } = part;
-      const best = this.chain.best({ curve, dissipationMwPerK }, part.best.fixedOhm);
+      const curve = beadroll.unpackedCurve(part.text, part.isExtended), { dissipationMwPerK, maxPowerMw } = part;
+      const best = this.chain.best({ curve, dissipationMwPerK, maxPowerMw }, part.best.fixedOhm);
       part.circuit = this.circuit;
       part.best = Number.isNaN(best.worstK) ? { fixedOhm: NaN, unread: this.unread(curve) } : best;
       if (best.worstK >= 0) part.order = best.worstK;

@@ -10,6 +10,7 @@ import numpy as np
 from builder.circuit.chain import Chain
 from builder.circuit.gaps import Gaps, gaps
 from builder.circuit.margins import margins_codes
+from builder.circuit.power import overload_text
 from builder.circuit.rows import Rows, budget_rows
 from builder.circuit.thermistor import Thermistor
 from builder.circuit.trips import TripSpan, trip_spans
@@ -29,7 +30,7 @@ class Budget:
 
     `worst_k` is the largest error of any board within the limits, anywhere in the range and not only at the rows; not
     a number where some board has no reading. `meets_limit` and a trip's `ok` are None where a figure is missing that
-    decides; `missing` names the fields. Margins are whole codes between all real temperatures and an open or shorted
+    decides; `missing` names the fields. `overload` says that the part takes more power than it may. Margins are whole codes between all real temperatures and an open or shorted
     sensor, on any board.
     """
 
@@ -42,6 +43,7 @@ class Budget:
     open_margin_codes: float
     short_margin_codes: float
     missing: tuple[str, ...]
+    overload: str | None
     notes: tuple[str, ...]
 
 
@@ -84,6 +86,7 @@ def budget(position: Position, fitted: Thermistor, firmware_curve: PartCurve, st
     largest_k = np.maximum(-worst_min_k, worst_max_k)
     worst = int(largest_k.argmax())  # the first that is not a number, if there is one
     known, spans = gaps(chain, t_c, position.limit_k), trip_spans(chain)
+    overload = overload_text(fitted, t_c, highest.power_mw)
     # A trip may stand outside the range, where less of the part is stated.
     of_trips = [gaps(chain, np.array([span.trip.at_c]), _allowed_k(span, position)) for span in spans]
     return Budget(
@@ -95,7 +98,12 @@ def budget(position: Position, fitted: Thermistor, firmware_curve: PartCurve, st
         tuple(_trip(span, _allowed_k(span, position), own) for span, own in zip(spans, of_trips, strict=True)),
         *margins_codes(chain, lowest.code, highest.code),
         tuple(dict.fromkeys(field for each in (known, *of_trips) for field in each.fields)),
-        (*_range_notes(chain, t_c, np.isnan(largest_k)), *_trip_notes(spans, position.range_c)),
+        overload,
+        (
+            *_range_notes(chain, t_c, np.isnan(largest_k)),
+            *([f"The part {overload}."] if overload else []),
+            *_trip_notes(spans, position.range_c),
+        ),
     )
 
 

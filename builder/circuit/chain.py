@@ -25,6 +25,7 @@ class Signal:
     """What happens on the way, at some temperatures and in some cases; arrays of one shape."""
 
     body_c: Array
+    power_mw: Array
     junction_v: Array
     code: Array
     reading_c: Array
@@ -60,11 +61,11 @@ class Chain:
         """
         divider, edge = self.divider(offsets), offsets.get("thermistor", 0.0)
         body_c, r_ohm = self.thermistor.warmed(t_c, divider, edge)
-        junction_v = divider.junction_v(r_ohm)
+        power_mw, junction_v = divider.thermistor_w(r_ohm) * 1e3, divider.junction_v(r_ohm)
         code = self.code(junction_v, offsets)
         readable = ~self.converter(NOMINAL).at_an_end(code)
         reading_c = self.conversion.reading_c(np.where(readable, code, np.nan))
-        return Signal(body_c, junction_v, code, reading_c)
+        return Signal(body_c, power_mw, junction_v, code, reading_c)
 
     def extremes(self, t_c: Array) -> tuple[Signal, Signal]:
         """Lowest and highest of everything over all corners of the sources' limits.
@@ -80,7 +81,7 @@ class Chain:
             Arrays of shape (n,); not a number where one corner has none.
         """
         found = self.signal(t_c, corners(self.sources))
-        columns = (found.body_c, found.junction_v, found.code, found.reading_c)
+        columns = (found.body_c, found.power_mw, found.junction_v, found.code, found.reading_c)
         return Signal(*(c.min(axis=-2) for c in columns)), Signal(*(c.max(axis=-2) for c in columns))
 
     def divider(self, offsets: Offsets = NOMINAL) -> Divider:

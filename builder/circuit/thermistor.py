@@ -24,6 +24,7 @@ class Thermistor:
 
     made: PartCurve
     dissipation_mw_per_k: float | None
+    max_power_mw: float | None
 
     def resistance_ohm(self, body_c: Array, edge: Figure = 0.0) -> Array:
         """Zero-power resistance, nominal or at an edge of the tolerance band.
@@ -109,4 +110,5 @@ class Thermistor:
 
 def thermistor(record: PartRecord) -> Thermistor:
     """The thermistor that a part's record stands for."""
-    return Thermistor(part_curve(record), record.part.limits.dissipation_mw_per_k)
+    limits = record.part.limits
+    return Thermistor(part_curve(record), limits.dissipation_mw_per_k, limits.max_power_mw)

@@ -18,6 +18,7 @@ About = Literal[
     "sensor faults",
     "body",
     "range",
+    "power",
     "qualification",
     "time constant",
     "standing",

@@ -10,13 +10,14 @@ from functools import partial
 from builder.circuit import Chain, thermistor
 from builder.circuit.budget import CLOSE_K
 from builder.circuit.gaps import gaps
+from builder.circuit.power import overload_text
 from builder.decisions.requirements import requirement_reasons
 from builder.decisions.resistors import best_value
 from builder.decisions.series import Series
 from builder.part_curve import whole_steps_c
 from builder.processes import shared_out
 from builder.records import Catalog, PartRecord, Position, PositionRecord
-from builder.units import range_text
+from builder.units import range_text, resistance_text
 
 
 @dataclass(frozen=True, eq=False)
@@ -117,8 +118,11 @@ def _judged(place: Position, part: PartRecord, series: Series) -> _Found | tuple
         return (str(unusable),)
     if math.isinf(worst_k):
         return (f"with no resistor of {series} every board has a reading over {range_text(place.range_c)}",)
-    chain = Chain(place, fitted, fitted.made.curve, fixed_ohm)
-    known = gaps(chain, whole_steps_c(place.range_c, CLOSE_K), place.limit_k)
+    chain, t_c = Chain(place, fitted, fitted.made.curve, fixed_ohm), whole_steps_c(place.range_c, CLOSE_K)
+    overload = fitted.max_power_mw and overload_text(fitted, t_c, chain.extremes(t_c)[1].power_mw)
+    if overload:
+        return (f"with its best resistor, {resistance_text(fixed_ohm)}, it {overload}",)
+    known = gaps(chain, t_c, place.limit_k)
     asked = tuple(field for reason in reasons for field in reason.missing)
     meets = known.verdict(worst_k <= place.limit_k)
     if asked and meets:

@@ -73,6 +73,7 @@ def swap(position: PositionRecord, alternate: PartRecord, catalog: Catalog, step
         *_reading_reasons(before, after, new_firmware),
         *_body_reasons(place, fitted, alternate),
         *requirement_reasons(place, alternate.part),
+        *([Reason("power", after.overload, True)] if after.overload else []),
         *_alternate_reasons(position, alternate),
     )
     verdict = _verdict(reasons, after, new_firmware)

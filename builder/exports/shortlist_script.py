@@ -19,6 +19,7 @@ class ShortlistRow(NamedTuple):
     curve: Any
     extends: int
     dissipation_mw_per_k: float | None
+    max_power_mw: float | None
     time_constant_s: float | None
     qualification: tuple[str, ...]
     only_for: tuple[str, ...]
@@ -32,6 +33,7 @@ def shortlist_row(part: Part, curve: PartCurve) -> ShortlistRow:
         packed_curve(curve),
         int(curve.curve.extends),
         part.limits.dissipation_mw_per_k,
+        part.limits.max_power_mw,
         part.limits.time_constant_s,
         part.qualification,
         _only_for(part),
@@ -58,7 +60,7 @@ def shortlist_script(rows: Sequence[ShortlistRow], starts: Sequence[Mapping[str,
     qualifications = _places(row.qualification for row in rows)
     only_for = _places(row.only_for for row in rows)
     told = [
-        [*row[:4], qualifications[row.qualification], only_for[row.only_for], row.withdrawn, *row.untold]
+        [*row[:5], qualifications[row.qualification], only_for[row.only_for], row.withdrawn, *row.untold]
         for row in rows
     ]
     lists = {"qualifications": list(qualifications), "only_for": list(only_for), "starts": list(starts)}

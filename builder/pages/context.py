@@ -86,7 +86,9 @@ class Context:
         """The thermistor that is fitted at a position, and the curve of the part that its firmware was made for."""
         position = record.position
         fitted, made_for = (self.catalog.part(name) for name in (position.fitted, firmware_part(position)))
-        return Thermistor(self.curve(fitted), fitted.part.limits.dissipation_mw_per_k), self.curve(made_for)
+        limits = fitted.part.limits
+        own = Thermistor(self.curve(fitted), limits.dissipation_mw_per_k, limits.max_power_mw)
+        return own, self.curve(made_for)
 
     @cached_property
     def _budgeted(self) -> list[Any]:

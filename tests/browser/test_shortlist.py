@@ -29,7 +29,7 @@ from builder.pages.shortlist_form import start_values
 from builder.pages.shortlist_page import DATA, PAGE, shortlist_data, shortlist_page
 from builder.part_curve import part_curve, whole_steps_c
 from builder.records import Catalog, Part, PartRecord, Position, PositionRecord, Source, read_catalog
-from builder.records.position import CurveFirmware, TableFirmware, VoltageReference
+from builder.records.position import CurveFirmware, Requirements, TableFirmware, VoltageReference
 
 ROOT = Path(__file__).parents[2]
 WITHIN_K = 5e-3
@@ -93,6 +93,8 @@ def odd_catalog() -> Catalog:
         {"part": "PX-HERE", "standing": [entry | {"state": "restricted", "only_for": ["NEW board"]}]},
         {"part": "PX-OLD", "lifecycle": "obsolete"},
         {"part": "PX-SLOW", "limits": {"operating_c": [-10, 60], "time_constant_s": 30}},
+        {"part": "PX-WEAK", "limits": fields["limits"] | {"max_power_mw": 0.1}},
+        {"part": "PX-STRONG", "limits": fields["limits"] | {"max_power_mw": 100}},
         {"part": "PX-LOW", "rated": {"resistance_ohm": 0.05, "tolerance_pct": 1}},
     ]
     parts = [Part.model_validate(fields | change) for change in changes]
@@ -484,6 +486,19 @@ def test_an_unstated_supply_decides_where_the_part_is_warmed_by_much(opened: Ope
     told = opened(fragment(position)).table()
     check_against(told, shortlist(PositionRecord(position, place.source), DEMO.catalog))
     assert {row["meets_limit"] for row in told} >= {"yes", "undecided"}
+
+
+@pytest.mark.parametrize("side", ["low side", "high side"])
+def test_a_part_that_takes_too_much_power_is_out_as_in_python(opened: Opened, side: str) -> None:
+    place = next(one for one in DEMO.catalog.positions if one.position.position == "coolbox-main/RT1")
+    circuit = place.position.circuit.model_copy(update={"thermistor": side, "supply_v": 8.0, "wire_ohm": 20.0})
+    changes = {"circuit": circuit, "limit_k": 9.0, "requires": Requirements()}
+    position = rankable(place.position).model_copy(update=changes)
+    ours = shortlist(PositionRecord(position, place.source), odd_catalog())
+    because = {one.part.part.part: "; ".join(one.because) for one in ours.excluded}["PX-WEAK"]
+    assert "mW is allowed" in because
+    short = opened(fragment(position), "odd")
+    assert short.out()["PX-WEAK"] == because and "PX-STRONG" in short.ranked()
 
 
 @pytest.mark.parametrize(

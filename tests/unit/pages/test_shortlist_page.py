@@ -89,10 +89,10 @@ def test_a_position_fills_the_form_with_what_its_record_states() -> None:
 
 def test_a_row_holds_the_curve_and_what_is_asked_of_a_part() -> None:
     entry = {"state": "withdrawn", "on": "2026-01-12", "by": "us", "because": "It broke."}
-    limits = {"dissipation_mw_per_k": 2, "time_constant_s": 5}
+    limits = {"dissipation_mw_per_k": 2, "max_power_mw": 90, "time_constant_s": 5}
     made = record(limits=limits, qualification=["UL 1434"], standing=[entry | {"only_for": ["a/RT1"]}])
     lists, (row,) = told(made)
-    assert row == [packed_curve(part_curve(made)), 1, 2, 5, 0, 0, "2026-01-12 (us: It broke)"]
+    assert row == [packed_curve(part_curve(made)), 1, 2, 90, 5, 0, 0, "2026-01-12 (us: It broke)"]
     assert lists == {"qualifications": [["UL 1434"]], "only_for": [["a/RT1"]], "starts": []}
 
 
@@ -101,7 +101,7 @@ def test_what_a_band_lacks_is_told_with_where_it_does_without() -> None:
     accuracy = [{"between_c": [0, 70], "within_k": 0.2}]
     _, rows = told(record(), record(part="PX-2", **bare), record(part="PX-3", **bare, accuracy=accuracy))
     fields = ["rated.tolerance_pct", "b_values.tolerance_pct"]
-    assert [row[7:] for row in rows] == [[], [fields, []], [fields, [[0, 70]]]]
+    assert [row[8:] for row in rows] == [[], [fields, []], [fields, [[0, 70]]]]
 
 
 def test_hostile_text_cannot_leave_the_script_or_the_page() -> None:
