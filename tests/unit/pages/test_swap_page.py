@@ -29,6 +29,7 @@ CIRCUIT = {
     "thermistor": "low side",
     "fixed": {"resistance_ohm": 1e4, "tolerance_pct": 0.1, "tempco_ppm_per_k": 25},
     "supply_v": 3.3,
+    "supply_tolerance_pct": 1,
 }
 ADC = {"bits": 12, "offset_lsb": 2, "gain_pct": 0.1, "nonlinearity_lsb": 1, "leakage_na": 10}
 TRIPS = [{"name": "alarm", "at_c": 50, "when": "rising", "within_k": 1.5}]
