@@ -178,24 +178,21 @@ def table(header: Sequence[str], rows: Sequence[Sequence[str]]) -> str:
 
 
 def times_table(runs: Sequence[Run]) -> str:
-    """Times, memory, their share of the reference's and their growth with the parts."""
-    header = (
-        "run",
-        "parts or pages",
-        "wall, s",
-        "CPU, s",
-        "peak, MiB",
-        "CPU each, ms",
-        "of the reference: wall",
-        "CPU",
-    )
+    """Times and memory."""
     rows = []
     for run in runs:
         cost = run.cost
         each_ms = 1000 * cost.cpu_s / run.parts
         figures = (f"{cost.wall_s:.2f}", f"{cost.cpu_s:.2f}", f"{cost.peak_mib:.0f}", f"{each_ms:.2f}")
-        rows.append((run.name, f"{run.parts}", *figures, *shares(run, runs), *growth(run, runs)))
-    return table((*header, "CPU each more, ms", "growth of CPU"), rows)
+        rows.append((run.name, f"{run.parts}", *figures))
+    return table(("run", "parts or pages", "wall, s", "CPU, s", "peak, MiB", "CPU each, ms"), rows)
+
+
+def ratios_table(runs: Sequence[Run]) -> str:
+    """Times as shares of the reference's, and their growth with the parts."""
+    header = ("run", "parts", "wall of the reference", "CPU of the reference", "CPU each more, ms", "growth of CPU")
+    others = (run for run in runs if run.name != "reference")
+    return table(header, [(run.name, f"{run.parts}", *shares(run, runs), *growth(run, runs)) for run in others])
 
 
 def shares(run: Run, runs: Sequence[Run]) -> tuple[str, str]:
@@ -301,6 +298,7 @@ def bench(chosen: argparse.Namespace) -> Iterator[str]:
     yield heading(chosen, load)
     if runs:
         yield times_table(runs)
+        yield ratios_table(runs)
     if any(run.name in ("reference", "build") for run in runs):
         yield sites_table(runs)
     if "browser" in chosen.only and any(run.name == "build" for run in runs):
