@@ -4,8 +4,31 @@ from __future__ import annotations
 
 import numpy as np
 
+from builder.circuit.chain import Chain
+from builder.circuit.sources import corners
 from builder.circuit.thermistor import Thermistor
 from builder.units import Array, compared_text, number_text, temperature_text
+
+
+def can_overload(chain: Chain) -> bool:
+    """Whether the circuit could give its thermistor more than the record allows, whatever its resistance.
+
+    Parameters
+    ----------
+    chain : Chain
+        The position with its thermistor; no unit.
+
+    Returns
+    -------
+    bool
+        False where no limit is stated, or where the power into a resistance as large as the one that the thermistor
+        sees, the most that any takes, is allowed on every board; no unit.
+    """
+    allowed_mw = chain.thermistor.max_power_mw
+    if allowed_mw is None:
+        return False
+    divider = chain.divider(corners(chain.sources))
+    return bool((divider.thermistor_w(np.asarray(divider.seen_ohm)) * 1e3 > allowed_mw).any())
 
 
 def overload_text(thermistor: Thermistor, t_c: Array, largest_mw: Array) -> str | None:

@@ -10,7 +10,7 @@ from functools import partial
 from builder.circuit import Chain, thermistor
 from builder.circuit.budget import CLOSE_K
 from builder.circuit.gaps import gaps
-from builder.circuit.power import overload_text
+from builder.circuit.power import can_overload, overload_text
 from builder.decisions.requirements import requirement_reasons
 from builder.decisions.resistors import best_value
 from builder.decisions.series import Series
@@ -119,7 +119,8 @@ def _judged(place: Position, part: PartRecord, series: Series) -> _Found | tuple
     if math.isinf(worst_k):
         return (f"with no resistor of {series} every board has a reading over {range_text(place.range_c)}",)
     chain, t_c = Chain(place, fitted, fitted.made.curve, fixed_ohm), whole_steps_c(place.range_c, CLOSE_K)
-    overload = fitted.max_power_mw and overload_text(fitted, t_c, chain.extremes(t_c)[1].power_mw)
+    # All corners at all temperatures again, which few circuits need.
+    overload = can_overload(chain) and overload_text(fitted, t_c, chain.extremes(t_c)[1].power_mw)
     if overload:
         return (f"with its best resistor, {resistance_text(fixed_ohm)}, it {overload}",)
     known = gaps(chain, t_c, place.limit_k)

@@ -2,8 +2,11 @@
 
 from __future__ import annotations
 
+from builder.decisions.requirements import body_text
 from builder.records import Part
 from builder.units import number_text, resistance_text, temperature_text
+
+__all__ = ["body_text", "rated_text", "summary"]
 
 
 def summary(part: Part) -> str:
@@ -17,8 +20,3 @@ def rated_text(part: Part) -> str:
     at = "" if rated.at_c == 25 else f" at {temperature_text(rated.at_c)}"
     tolerance = "" if rated.tolerance_pct is None else f" ±{number_text(rated.tolerance_pct)} %"
     return f"{resistance_text(rated.resistance_ohm)}{at}{tolerance}"
-
-
-def body_text(part: Part) -> str:
-    """The body, with its size code where it has one."""
-    return f"{part.body.form} {part.body.size_code}" if part.body.size_code else part.body.form

@@ -6,7 +6,7 @@ from circuit_records import SIDES, Board, plain_thermistor, real_position
 
 from builder.circuit import budget
 from builder.circuit.chain import Chain
-from builder.circuit.power import overload_text
+from builder.circuit.power import can_overload, overload_text
 
 
 def warm_part(max_power_mw=None, dissipation_mw_per_k=1.5):
@@ -62,3 +62,13 @@ def test_power_just_above_what_is_allowed_is_not_told_as_that():
     assert overload_text(part, np.array([25.0, 30.0]), np.array([10.0004, np.nan])) == (
         "takes up to 10.0004 mW at 25 °C, at most 10 mW is allowed"
     )
+
+
+@pytest.mark.parametrize("side", SIDES.values(), ids=SIDES)
+def test_no_part_takes_more_than_its_circuit_can_give(side):
+    place, t_c = real_position(range_c=[-40, 120], **side), np.linspace(-40, 120, 161)
+    part = warm_part()
+    most_mw = float(np.nanmax(Chain(place, part, part.made.curve, 10e3).extremes(t_c)[1].power_mw))
+    for allowed_mw, can in ((most_mw * 0.999, True), (most_mw * 1.5, False), (None, False)):
+        part = warm_part(allowed_mw)
+        assert can_overload(Chain(place, part, part.made.curve, 10e3)) is can

@@ -1,6 +1,6 @@
 """`beadroll new`: whole conversations, what they write, and that nothing is written over or by halves.
 
-`BEADROLL_REWRITE=1 pytest tests/unit/questions` rewrites the transcripts; read the difference before trusting it.
+`BEADROLL_REWRITE=1 pytest tests/unit/questions` rewrites the conversations; read the difference before trusting it.
 """
 
 import os
@@ -17,7 +17,7 @@ from builder.questions import NotWritten, write_new
 from builder.records import read_catalog
 from tests.factory import PART
 
-TRANSCRIPTS = Path(__file__).parent / "transcripts"
+CONVERSATIONS = Path(__file__).parent / "conversations"
 SHORT = {
     "part": ["XN4-103F"],
     "maker": ["Exemplar Ceramics"],
@@ -77,13 +77,13 @@ def files():
         ("position", ["--position"]),
     ],
 )
-def test_a_conversation_goes_as_its_transcript(name, arguments):
-    result = conversation((TRANSCRIPTS / f"{name}.answers.txt").read_text("utf-8"), *arguments)
-    transcript = TRANSCRIPTS / f"{name}.txt"
+def test_a_conversation_goes_as_written_down(name, arguments):
+    result = conversation((CONVERSATIONS / f"{name}.answers.txt").read_text("utf-8"), *arguments)
+    written = CONVERSATIONS / f"{name}.txt"
     if os.environ.get("BEADROLL_REWRITE"):
-        transcript.write_text(result.stdout, "utf-8")
+        written.write_text(result.stdout, "utf-8")
     assert (result.exit_code, result.stderr) == (0, "")
-    assert result.stdout == transcript.read_text("utf-8")
+    assert result.stdout == written.read_text("utf-8")
 
 
 def test_the_written_record_reads_as_the_answers(told):
