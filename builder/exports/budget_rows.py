@@ -7,22 +7,18 @@ from collections.abc import Iterator
 from typing import Any
 
 from builder.circuit import Budget, TripBudget
-from builder.exports.rows import Column, Row, rounded
-from builder.units import compared_text, number_text, signed_text, temperature_text
+from builder.exports.rows import Column, Row, difference_text, rounded
+from builder.units import compared_text, number_text, temperature_text
 
 _ARRAYS = ("t_c", "code", "bias_k", "worst_min_k", "worst_max_k", "expanded_k", "codes_per_k")
 
 
 def _difference_without_sign(value: float | None) -> str:
-    return _difference(value).lstrip("+")
+    return difference_text(value).lstrip("+")
 
 
 def _figure(value: float | None) -> str:
     return "–" if value is None else number_text(value, 5)
-
-
-def _difference(value: float | None) -> str:
-    return "–" if value is None else signed_text(value, 3)
 
 
 _HEADINGS = {
@@ -40,11 +36,11 @@ def columns(budget: Budget) -> tuple[Column, ...]:
         Column("t_c", "°C", number_text),
         Column("code", "code", _figure),
         Column("codes_per_k", "codes/K", _figure),
-        Column("bias_k", "bias K", _difference),
-        Column("worst_min_k", "worst low K", _difference),
-        Column("worst_max_k", "high K", _difference),
+        Column("bias_k", "bias K", difference_text),
+        Column("worst_min_k", "worst low K", difference_text),
+        Column("worst_max_k", "high K", difference_text),
         Column("expanded_k", "U (k=2) K", _difference_without_sign),
-        *(Column(name, f"{_HEADINGS.get(name, name)} K", _difference) for name in budget.rows.sources_k),
+        *(Column(name, f"{_HEADINGS.get(name, name)} K", difference_text) for name in budget.rows.sources_k),
         Column("extrapolated", "", left=True),
     )
 

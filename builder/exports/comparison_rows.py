@@ -6,8 +6,8 @@ from collections.abc import Iterable, Sequence
 from typing import Any
 
 from builder.comparisons import Comparison
-from builder.exports.rows import Column, Row, rounded
-from builder.units import number_text, signed_text
+from builder.exports.rows import Column, Row, difference_text, rounded
+from builder.units import number_text
 
 ANSWER_NAMES = ("t_c", "r_ref_ohm", "r_ohm", "ratio_pct", "reads_k", "reads_min_k", "reads_max_k")
 _ARRAYS = (*ANSWER_NAMES, "reference_min_k", "reference_max_k")
@@ -17,20 +17,16 @@ def _resistance(value: float | None) -> str:
     return "–" if value is None else number_text(value, 7)
 
 
-def _difference(value: float | None) -> str:
-    return "–" if value is None else signed_text(value, 3)
-
-
 COLUMNS = (
     Column("t_c", "°C", number_text),
     Column("r_ref_ohm", "reference Ω", _resistance),
     Column("r_ohm", "R in Ω", _resistance),
-    Column("ratio_pct", "ratio in %", _difference),
-    Column("reads_k", "reads K", _difference),
-    Column("reads_min_k", "low K", _difference),
-    Column("reads_max_k", "high K", _difference),
-    Column("reference_min_k", "reference low K", _difference),
-    Column("reference_max_k", "high K", _difference),
+    Column("ratio_pct", "ratio in %", difference_text),
+    Column("reads_k", "reads K", difference_text),
+    Column("reads_min_k", "low K", difference_text),
+    Column("reads_max_k", "high K", difference_text),
+    Column("reference_min_k", "reference low K", difference_text),
+    Column("reference_max_k", "high K", difference_text),
     Column("extrapolated", "", left=True),
 )
 NAMES = tuple(column.name for column in COLUMNS)

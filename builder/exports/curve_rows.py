@@ -7,9 +7,9 @@ from collections.abc import Sequence
 from typing import Any
 
 from builder.curves import Curve
-from builder.exports.rows import Column, Row, csv_figure, rounded
+from builder.exports.rows import Column, Row, csv_figure, difference_text, rounded
 from builder.part_curve import Sample
-from builder.units import number_text, signed_text
+from builder.units import number_text
 
 
 def _resistance(value: float | None) -> str:
@@ -19,10 +19,6 @@ def _resistance(value: float | None) -> str:
     if not 1e-3 <= value < 1e10:
         return f"{value:.6e}".replace("-", "−")
     return f"{value:.{max(6 - math.floor(math.log10(value)), 0)}f}"
-
-
-def _kelvin(value: float | None) -> str:
-    return "–" if value is None else signed_text(value, 3)
 
 
 def _thousandths(value: float | None) -> str:
@@ -35,8 +31,8 @@ COLUMNS = (
     Column("r_min_ohm", "min in Ω", _resistance),
     Column("r_max_ohm", "max in Ω", _resistance),
     Column("alpha_pct_per_k", "α in %/K", _thousandths),
-    Column("reads_min_k", "reads low K", _kelvin),
-    Column("reads_max_k", "reads high K", _kelvin),
+    Column("reads_min_k", "reads low K", difference_text),
+    Column("reads_max_k", "reads high K", difference_text),
     Column("extrapolated", "", lambda extrapolated: "extrapolated" if extrapolated else "", left=True),
 )
 NAMES = tuple(column.name for column in COLUMNS)

@@ -10,7 +10,7 @@ from collections.abc import Callable, Iterable, Sequence
 from dataclasses import dataclass
 from typing import Any
 
-from builder.units import FIGURE
+from builder.units import FIGURE, signed_text
 
 Row = dict[str, Any]
 
@@ -23,6 +23,15 @@ class Column:
     heading: str
     text: Callable[[Any], str] = str
     left: bool = False
+
+
+def difference_text(value: float | None) -> str:
+    """A difference in kelvin or per cent as a table shows it, with its sign; a dash where there is none.
+
+    >>> difference_text(-0.25), difference_text(None)
+    ('−0.250', '–')
+    """
+    return "–" if value is None else signed_text(value, 3)
 
 
 def table_text(columns: Sequence[Column], rows: Iterable[Row]) -> str:

@@ -9,7 +9,7 @@ import numpy as np
 
 from builder.circuit import Budget, firmware_part
 from builder.decisions import Reason, Swap
-from builder.exports.rows import Column, Row, csv_text, rounded
+from builder.exports.rows import Column, Row, csv_text, difference_text, rounded
 from builder.ledger.standings import goes_by
 from builder.pages.cautions import CAUTION
 from builder.pages.context import Context
@@ -23,7 +23,7 @@ from builder.pages.paths import relative
 from builder.pages.trips_section import acts_text
 from builder.pages.verdicts import MEANINGS, verdict_badge
 from builder.records import PartRecord, PositionRecord
-from builder.units import compared_text, number_text, range_text, signed_text, temperature_text
+from builder.units import compared_text, number_text, range_text, temperature_text
 
 # On paper the figures of one page; the CSV has every row of the budget.
 _MOST_ROWS = 14
@@ -167,19 +167,15 @@ def _figure(swap: Swap) -> str:
     return reads_figure(title, f"Worst case {_worst(swap.before)} before, {_worst(swap.after)} after.", marks)
 
 
-def _kelvin(value: float | None) -> str:
-    return "–" if value is None else signed_text(value, 3)
-
-
 _COLUMNS = (
     Column("t_c", "°C", number_text),
-    Column("before_k", "before K", _kelvin),
-    Column("before_min_k", "low K", _kelvin),
-    Column("before_max_k", "high K", _kelvin),
-    Column("after_k", "after K", _kelvin),
-    Column("after_min_k", "low K", _kelvin),
-    Column("after_max_k", "high K", _kelvin),
-    Column("moved_k", "moved by K", _kelvin),
+    Column("before_k", "before K", difference_text),
+    Column("before_min_k", "low K", difference_text),
+    Column("before_max_k", "high K", difference_text),
+    Column("after_k", "after K", difference_text),
+    Column("after_min_k", "low K", difference_text),
+    Column("after_max_k", "high K", difference_text),
+    Column("moved_k", "moved by K", difference_text),
     Column("extrapolated", "", lambda extrapolated: "extrapolated" if extrapolated else "", left=True),
 )
 
